@@ -1,0 +1,3 @@
+module shearbook
+
+go 1.26

@@ -1,0 +1,67 @@
+package profile
+
+import (
+	"fmt"
+	"strings"
+)
+
+// Place is a place in a file.
+type Place struct {
+	File         string
+	Line, Column int    // from 1, in characters; 0 where unknown
+	Cell         string // of a spreadsheet, as Sheet1!B7; instead of Line and Column
+}
+
+// String returns the place as file:line:column, or as much of it as is known.
+func (p Place) String() string {
+	switch {
+	case p.Cell != "":
+		return p.File + ":" + p.Cell
+	case p.Line > 0 && p.Column > 0:
+		return fmt.Sprintf("%s:%d:%d", p.File, p.Line, p.Column)
+	case p.Line > 0:
+		return fmt.Sprintf("%s:%d", p.File, p.Line)
+	}
+	return p.File
+}
+
+// Fault is one thing that is wrong with the input, and where.
+type Fault struct {
+	Place Place
+	Text  string // what is wrong: lower case, no full stop
+	Hint  string // what to do next; "" where Text says it
+}
+
+// Error returns the place and what is wrong there.
+func (f Fault) Error() string {
+	if place := f.Place.String(); place != "" {
+		return place + ": " + f.Text
+	}
+	return f.Text
+}
+
+// Faults is everything that a reader found wrong, in the order of the file.
+// As an error it is one line a fault; errors.As finds it.
+type Faults []Fault
+
+// Error returns one line a fault.
+func (fs Faults) Error() string {
+	lines := make([]string, len(fs))
+	for i, f := range fs {
+		lines[i] = f.Error()
+	}
+	return strings.Join(lines, "\n")
+}
+
+// Err returns the faults as an error, nil if there are none.
+func (fs Faults) Err() error {
+	if len(fs) == 0 {
+		return nil
+	}
+	return fs
+}
+
+// Faultf is a fault at a place, its text made from format and args.
+func Faultf(at Place, hint, format string, args ...any) Fault {
+	return Fault{Place: at, Text: fmt.Sprintf(format, args...), Hint: hint}
+}
