@@ -4,7 +4,11 @@
 // kPa); units are converted once, by the readers below this package.
 package profile
 
-import "math"
+import (
+	"math"
+	"slices"
+	"strings"
+)
 
 // Profile is one velocity profile: a column of layers from the ground down.
 type Profile struct {
@@ -183,7 +187,7 @@ type Metadatum struct {
 // Column is one column of a table of layers.
 type Column struct {
 	Heading  string   // as the file gives it, without its unit
-	Unit     string   // as the file gives it; "" if the column has none
+	Unit     string   // as the file gives it, or the one given for it where the file states none; "" if the column has none
 	Quantity Quantity // what the reader took it for; Unknown if it was carried along unread
 }
 
@@ -196,6 +200,24 @@ type Row struct {
 // CellSeparator joins the cells of a Row: U+001F, the unit separator of
 // ISO/IEC 646, which no reader lets into a cell.
 const CellSeparator = "\x1f"
+
+// Split returns the cells of the row, one for each column of its Reading.
+func (r Row) Split() []string { return strings.Split(r.Cells, CellSeparator) }
+
+// Index returns the index of the column that holds quantity q, -1 if there
+// is none.
+func (r *Reading) Index(q Quantity) int {
+	return slices.IndexFunc(r.Columns, func(c Column) bool { return c.Quantity == q })
+}
+
+// Unit returns the unit in which quantity q was read, "" if there is no such
+// column or it has no unit.
+func (r *Reading) Unit(q Quantity) string {
+	if i := r.Index(q); i >= 0 {
+		return r.Columns[i].Unit
+	}
+	return ""
+}
 
 // Note is a doubt that travels with a result and is printed beside it.
 type Note struct {

@@ -9,8 +9,13 @@
 // 30 m from the ground surface (Borcherdt 1994, Earthquake Spectra 10:617,
 // checked in no copy; EN 1998-1:2004 Eq. (3.1); ASCE/SEI 7-16 Eq. 20.4-1).
 //
+// Depths are in m below ground level throughout. The datum is the depth that
+// an average starts from: 0, or the underside of a foundation. A layer that a
+// depth cuts counts with the part that lies inside.
+//
 // The functions assume a profile that profile.Validate accepts; they do not
-// look for gaps, overlaps or velocities that are not positive.
+// look for gaps, overlaps or velocities that are not positive. None of them
+// changes the layers it is given.
 package vs30
 
 import (
@@ -30,14 +35,19 @@ type ShortError struct {
 	Needed  float64 // m below ground level
 }
 
-// Error says how far the profile reaches and how far it would have to.
+// Error says how far the profile reaches and how far it would have to, with
+// as many digits as it takes to tell the two apart.
 func (e *ShortError) Error() string {
-	return fmt.Sprintf("the profile reaches %.4g m below ground level, %.4g m are needed", e.Reached, e.Needed)
+	reached, needed := fmt.Sprintf("%.4g", e.Reached), fmt.Sprintf("%.4g", e.Needed)
+	for digits := 5; reached == needed && digits <= 17; digits++ {
+		reached, needed = fmt.Sprintf("%.*g", digits, e.Reached), fmt.Sprintf("%.*g", digits, e.Needed)
+	}
+	return fmt.Sprintf("the profile reaches %s m below ground level, %s m are needed", reached, needed)
 }
 
-// Average returns the time-averaged velocity in m/s over thickness m below
-// depth from (m below ground level). The error is a *ShortError where the
-// layers end more than Touching above from+thickness. It does not allocate.
+// Average returns the time-averaged velocity in m/s over thickness m, > 0,
+// below depth from (m below ground level). The error is a *ShortError where
+// the layers end more than Touching above from+thickness. It does not allocate.
 func Average(layers []profile.Layer, from, thickness float64) (float64, error) {
 	t, err := TravelTime(layers, from, from+thickness)
 	if err != nil {
@@ -85,7 +95,7 @@ func timeInside(l *profile.Layer, top, bottom float64) float64 {
 	}
 	v0, v1 := l.VsAt(top), l.VsAt(bottom)
 	x := (v1 - v0) / v0
-	if math.Abs(x) < 1e-12 {
+	if x == 0 {
 		return h / v0
 	}
 	return h / v0 * math.Log1p(x) / x
@@ -119,26 +129,43 @@ type Working struct {
 	Velocity  float64 // m/s
 }
 
-// Work returns the average over thickness m below depth from with its whole
-// working. Its Velocity is the very number that Average returns.
+// Work returns the average over thickness m, > 0, below depth from with its
+// whole working. Its Velocity is the very number that Average returns, and it
+// fails as Average does.
 func Work(layers []profile.Layer, from, thickness float64) (Working, error) {
 	to := from + thickness
-	v, err := Average(layers, from, thickness)
+	t, err := TravelTime(layers, from, to)
 	if err != nil {
 		return Working{}, err
 	}
-	w := Working{From: from, Thickness: thickness, Velocity: v, Time: thickness / v}
-	t := 0.0
+	w := Working{From: from, Thickness: thickness, Time: t, Velocity: thickness / t}
+	cumulative := 0.0
 	for i := range layers {
 		l := &layers[i]
-		top, bottom := max(l.Top, from), min(l.Bottom, to)
-		if bottom-top <= Touching {
+		top, bottom, ok := clip(l, from, to)
+		if !ok {
 			continue
 		}
 		dt := timeInside(l, top, bottom)
-		t += dt
-		w.Rows = append(w.Rows, Row{Layer: i, Top: top, Bottom: bottom,
-			Thickness: bottom - top, Vs: (bottom - top) / dt, Time: dt, Cumulative: t})
+		cumulative += dt
+		w.Rows = append(w.Rows, Row{Layer: i, Top: top, Bottom: bottom, Thickness: bottom - top,
+			Vs: averageInside(l, top, bottom), Time: dt, Cumulative: cumulative})
 	}
 	return w, nil
+}
+
+// clip returns the part of layer l between the depths from and to, and false
+// where no more than Touching of it lies there.
+func clip(l *profile.Layer, from, to float64) (top, bottom float64, ok bool) {
+	top, bottom = max(l.Top, from), min(l.Bottom, to)
+	return top, bottom, bottom-top > Touching
+}
+
+// averageInside returns the time-averaged velocity in m/s between two depths
+// inside layer l.
+func averageInside(l *profile.Layer, top, bottom float64) float64 {
+	if !l.Gradient() {
+		return l.Vs
+	}
+	return (bottom - top) / timeInside(l, top, bottom)
 }

@@ -3,13 +3,19 @@
 //
 // One file holds one standard. Its table is a literal that reads like the
 // printed page: the bands in the printed order, each bound with the printed
-// operator and in the printed unit. Where a rule is not a band (EC8 type E,
-// the substrate depth of NTC 2018) it is an ordinary function beside the
-// table.
+// operator and in the printed unit, the clause beside each rule. Where a rule
+// is not a band (type E of EN 1998-1, the substrate depth of NTC 2018) it is
+// an ordinary function beside the table, with its limits in the table.
 //
-// A value within one part in 10⁹ of a bound is the bound. Then the printed
-// operators decide. Where the print gives the value to two classes or to
-// none, the softer class is taken and a note says so.
+// A velocity is compared in the code's own unit and over the code's own
+// depth. A value within one part in 10⁹ of a bound is the bound. Then the
+// printed operators decide. Where the print gives the value to two classes or
+// to none, the softer class is taken and a note says so.
+//
+// A decision looks first at the ground that no average settles (liquefiable
+// soil, peat, soft clay …), then at the average, then at whether a rock class
+// may stand on so much soil. Every comparison is a Step. What is not known of
+// the ground is listed as not assessed.
 package siteclass
 
 import "shearbook/profile"
@@ -33,48 +39,17 @@ func (s Standing) String() string { return standingWords[s] }
 // MarshalText writes the words.
 func (s Standing) MarshalText() ([]byte, error) { return []byte(s.String()), nil }
 
-// Operator is the comparison printed with a bound.
-type Operator uint8
-
-// The printed operators. Dash is a bound of a printed range "a to b" that
-// does not say which class owns it.
-const (
-	Open    Operator = iota // no bound
-	Above                   // >
-	AtLeast                 // ≥
-	Below                   // <
-	AtMost                  // ≤
-	Dash
-)
-
-var operatorSigns = [...]string{"", ">", "≥", "<", "≤", "–"}
-
-// String returns the sign of the operator; a dash for a printed range.
-func (o Operator) String() string { return operatorSigns[o] }
-
-// Limit is one printed bound.
-type Limit struct {
-	Op    Operator
-	Value float64 // in the unit of the column
-}
-
-// Range is the cell of a class table: a lower and an upper bound, either of
-// which may be open.
-type Range struct {
-	Lower, Upper Limit
-}
-
-// Empty reports whether the cell has no bounds at all.
-func (r Range) Empty() bool { return r.Lower.Op == Open && r.Upper.Op == Open }
-
 // Band is one row of a class table.
 type Band struct {
-	Class    string // as printed: "C", "BC", "ZD"
-	Name     string // what the ground is, in our words
-	Vs       Range  // in Code.Unit; empty for a class that is not given by velocity
-	N        Range  // blows per 0.3 m (per foot)
-	Su       Range  // in Code.SuUnit
-	Standing Standing
+	Class      string // as printed: "C", "BC", "ZD"
+	Name       string // what the ground is, in our words
+	Vs         Range  // in Code.Unit; empty for a class that is not given by velocity
+	N          Range  // blows per 0.3 m (per foot)
+	Su         Range  // in Code.SuUnit
+	Also       string // what the row asks beside the bounds; "" if nothing
+	Improving  bool   // the row asks for properties that improve with depth
+	Indicative bool   // the bounds are shown beside the class and do not give it
+	Standing   Standing
 }
 
 // Datum is where a code measures its averaging depth from.
@@ -92,7 +67,8 @@ var datumWords = [...]string{"not stated (ground surface taken)", "ground surfac
 // String returns the words of the datum.
 func (d Datum) String() string { return datumWords[d] }
 
-// Code is one published classification.
+// Code is one published classification. The codes that All and Find return
+// are shared: they are to be read and not changed.
 type Code struct {
 	ID         string  // "asce-7-16"
 	Title      string  // "Minimum Design Loads …"
@@ -107,148 +83,26 @@ type Code struct {
 	Datum      Datum
 	DatumNote  string       // what the code says of the datum beyond Datum; "" if nothing
 	Unit       profile.Unit // of the velocity bounds, as printed
-	SuUnit     profile.Unit // of the strength bounds, as printed
+	SuUnit     profile.Unit // of the strength bounds, as printed; zero if the table has none
+	Length     profile.Unit // of depths and thicknesses, as printed
 	Standing   Standing     // of the table as a whole: the weakest of its rows
 	Bands      []Band       // in the printed order, stiffest first
+	Outside    string       // class of a velocity that no row covers, softer than all; "" if there is none
 	Conditions []Condition  // in the order in which they are looked at
 	Notes      []string     // what the print leaves open, in our words
+	Short      string       // what the code says of a profile that ends above the depth, in our words
+	Correlated string       // what the code says of velocities that were not measured, in our words
+	Twin       Twin         // the same table printed in another unit
 
-	// decide replaces the ordinary band rule where the code's own is not one.
+	// decide replaces the ordinary rule where the code's own is not bands.
 	decide func(*Code, Site) (Decision, error)
 }
 
-// Kind says what a condition does.
-type Kind uint8
-
-// The kinds of condition.
-const (
-	Special Kind = iota // puts the site in the class that needs a site-specific study
-	Softer              // puts the site in a soft class whatever the average
-	Barred              // bars the rock classes
-)
-
-// Condition is a rule beside the table that the average velocity does not
-// settle.
-type Condition struct {
-	ID       string // "peat"; also the key of the fact in a notebook's ground:
-	Kind     Kind
-	Class    string // to which the site goes where the condition is met
-	Text     string // the condition in our words, with its limits as printed
-	Clause   string
-	Standing Standing
-
-	// Test compares the facts of the site with the printed limits.
-	Test func(Site) Outcome
-}
-
-// State is what became of a condition.
-type State uint8
-
-// The states of a condition.
-const (
-	NotAssessed State = iota
-	NotMet
-	Met
-	NotApplicable
-)
-
-var stateWords = [...]string{"not assessed", "not met", "met", "not applicable"}
-
-// String returns the words of the state.
-func (s State) String() string { return stateWords[s] }
-
-// MarshalText writes the words.
-func (s State) MarshalText() ([]byte, error) { return []byte(s.String()), nil }
-
-// Outcome is what a condition's test found.
-type Outcome struct {
-	State State
-	Steps []Step         // the comparisons made, if any
-	Notes []profile.Note // what was assumed
-}
-
-// Step is one comparison of a decision, in the unit of the code.
-type Step struct {
-	Text     string  `json:"text"`     // what was compared with what
-	Clause   string  `json:"clause"`   // under which clause
-	Value    float64 `json:"value"`    // in Unit
-	Operator string  `json:"operator"` // as printed; – for a bound of a dash range
-	Bound    float64 `json:"bound"`    // in Unit
-	Unit     string  `json:"unit"`
-	Holds    bool    `json:"holds"`
-}
-
-// Margin is the distance from the value to the nearest bound at which the
-// class changes.
-type Margin struct {
-	ToClass string  // the class beyond the bound
-	Bound   float64 // in Unit
-	Unit    string
-	Percent float64 // of the value: 100·(bound−value)/value; negative where the bound lies below
-}
-
-// ConditionResult is a condition with what became of it.
-type ConditionResult struct {
-	Condition *Condition
-	Outcome
-}
-
-// Decision is a class with everything that led to it.
-type Decision struct {
-	Code       *Code
-	Class      string
-	Route      string   // "velocity"
-	Thickness  float64  // m over which Velocity is the average
-	Velocity   float64  // m/s
-	Datum      float64  // m below ground level
-	Basis      string   // of the velocities: a profile.Basis word, "mixed" or "extended"
-	Standing   Standing // the weakest part used
-	Margin     *Margin  // nil where the class does not hang on a bound of the average
-	Steps      []Step
-	Conditions []ConditionResult
-	Notes      []profile.Note
-	Unassessed []string // the text of each condition that was not assessed
-}
-
-// Site is a profile with what the code must know beside the velocities.
-type Site struct {
-	Profile         *profile.Profile
-	Layers          []profile.Layer  // those to average: the profile's, or an extension of them
-	Datum           profile.Optional // m below ground level from which to average; where not known, ground level
-	FoundationDepth profile.Optional // m below ground level of the underside of the foundation
-	Extended        bool             // Layers go on below the profile
-	Ground          Ground
-	Notes           []profile.Note // about Layers, carried into the decision
-}
-
-// Ground is what is known of a site beside its velocities. What is not
-// known is listed by every decision as not assessed.
-type Ground struct {
-	Liquefiable Answer // liquefiable soil
-	Sensitive   Answer // quick or highly sensitive clay
-	Collapsible Answer // collapsible, weakly cemented soil
-
-	Peat           Deposit // peat or highly organic clay
-	HighPlasticity Deposit // clay of very high plasticity; PI as stated
-	SoftClay       Deposit // soft clay; PI, water content and strength as stated
-	ThickClay      Deposit // soft to medium stiff clay
-}
-
-// Answer is yes, no, or not known.
-type Answer uint8
-
-// The answers. The zero value is NotKnown.
-const (
-	NotKnown Answer = iota
-	No
-	Yes
-)
-
-// Deposit is the total thickness of one kind of ground, with the properties
-// that a code may ask for.
-type Deposit struct {
-	Thickness    profile.Optional // m, ≥ 0
-	PI           profile.Optional // %
-	WaterContent profile.Optional // %
-	Su           profile.Optional // kPa
+// Twin is the print of the same velocity bounds in another unit. The two
+// prints are no conversions of each other: 1,200 ft/s is 365.76 m/s, and the
+// metric print has 360.
+type Twin struct {
+	Unit   profile.Unit // zero if there is no twin
+	Bounds []float64    // as many as the table has, from stiff to soft
+	Source string
 }

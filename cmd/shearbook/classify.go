@@ -1,0 +1,234 @@
+package main
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"strings"
+
+	"github.com/spf13/cobra"
+
+	"shearbook/profile"
+	"shearbook/profile/open"
+	"shearbook/report"
+	"shearbook/report/notebook"
+	"shearbook/vs30"
+	"shearbook/vs30/siteclass"
+)
+
+// classifyFlags are the flags of classify.
+type classifyFlags struct {
+	codes                            []string
+	datum, foundation, extend, units string
+	format                           string
+}
+
+func newClassify(s streams) *cobra.Command {
+	var f classifyFlags
+	c := &cobra.Command{
+		Use:   "classify PROFILE…",
+		Short: "Say the site class of profiles, with the steps of the decision",
+		Long: `classify reads profiles, averages them as each code asks, and says the class
+with every comparison that led to it. - reads standard input. What velocities
+cannot settle is listed as not assessed: a notebook can state it.`,
+		Example: `  shearbook classify line-1.csv --code asce-7-16
+  shearbook classify *.csv --code ec8-2004,ntc-2018 --datum 2.5m
+  shearbook classify - --code nbcc-2015 --format json < line-1.csv`,
+		Args: arguments(1, -1, "at least one profile file"),
+		RunE: func(_ *cobra.Command, args []string) error { return classify(s, f, args) },
+	}
+	fl := c.Flags()
+	fl.StringSliceVar(&f.codes, "code", nil, "the `code`s to classify under")
+	fl.StringVar(&f.datum, "datum", "", "`depth` below ground level to average from, as 2.5m")
+	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the underside of the foundation, as 1.5m")
+	fl.StringVar(&f.extend, "extend", "", "`constant-velocity`: carry a profile that is too short on")
+	fl.StringVar(&f.units, "units", "", "`units` that the file does not state, as \"m, m/s\"")
+	fl.StringVar(&f.format, "format", "text", "`text or json`")
+	completeCodes(c)
+	completeWords(c, "extend", report.Extensions...)
+	completeWords(c, "format", "text", "json")
+	return c
+}
+
+// classify is the whole of `shearbook classify`. Nothing is printed where
+// any profile is at fault.
+func classify(s streams, f classifyFlags, names []string) error {
+	facts, codes, err := f.read()
+	if err != nil {
+		return err
+	}
+	var faults profile.Faults
+	var found []classified
+	for _, name := range names {
+		profiles, err := openProfiles(s.in, name, f.units)
+		if err != nil {
+			if faults, err = join(faults, err); err != nil {
+				return err
+			}
+			continue
+		}
+		for i := range profiles {
+			for _, code := range codes {
+				d, err := report.Classify(&profiles[i], code, facts)
+				if err != nil {
+					faults = append(faults, tooShort(&profiles[i], code, err))
+					continue
+				}
+				found = append(found, classified{&profiles[i], d, report.Average30(&profiles[i], d.Datum, facts)})
+			}
+		}
+	}
+	if len(faults) > 0 {
+		return faults
+	}
+	if f.format == "json" {
+		var results []report.Result
+		for _, c := range found {
+			results = append(results, report.NewResult(c.profile, c.decision, c.vs30))
+		}
+		return report.WriteResults(s.out, results)
+	}
+	var b strings.Builder
+	for _, c := range found {
+		s.writeDecision(&b, c)
+	}
+	b.WriteString(wrap(report.Caution, width, "") + "\n")
+	_, err = io.WriteString(s.out, b.String())
+	return err
+}
+
+// classified is one answer.
+type classified struct {
+	profile  *profile.Profile
+	decision siteclass.Decision
+	vs30     *float64
+}
+
+// read checks the flags.
+func (f classifyFlags) read() (facts report.Facts, codes []*siteclass.Code, err error) {
+	if len(f.codes) == 0 {
+		return facts, nil, misuse("add --code asce-7-16, or another of `shearbook codes`", "classify needs a code")
+	}
+	if err := checkCodes(f.codes); err != nil {
+		return facts, nil, err
+	}
+	for _, id := range f.codes {
+		code, _ := siteclass.Find(id) // checked above
+		codes = append(codes, code)
+	}
+	if facts.Datum, err = depthFlag("datum", f.datum); err != nil {
+		return facts, nil, err
+	}
+	if facts.Foundation, err = depthFlag("foundation-depth", f.foundation); err != nil {
+		return facts, nil, err
+	}
+	if facts.Extend = f.extend; f.extend != "" {
+		err = checkExtend(f.extend)
+	}
+	if f.format != "text" && f.format != "json" {
+		err = misuse("it is text or json", "format %q is not known", f.format)
+	}
+	return facts, codes, err
+}
+
+// openProfiles reads a file, or standard input for -.
+func openProfiles(in io.Reader, name, units string) ([]profile.Profile, error) {
+	if name == "-" {
+		return open.Reader("standard input", in, open.Options{Units: units})
+	}
+	return open.File(name, open.Options{Units: units})
+}
+
+// join adds the faults of err to faults; an error of another kind comes
+// back.
+func join(faults profile.Faults, err error) (profile.Faults, error) {
+	var more profile.Faults
+	if !errors.As(err, &more) {
+		return faults, err
+	}
+	return append(faults, more...), nil
+}
+
+// tooShort is the fault of a profile that a code cannot classify.
+func tooShort(p *profile.Profile, code *siteclass.Code, err error) profile.Fault {
+	at := profile.Place{}
+	if p.Reading != nil {
+		at.File = p.Reading.File
+		if n := len(p.Layers); n > 0 {
+			at.Line, at.Column = int(p.Layers[n-1].Line), int(p.Layers[n-1].Column)
+		}
+	}
+	text := err.Error()
+	var short *vs30.ShortError
+	if errors.As(err, &short) {
+		text = fmt.Sprintf("profile %q reaches %.4g m below ground level; %s needs %.4g m", p.Name, short.Reached, code.ID, short.Needed)
+	}
+	return profile.Faultf(at, "add --extend constant-velocity if the lowest velocity may be taken to continue, or survey deeper", "%s", text)
+}
+
+// writeDecision lays one answer out for the terminal.
+func (s streams) writeDecision(b *strings.Builder, c classified) {
+	d := c.decision
+	where := ""
+	if r := c.profile.Reading; r != nil && r.File != c.profile.Name {
+		where = " (" + report.Visible(r.File) + ")"
+	}
+	fmt.Fprintf(b, "%s%s: %s\n", report.Visible(c.profile.Name), where, s.bold("site class "+d.Class))
+	line := func(label, text string) {
+		fmt.Fprintf(b, "  %s%s\n", pad(label, 10), wrap(text, width-12, strings.Repeat(" ", 12)))
+	}
+	line("code", d.Code.ID+": "+d.Code.Edition+", "+d.Code.Table)
+	line("average", fmt.Sprintf("%s over %s %s", velocities(d.Velocity), lengths(d.Thickness), below(d.Datum)))
+	if c.vs30 != nil && d.Thickness != 30 {
+		line("Vs30", velocities(*c.vs30))
+	}
+	line("reached", lengths(c.profile.DepthReached())+"; velocities "+d.Basis)
+	if d.Margin != nil {
+		line("next", fmt.Sprintf("class %s at %.4g %s: the average would be %s", d.Margin.ToClass, d.Margin.Bound, d.Margin.Unit, notebook.MarginText(d.Margin)))
+	}
+	line("standing", d.Standing.String())
+	b.WriteString("  steps\n")
+	g := grid{indent: "    ", wraps: 1}
+	for i, st := range d.Steps {
+		g.rows = append(g.rows, []string{fmt.Sprintf("%d", i+1), st.Text, notebook.Comparison(st), map[bool]string{true: "yes", false: "no"}[st.Holds]})
+	}
+	if len(g.rows) > 0 {
+		b.WriteString(g.String())
+	}
+	writeList(b, "notes", noteTexts(d.Notes))
+	writeList(b, "not assessed", d.Unassessed)
+	b.WriteByte('\n')
+}
+
+func noteTexts(notes []profile.Note) []string {
+	var texts []string
+	for _, n := range notes {
+		texts = append(texts, n.Text)
+	}
+	return texts
+}
+
+func writeList(b *strings.Builder, label string, texts []string) {
+	if len(texts) == 0 {
+		return
+	}
+	fmt.Fprintf(b, "  %s\n", label)
+	for _, t := range texts {
+		fmt.Fprintf(b, "    - %s\n", wrap(report.Visible(t), width-6, "      "))
+	}
+}
+
+func velocities(v float64) string {
+	return fmt.Sprintf("%.1f m/s (%.1f ft/s)", v, v/profile.Foot)
+}
+
+func lengths(v float64) string {
+	return fmt.Sprintf("%.4g m (%.4g ft)", v, v/profile.Foot)
+}
+
+func below(datum float64) string {
+	if datum == 0 {
+		return "below ground level"
+	}
+	return "below a datum at " + lengths(datum) + " depth"
+}

@@ -1,0 +1,274 @@
+package delimited
+
+import (
+	"slices"
+	"strings"
+
+	"shearbook/profile"
+)
+
+// separators that are tried, the first of equally good ones wins.
+const separators = "\t;,"
+
+// columns is the header of a table.
+type columns struct {
+	list  []column
+	index [profile.RefusalWord + 1]int // of each quantity in list; -1 if it has no column
+	given []string                     // "Vs (ft/s)" and so on, whose units Options gives
+	notes []profile.Note               // on columns named depth
+}
+
+type column struct {
+	heading
+	spot
+	used bool // a row has something in it
+}
+
+// readHeader reads the header and the row of units, if there is one.
+func (r *reader) readHeader() bool {
+	if !r.chooseSeparator() {
+		return false
+	}
+	if !r.headerRow() {
+		return false
+	}
+	r.columns.list = make([]column, len(r.scan.cells))
+	for i := range r.scan.cells {
+		c := &r.scan.cells[i]
+		r.columns.list[i] = column{heading: parseHeading(string(c.text)), spot: r.scan.spotOf(c)}
+	}
+	r.dropTrailing()
+	return r.decideDepth() && r.indexColumns() && r.required() && r.readUnits()
+}
+
+// headerRow reads the first row that is not blank.
+func (r *reader) headerRow() bool {
+	for {
+		ok, bad := r.scan.next()
+		switch {
+		case bad != nil:
+			r.trouble(bad)
+			return false
+		case !ok:
+			r.fault(spot{}, hintTable, "the file has no header and no layers")
+			return false
+		case !r.scan.blank():
+			return true
+		}
+	}
+}
+
+// chooseSeparator takes the separator under which the header names most
+// columns.
+func (r *reader) chooseSeparator() bool {
+	if r.preamble.forced != 0 {
+		r.scan.sep = r.preamble.forced
+		return true
+	}
+	most := -1
+	var first *trouble
+	for _, sep := range []byte(separators) {
+		try := r.scan
+		try.sep, try.cells = sep, nil
+		ok, bad := true, (*trouble)(nil)
+		for ok = true; ok; {
+			if ok, bad = try.next(); ok && !try.blank() {
+				break
+			}
+		}
+		if bad != nil {
+			first = bad
+			continue
+		}
+		if n := recognised(try.cells); n > most {
+			most, r.scan.sep = n, sep
+		}
+	}
+	if most < 0 {
+		r.trouble(first)
+	}
+	return most >= 0
+}
+
+// recognised rates a header: the columns that it names, then its cells.
+func recognised(cells []cell) int {
+	n := len(cells)
+	for i := range cells {
+		if parseHeading(string(cells[i].text)).quantity != profile.Unknown {
+			n += MaxColumns + 1
+		}
+	}
+	return n
+}
+
+// dropTrailing drops the columns at the right that have no heading. What
+// stands in them is then a fault of its row.
+func (r *reader) dropTrailing() {
+	list := r.columns.list
+	for len(list) > 0 && list[len(list)-1].name == "" {
+		list = list[:len(list)-1]
+	}
+	r.columns.list = list
+}
+
+// decideDepth decides what a column named depth is.
+func (r *reader) decideDepth() bool {
+	has := func(q profile.Quantity) bool {
+		return slices.ContainsFunc(r.columns.list, func(c column) bool { return c.quantity == q && !c.depth })
+	}
+	i := slices.IndexFunc(r.columns.list, func(c column) bool { return c.depth })
+	if i < 0 {
+		return true
+	}
+	c := &r.columns.list[i]
+	if has(profile.Top) && has(profile.Bottom) {
+		c.quantity, c.depth = profile.Unknown, false // a depth inside the layer
+		return r.decideDepth()
+	}
+	if slices.ContainsFunc(r.columns.list[i+1:], func(c column) bool { return c.depth }) {
+		return true // two of them, which indexColumns tells
+	}
+	thickness := slices.IndexFunc(r.columns.list, func(c column) bool { return c.quantity == profile.Thickness })
+	first, firstThickness := r.firstValues(i, thickness)
+	switch {
+	case has(profile.Bottom) || !has(profile.Top) && first == 0:
+		r.note("depth-as-top", c, "the top", "its first value is 0 or the bottoms have a column of their own")
+	case has(profile.Top) || first > 0 && first == firstThickness:
+		c.quantity = profile.Bottom
+		r.note("depth-as-bottom", c, "the bottom", "the tops have a column of their own or its first value is the first thickness")
+	default:
+		r.fault(c.spot, `name it top or bottom`, "column %s may be the top or the bottom of the layers", quote(c.name))
+		return false
+	}
+	return true
+}
+
+func (r *reader) note(id string, c *column, what, why string) {
+	r.columns.notes = append(r.columns.notes, profile.Note{
+		ID:    id,
+		Text:  "column " + quote(c.name) + " was taken for " + what + " of each layer, because " + why,
+		Place: profile.Place{File: r.file, Line: c.line, Column: c.column},
+	})
+}
+
+// firstValues looks ahead for the first numbers in columns i and j; -1 if
+// there is none.
+func (r *reader) firstValues(i, j int) (first, second float64) {
+	first, second = -1, -1
+	ahead := r.scan
+	ahead.cells = nil
+	for range 3 { // a row of units, and a blank one
+		if ok, bad := ahead.next(); !ok || bad != nil {
+			break
+		}
+		if v, problem := metadataNumber(string(ahead.cell(i))); problem == "" {
+			first = v
+			if w, problem := metadataNumber(string(ahead.cell(j))); j >= 0 && problem == "" {
+				second = w
+			}
+			break
+		}
+	}
+	return first, second
+}
+
+// indexColumns finds the column of each quantity.
+func (r *reader) indexColumns() bool {
+	ok := true
+	for q := range r.columns.index {
+		r.columns.index[q] = -1
+	}
+	for i := range r.columns.list {
+		c := &r.columns.list[i]
+		before := r.columns.index[c.quantity]
+		switch {
+		case c.quantity == profile.Unknown:
+		case before >= 0:
+			r.fault(c.spot, "keep one, or rename one of them", "columns %s and %s both give %s",
+				quote(r.columns.list[before].name), quote(c.name), c.quantity)
+			ok = false
+		default:
+			r.columns.index[c.quantity] = i
+		}
+	}
+	return ok
+}
+
+func (r *reader) has(q profile.Quantity) bool { return r.columns.index[q] >= 0 }
+
+// required looks for the columns that a table cannot do without.
+func (r *reader) required() bool {
+	depth := r.has(profile.Top) || r.has(profile.Bottom) || r.has(profile.Thickness)
+	vs := r.has(profile.Vs)
+	at := spot{r.headerLine(), 1}
+	switch {
+	case !vs && !depth:
+		r.fault(at, r.hintNoTable(), "this does not look like a table of layers: no column of depth and none of Vs in %s", r.seen())
+	case !vs:
+		r.fault(at, r.hintNoTable(), "no column of Vs in %s", r.seen())
+	case !depth:
+		r.fault(at, r.hintNoTable(), "no column of top, bottom or thickness in %s", r.seen())
+	}
+	if r.has(profile.VsLower) != r.has(profile.VsUpper) {
+		q := profile.VsLower
+		if r.has(profile.VsUpper) {
+			q = profile.VsUpper
+		}
+		r.fault(r.columnOf(q).spot, "give both, or neither", "%s has no counterpart", q)
+		return false
+	}
+	if r.has(profile.VsLower) && r.has(profile.SigmaLnVs) {
+		r.fault(r.columnOf(profile.SigmaLnVs).spot, "keep one of them", "sigma of ln Vs is given twice, as such and by a lower and an upper Vs")
+		return false
+	}
+	return vs && depth
+}
+
+func (r *reader) columnOf(q profile.Quantity) *column { return &r.columns.list[r.columns.index[q]] }
+
+func (r *reader) headerLine() int {
+	if len(r.columns.list) > 0 {
+		return r.columns.list[0].line
+	}
+	return r.scan.end.line
+}
+
+// seen is what the header holds, for messages.
+func (r *reader) seen() string {
+	const most = 8
+	var seen []string
+	for i, c := range r.columns.list {
+		if i == most {
+			seen = append(seen, "…")
+			break
+		}
+		seen = append(seen, quote(c.name))
+	}
+	if len(seen) == 0 {
+		return "a row of blank cells"
+	}
+	return strings.Join(seen, ", ")
+}
+
+// hintNoTable says what to do with a header that is none: numbers were found
+// in its place, or a row further down looks like one.
+func (r *reader) hintNoTable() string {
+	for i := range r.columns.list {
+		if _, problem := metadataNumber(r.columns.list[i].name); problem == "" {
+			return "put a row with the names of the columns above it, such as top_m,bottom_m,vs_mps"
+		}
+	}
+	ahead := r.scan
+	ahead.cells = nil
+	for range 50 {
+		for _, sep := range []byte(separators) {
+			try := ahead
+			try.sep, try.cells = sep, nil
+			if ok, bad := try.next(); ok && bad == nil && recognised(try.cells) > 2*MaxColumns {
+				return "line " + count(try.end.line, "")[:len(count(try.end.line, ""))-1] + "looks like the header: begin the lines above it with #"
+			}
+		}
+		ahead.rawLine()
+	}
+	return hintTable
+}

@@ -1,0 +1,138 @@
+package siteclass
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"shearbook/profile"
+	"shearbook/vs30"
+)
+
+// underfoot says what the layers inside the averaging depth are worth: their
+// basis, whether they are an extension, lie below what the survey reached,
+// are the half-space, or slow down with depth.
+func (r *ruling) underfoot() {
+	r.basis()
+	r.extension()
+	r.belowReach()
+	r.halfSpace()
+	r.reversals()
+}
+
+// survey returns the survey of the profile, if there is one.
+func (r *ruling) survey() profile.Survey {
+	if r.site.Profile == nil {
+		return profile.Survey{}
+	}
+	return r.site.Profile.Survey
+}
+
+// ownEnd returns the depth in m below ground level at which the profile's own
+// layers end, +Inf if they do not.
+func (r *ruling) ownEnd() float64 {
+	own := r.layers
+	if r.site.Profile != nil && len(r.site.Profile.Layers) > 0 {
+		own = r.site.Profile.Layers
+	}
+	return own[len(own)-1].Bottom
+}
+
+// extended reports whether the average goes on below the profile's own
+// layers.
+func (r *ruling) extended() bool {
+	return r.site.Extended && r.bottom()-r.ownEnd() > vs30.Touching
+}
+
+// basis gives the decision the common basis of the velocities, and notes
+// where it is not one, or a correlation.
+func (r *ruling) basis() {
+	var seen [profile.Correlated + 1]bool
+	kinds := 0
+	for i := range r.layers {
+		l := &r.layers[i]
+		if min(l.Bottom, r.bottom())-max(l.Top, r.datum) <= vs30.Touching || l.Top >= r.ownEnd() {
+			continue
+		}
+		b := l.Basis
+		if b == profile.BasisNotStated {
+			b = r.survey().Basis
+		}
+		if !seen[b] {
+			seen[b], kinds = true, kinds+1
+			r.d.Basis = b.String()
+		}
+	}
+	if kinds > 1 {
+		r.d.Basis = "mixed"
+	}
+	r.noteBasis(seen[profile.Correlated], kinds > 1)
+	if r.extended() {
+		r.d.Basis = "extended"
+	}
+}
+
+func (r *ruling) noteBasis(correlated, mixed bool) {
+	switch {
+	case correlated && mixed:
+		r.note("correlated", "some of the velocities are correlated from other tests, not measured; %s", r.code.Correlated)
+	case correlated:
+		r.note("correlated", "the velocities are correlated from other tests, not measured; %s", r.code.Correlated)
+	case mixed:
+		r.note("mixed-basis", "the velocities averaged are not all known in the same way")
+	}
+}
+
+// extension notes what the code says of a profile carried on below its end.
+func (r *ruling) extension() {
+	if r.extended() && r.code.Short != "" {
+		r.note("extension-rule", "the profile ends %s below ground level; %s", r.length(r.ownEnd()), r.code.Short)
+	}
+}
+
+// belowReach notes where the average uses layers of the profile below the
+// depth that the survey states it reached.
+func (r *ruling) belowReach() {
+	reached := r.survey().DepthReached
+	if used := min(r.bottom(), r.ownEnd()); reached > 0 && used-reached > vs30.Touching {
+		r.note("below-depth-reached", "the survey reached %s below ground level; the average uses the profile down to %s",
+			r.length(reached), r.length(used))
+	}
+}
+
+// halfSpace notes where the average uses the half-space.
+func (r *ruling) halfSpace() {
+	last := &r.layers[len(r.layers)-1]
+	if used := r.bottom() - max(last.Top, r.datum); last.HalfSpace() && used > vs30.Touching && !r.extended() {
+		r.note("half-space", "the lowest %s of the average, from %s below ground level, are the half-space, %s",
+			r.length(used), r.length(max(last.Top, r.datum)), quantity(last.Vs, r.code.Unit))
+	}
+}
+
+// reversals notes where the velocity falls with depth inside the average.
+func (r *ruling) reversals() {
+	found := vs30.Reversals(r.layers, r.datum, r.bottom())
+	if len(found) == 0 {
+		return
+	}
+	const most = 3
+	var falls []string
+	for _, f := range found[:min(most, len(found))] {
+		falls = append(falls, fmt.Sprintf("from %s to %s at %s", number(f.Above/r.code.Unit.Factor),
+			quantity(f.Below, r.code.Unit), r.length(f.Depth)))
+	}
+	text := "the velocity falls with depth: " + strings.Join(falls, ", ")
+	if more := len(found) - most; more > 0 {
+		text += fmt.Sprintf(", and %d more", more)
+	}
+	r.d.Notes = append(r.d.Notes, profile.Note{ID: "reversal", Text: text, Place: r.place(&r.layers[found[0].Layer])})
+}
+
+// reach returns how far below the datum, in m, the survey itself goes.
+func (r *ruling) reach() float64 {
+	end := r.ownEnd()
+	if reached := r.survey().DepthReached; reached > 0 {
+		end = math.Min(end, reached)
+	}
+	return max(0, end-r.datum)
+}
