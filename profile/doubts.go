@@ -93,7 +93,7 @@ func (p *Profile) suspect(l *Layer, format string, args ...any) Note {
 	text := fmt.Sprintf(format, args...)
 	if p.Reading != nil {
 		if unit := p.Reading.Unit(Vs); unit != "" {
-			text += fmt.Sprintf(" (read in %s)", unit)
+			text += fmt.Sprintf(" (the file gives it in %s)", unit)
 		}
 	}
 	return Note{ID: "unit-suspect", Text: text, Place: p.placeOf(l)}
@@ -146,7 +146,7 @@ func lowVpVs(p *Profile) (Note, bool) {
 		if r := l.vpVs(); r < ZeroPoisson*(1-vpVsRounding) {
 			return Note{
 				ID:    "low-vp-vs",
-				Text:  fmt.Sprintf("Vp/Vs = %.4g at %.4g m is below 1.4142: Poisson's ratio is negative", r, l.Top),
+				Text:  fmt.Sprintf("Vp/Vs = %.5g at %.4g m is below 1.4142: Poisson's ratio is negative", r, l.Top),
 				Place: p.placeOf(l),
 			}, true
 		}

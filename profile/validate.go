@@ -148,7 +148,7 @@ func (v *validator) velocities(i int) {
 	}
 	if r := l.vpVs(); r < MinVpVs*(1-vpVsRounding) {
 		v.at(l, "check which column is Vp, and the units of both",
-			"Vp/Vs = %.4g of layer %d is below 1.1547, which no solid can have", r, i+1)
+			"Vp/Vs = %.5g of layer %d is below 1.1547, which no solid can have", r, i+1)
 	}
 }
 

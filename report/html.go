@@ -34,7 +34,7 @@ func HTML(w io.Writer, d *Document, opt HTMLOptions) error {
 	if strings.ContainsAny(opt.Style, "<&") {
 		return errors.New("the style sheet holds < or &, which would end it early in HTML")
 	}
-	p := &html{footnotes: len(d.Footnotes), mentions: make([]int, len(d.Footnotes)+1)}
+	p := &html{b: new(strings.Builder), footnotes: len(d.Footnotes), mentions: make([]int, len(d.Footnotes)+1)}
 	body := p.body(d)
 	if p.err != nil {
 		return p.err
@@ -86,7 +86,7 @@ func pageTitle(d *Document) string {
 
 // html prints blocks into b.
 type html struct {
-	b         strings.Builder
+	b         *strings.Builder
 	anchors   Anchors
 	footnotes int
 	mentions  []int // of each footnote, by number
@@ -107,7 +107,7 @@ func (p *html) body(d *Document) string {
 	if len(notes) > 0 {
 		p.b.WriteString("<section class=\"footnotes\" role=\"doc-endnotes\" aria-label=\"Footnotes\">\n<ol>\n")
 		for i, note := range notes {
-			fmt.Fprintf(&p.b, "<li id=\"fn:%d\">\n%s</li>\n", i+1, withBackLinks(note, i+1, p.mentions[i+1]))
+			fmt.Fprintf(p.b, "<li id=\"fn:%d\">\n%s</li>\n", i+1, withBackLinks(note, i+1, p.mentions[i+1]))
 		}
 		p.b.WriteString("</ol>\n</section>\n")
 	}
@@ -118,7 +118,7 @@ func (p *html) body(d *Document) string {
 // apart returns what print prints, and leaves p.b as it was.
 func (p *html) apart(print func()) string {
 	before := p.b
-	p.b = strings.Builder{}
+	p.b = new(strings.Builder)
 	print()
 	printed := p.b.String()
 	p.b = before
@@ -214,7 +214,8 @@ func (p *html) list(l *List) {
 	p.b.WriteString("</" + name + ">\n")
 }
 
-// item prints an item of a list; in a tight one its paragraphs are bare.
+// item prints an item of a list. The first paragraph of one in a tight list,
+// or behind a box, is bare.
 func (p *html) item(item ListItem, tight bool) {
 	switch item.Task {
 	case NoTask:
@@ -228,8 +229,7 @@ func (p *html) item(item ListItem, tight bool) {
 	}
 	for i, b := range item.Blocks {
 		para, ok := b.(*Paragraph)
-		bare := ok && (tight || item.Task != NoTask && i == 0)
-		if bare && i == 0 {
+		if ok && i == 0 && (tight || item.Task != NoTask) {
 			p.inlines(para.Inline)
 			continue
 		}
@@ -250,7 +250,7 @@ func (p *html) code(c *CodeBlock) {
 	if text != "" && !strings.HasSuffix(text, "\n") {
 		text += "\n"
 	}
-	fmt.Fprintf(&p.b, "<pre><code%s>%s</code></pre>\n", attributes, escapeXML(text))
+	fmt.Fprintf(p.b, "<pre><code%s>%s</code></pre>\n", attributes, escapeXML(text))
 }
 
 func (p *html) figure(f *Figure) {
@@ -280,13 +280,13 @@ func (p *html) image(i *Image) {
 	default:
 		panic(fmt.Sprintf("report: image %q of unknown format %q", i.Name, i.Format))
 	}
-	fmt.Fprintf(&p.b, `<figure><img src="data:%s;base64,%s" alt="%s"`, media,
+	fmt.Fprintf(p.b, `<figure><img src="data:%s;base64,%s" alt="%s"`, media,
 		base64.StdEncoding.EncodeToString(i.Data), escapeXML(words(i.Alt)))
 	if i.Width > 0 && i.Height > 0 {
-		fmt.Fprintf(&p.b, ` width="%d" height="%d"`, i.Width, i.Height)
+		fmt.Fprintf(p.b, ` width="%d" height="%d"`, i.Width, i.Height)
 	}
 	if title := words(i.Title); title != "" {
-		fmt.Fprintf(&p.b, ` title="%s"`, escapeXML(title))
+		fmt.Fprintf(p.b, ` title="%s"`, escapeXML(title))
 	}
 	p.b.WriteString("/></figure>\n")
 }

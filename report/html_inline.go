@@ -65,7 +65,7 @@ func (p *html) link(l *Link) {
 		return
 	}
 	p.inLink = true
-	fmt.Fprintf(&p.b, `<a href="%s">`, escapeXML(encodeURL(l.URL)))
+	fmt.Fprintf(p.b, `<a href="%s">`, escapeXML(encodeURL(l.URL)))
 	if plain(l.Inline) == "" {
 		p.text(l.URL)
 	}
@@ -86,6 +86,6 @@ func (p *html) footnoteRef(ref FootnoteRef) {
 		return
 	}
 	p.mentions[ref]++
-	fmt.Fprintf(&p.b, `<sup class="ref"><a id="ref:%d:%d" href="#fn:%d" role="doc-noteref" aria-label="Footnote %d">%d</a></sup>`,
+	fmt.Fprintf(p.b, `<sup class="ref"><a id="ref:%d:%d" href="#fn:%d" role="doc-noteref" aria-label="Footnote %d">%d</a></sup>`,
 		ref, p.mentions[ref], ref, ref, ref)
 }

@@ -10,7 +10,7 @@ func (p *html) table(t *Table) {
 	if t.Compact {
 		class = "data compact"
 	}
-	fmt.Fprintf(&p.b, "<div class=\"%s\">\n<table>\n", class)
+	fmt.Fprintf(p.b, "<div class=\"%s\">\n<table>\n", class)
 	if len(t.Caption) > 0 {
 		p.element("caption", "", t.Caption)
 	}
@@ -85,7 +85,7 @@ func (p *html) cell(name, attributes, class string, inlines []Inline, tail int) 
 	before, behind, ok := splitDecimal(inlines)
 	if tail > 0 && ok {
 		p.inlines(before)
-		fmt.Fprintf(&p.b, `<span class="tail%d">`, tail)
+		fmt.Fprintf(p.b, `<span class="tail%d">`, tail)
 		p.inlines(behind)
 		p.b.WriteString("</span>")
 	} else {

@@ -162,13 +162,15 @@ func prefixed(lines []string, first, rest string) []string {
 	return out
 }
 
+// list returns the lines of a list. An empty item holds a space, written so
+// that it is seen: some readers end the list behind one that holds nothing.
 func (p *markdown) list(l *List, width int, other bool) []string {
 	var lines []string
 	for i, item := range l.Items {
 		marker := marker(l, i, other)
 		part := p.item(item, l.Tight, width-len(marker))
 		if len(part) == 0 {
-			part = []string{""}
+			part = []string{"&#32;"}
 		}
 		part = prefixed(part, marker, strings.Repeat(" ", len(marker)))
 		if l.Tight {
@@ -213,7 +215,7 @@ func (p *markdown) item(item ListItem, tight bool, width int) []string {
 func interrupts(a, b Block) bool {
 	_, ok := a.(*Paragraph)
 	l, ok2 := b.(*List)
-	return ok && ok2 && (!l.Ordered || l.Start == 1) && len(l.Items[0].Blocks) > 0
+	return ok && ok2 && (!l.Ordered || l.Start == 1)
 }
 
 func taskBox(t Task) string {

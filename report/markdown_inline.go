@@ -47,20 +47,31 @@ type lexer struct {
 	refs      []FootnoteRef // of a link: they stand behind it
 }
 
-// lex returns the tokens of inlines at a place, and the footnotes that must
-// follow them.
-func (p *markdown) lex(inlines []Inline, at place) ([]token, []FootnoteRef) {
-	l := &lexer{place: at, footnotes: p.footnotes, active: map[string]bool{}, alias: map[int]int{}}
+// lex returns the tokens of inlines at a place.
+func (p *markdown) lex(inlines []Inline, at place) []token {
+	l := newLexer(at, p.footnotes)
 	l.inlines(inlines)
-	tokens := l.out
+	_, tokens, _ := trimGaps(l.out)
+	return keepSound(tokens, false)
+}
+
+func newLexer(at place, footnotes int) *lexer {
+	return &lexer{place: at, footnotes: footnotes, active: map[string]bool{}, alias: map[int]int{}}
+}
+
+// trimGaps returns tokens without the gaps at their ends, and whether there
+// were any.
+func trimGaps(tokens []token) (before bool, trimmed []token, behind bool) {
 	for len(tokens) > 0 && isGap(tokens[0]) {
-		tokens = tokens[1:]
+		tokens, before = tokens[1:], true
 	}
 	for len(tokens) > 0 && isGap(tokens[len(tokens)-1]) {
-		tokens = tokens[:len(tokens)-1]
+		tokens, behind = tokens[:len(tokens)-1], true
 	}
-	return keepSound(tokens, at == inLink), l.refs
+	return before, tokens, behind
 }
+
+var space = token{kind: tokenSpace, text: " "}
 
 func isGap(t token) bool { return t.kind == tokenSpace || t.kind == tokenBreak }
 
@@ -101,7 +112,7 @@ func (l *lexer) text(s string) {
 			l.out = append(l.out, token{kind: tokenWord, text: word})
 		}
 		if gap {
-			l.gap(token{kind: tokenSpace, text: " "})
+			l.gap(space)
 		}
 		s = rest
 	}
@@ -131,7 +142,7 @@ func (l *lexer) lineBreak() {
 	if l.place == inProse {
 		l.gap(token{kind: tokenBreak, text: "\\\n"})
 	} else {
-		l.gap(token{kind: tokenSpace, text: " "})
+		l.gap(space)
 	}
 }
 
@@ -200,7 +211,8 @@ func (l *lexer) footnote(ref FootnoteRef) {
 	l.out = append(l.out, token{kind: tokenRaw, text: "[^" + strconv.Itoa(int(ref)) + "]"})
 }
 
-// link adds a link. A link inside a link is its text alone.
+// link adds a link. A link inside a link is its text alone. Space at the
+// ends of its text goes outside.
 func (l *lexer) link(in *Link) {
 	if l.place == inLink {
 		l.inlines(in.Inline)
@@ -211,21 +223,33 @@ func (l *lexer) link(in *Link) {
 		l.text(behind(in))
 		return
 	}
-	p := &markdown{footnotes: l.footnotes}
-	tokens, refs := p.lex(in.Inline, inLink)
+	inner := newLexer(inLink, l.footnotes)
+	inner.inlines(in.Inline)
+	before, tokens, behind := trimGaps(inner.out)
+	if before {
+		l.gap(space)
+	}
+	l.out = append(l.out, token{kind: tokenRaw, text: linkSource(in, keepSound(tokens, true))})
+	for _, ref := range inner.refs {
+		l.footnote(ref)
+	}
+	if behind {
+		l.gap(space)
+	}
+}
+
+// linkSource returns a link with tokens as its text, or its URL if there are
+// none.
+func linkSource(in *Link, tokens []token) string {
+	url := encodeURL(in.URL)
+	if auto, ok := autolink(plain(in.Inline), in.URL, url); ok {
+		return auto
+	}
 	text := source(tokens, inLink)
 	if text == "" {
 		text = source(wordTokens(in.URL), inLink)
 	}
-	url := encodeURL(in.URL)
-	raw := "[" + text + "](" + escapeEntities(url) + ")"
-	if auto, ok := autolink(plain(in.Inline), in.URL, url); ok {
-		raw = auto
-	}
-	l.out = append(l.out, token{kind: tokenRaw, text: raw})
-	for _, ref := range refs {
-		l.footnote(ref)
-	}
+	return "[" + text + "](" + escapeEntities(url) + ")"
 }
 
 // behind returns what stands behind the text of a link that is not made one:
@@ -327,6 +351,8 @@ func pieces(tokens []token, at place) []string {
 		case !c.raw && c.r == ' ':
 			out = append(out, b.String())
 			b.Reset()
+		case c == char{'\\', false} && i+1 < len(line) && line[i+1] == char{hardBreak, true}:
+			b.WriteString("&#92;") // three backslashes confuse readers
 		default:
 			if !c.raw && mustEscape(line, i, at, strike) {
 				b.WriteByte('\\')
@@ -339,13 +365,13 @@ func pieces(tokens []token, at place) []string {
 
 // line returns inlines as Markdown that cannot be broken.
 func (p *markdown) line(inlines []Inline) string {
-	tokens, _ := p.lex(inlines, inLine)
+	tokens := p.lex(inlines, inLine)
 	return source(tokens, inLine)
 }
 
 // cell returns inlines as the cell of a table.
 func (p *markdown) cell(inlines []Inline) string {
-	tokens, _ := p.lex(inlines, inCell)
+	tokens := p.lex(inlines, inCell)
 	return strings.ReplaceAll(source(tokens, inCell), "|", `\|`)
 }
 
@@ -355,9 +381,9 @@ func (p *markdown) alt(s string) string { return source(wordTokens(words(s)), in
 // paragraph returns the lines of a paragraph, behind a task's box if there
 // is one.
 func (p *markdown) paragraph(box string, inlines []Inline, width int) []string {
-	tokens, _ := p.lex(inlines, inProse)
+	tokens := p.lex(inlines, inProse)
 	if box != "" {
-		tokens = append([]token{{kind: tokenRaw, text: box}, {kind: tokenSpace, text: " "}}, tokens...)
+		tokens = append([]token{{kind: tokenRaw, text: box}, space}, tokens...)
 	}
 	if len(tokens) == 0 {
 		return nil

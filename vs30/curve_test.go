@@ -61,7 +61,7 @@ func TestCurveEdges(t *testing.T) {
 		{"short profile", ground, 0, 50, 10, 4, 30}, // 0, 10, 20, 30
 		{"no step", ground, 0, 30, 0, 3, 30},
 		{"step that is not a number", ground, 0, 30, math.NaN(), 3, 30},
-		{"step far too small", ground, 0, 30, 1e-300, curveSteps + 1, 30},
+		{"step far too small", ground, 0, 30, 1e-300, curveSteps + 2, 30},
 		{"half-space", space, 0, math.Inf(1), 5, 3, 10}, // 0, 5, 10
 		{"half-space to a depth", space, 0, 20, 5, 5, 20},
 	} {

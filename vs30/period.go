@@ -74,7 +74,7 @@ type column struct {
 // to one part in 10¹⁴, starting the search at guess.
 func (c *column) lowest(guess float64) float64 {
 	lo, hi := 0.0, guess
-	for !c.zero(hi) && !math.IsInf(hi, 1) {
+	for hi > 0 && hi <= math.MaxFloat64 && !c.zero(hi) {
 		lo, hi = hi, 2*hi
 	}
 	for hi-lo > 1e-14*hi {

@@ -38,11 +38,11 @@ cannot settle is listed as not assessed: a notebook can state it.`,
 		RunE: func(_ *cobra.Command, args []string) error { return classify(s, f, args) },
 	}
 	fl := c.Flags()
-	fl.StringSliceVar(&f.codes, "code", nil, "the `code`s to classify under")
-	fl.StringVar(&f.datum, "datum", "", "`depth` below ground level to average from, as 2.5m")
-	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the underside of the foundation, as 1.5m")
-	fl.StringVar(&f.extend, "extend", "", "`constant-velocity`: carry a profile that is too short on")
-	fl.StringVar(&f.units, "units", "", "`units` that the file does not state, as \"m, m/s\"")
+	fl.StringSliceVar(&f.codes, "code", nil, "`ID`s of codes, with commas between")
+	fl.StringVar(&f.datum, "datum", "", "`depth` to average from: 2.5m")
+	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
+	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
+	fl.StringVar(&f.units, "units", "", "`units` the file does not state: \"m, m/s\"")
 	fl.StringVar(&f.format, "format", "text", "`text or json`")
 	completeCodes(c)
 	completeWords(c, "extend", report.Extensions...)

@@ -30,7 +30,7 @@ func newReport(s streams) *cobra.Command {
 	var f reportFlags
 	c := &cobra.Command{
 		Use:   "report NOTEBOOK.md | PROFILE",
-		Short: "Write the report of a notebook, or the standard report of a profile",
+		Short: "Write the report of a notebook, or of one profile file",
 		Long: `report evaluates a notebook and writes its report: report.md, report.html,
 report.pdf, results.json, and the figures as SVG. Without --out they go into
 a folder beside the notebook, named after it. Given a profile file and a code
@@ -44,17 +44,17 @@ it does the same through the standard template.`,
 		},
 	}
 	fl := c.Flags()
-	fl.StringVar(&f.out, "out", "", "the `folder` to write; NAME-report beside NAME.md if left out")
+	fl.StringVar(&f.out, "out", "", "`folder` to write, instead of NAME-report")
 	fl.StringVar(&f.paper, "paper", "", "`A4 or Letter`")
-	fl.StringVar(&f.print, "print-units", "", "`SI or US`: the units of the report")
-	fl.StringVar(&f.extend, "extend", "", "`constant-velocity`: carry a profile that is too short on")
-	fl.StringSliceVar(&f.standard.Codes, "code", nil, "the `code`s to classify under, for a profile file")
-	fl.StringVar(&f.standard.Units, "units", "", "`units` that the profile file does not state, as \"m, m/s\"")
-	fl.StringVar(&f.datum, "datum", "", "`depth` to average from, as 2.5m")
-	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the underside of the foundation, as 1.5m")
-	fl.StringVar(&f.standard.Project, "project", "", "`name` of the project, for a profile file")
-	fl.StringVar(&f.standard.PreparedBy, "prepared-by", "", "`name` of who prepares the report, for a profile file")
-	fl.StringVar(&f.standard.Date, "date", "", "`date` of the report, for a profile file")
+	fl.StringVar(&f.print, "print-units", "", "`SI or US`, to print in")
+	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
+	fl.StringSliceVar(&f.standard.Codes, "code", nil, "`ID`s of codes, for a profile file")
+	fl.StringVar(&f.standard.Units, "units", "", "`units` the file does not state: \"m, m/s\"")
+	fl.StringVar(&f.datum, "datum", "", "`depth` to average from: 2.5m")
+	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
+	fl.StringVar(&f.standard.Project, "project", "", "`name`, for a profile file")
+	fl.StringVar(&f.standard.PreparedBy, "prepared-by", "", "`name`, for a profile file")
+	fl.StringVar(&f.standard.Date, "date", "", "`date`, for a profile file")
 	completeWords(c, "paper", "A4", "Letter")
 	completeWords(c, "print-units", "SI", "US")
 	completeWords(c, "extend", report.Extensions...)
@@ -67,6 +67,13 @@ var forProfileOnly = []string{"code", "units", "datum", "foundation-depth", "pro
 
 // writeReport is the whole of `shearbook report`.
 func writeReport(s streams, c *cobra.Command, f reportFlags, source string) error {
+	dir := f.out
+	switch {
+	case dir == "" && source == "-":
+		return misuse("add --out DIR", "a profile from standard input has no folder to put the report beside")
+	case dir == "":
+		dir = folder.NameFor(source)
+	}
 	src, err := openSource(s.in, source)
 	if err != nil {
 		return err
@@ -92,13 +99,6 @@ func writeReport(s streams, c *cobra.Command, f reportFlags, source string) erro
 	files, err := folder.Files(made.Document, made.Results, opt)
 	if err != nil {
 		return src.relocate(placeGlyphs(err, nb))
-	}
-	dir := f.out
-	if dir == "" {
-		if source == "-" {
-			return misuse("add --out DIR", "a profile from standard input has no folder to put the report beside")
-		}
-		dir = folder.NameFor(source)
 	}
 	if err := folder.Write(dir, files); err != nil {
 		return hinted{err, "choose another folder with --out"}

@@ -2,6 +2,7 @@ package delimited
 
 import (
 	"slices"
+	"strconv"
 	"strings"
 
 	"shearbook/profile"
@@ -131,13 +132,18 @@ func (r *reader) decideDepth() bool {
 	thickness := slices.IndexFunc(r.columns.list, func(c column) bool { return c.quantity == profile.Thickness })
 	first, firstThickness := r.firstValues(i, thickness)
 	switch {
-	case has(profile.Bottom) || !has(profile.Top) && first == 0:
-		r.note("depth-as-top", c, "the top", "its first value is 0 or the bottoms have a column of their own")
-	case has(profile.Top) || first > 0 && first == firstThickness:
+	case has(profile.Bottom):
+		r.note("depth-as-top", c, "the top", "the bottoms have a column of their own")
+	case has(profile.Top):
 		c.quantity = profile.Bottom
-		r.note("depth-as-bottom", c, "the bottom", "the tops have a column of their own or its first value is the first thickness")
+		r.note("depth-as-bottom", c, "the bottom", "the tops have a column of their own")
+	case first == 0:
+		r.note("depth-as-top", c, "the top", "its first value is 0")
+	case first > 0 && first == firstThickness:
+		c.quantity = profile.Bottom
+		r.note("depth-as-bottom", c, "the bottom", "its first value is the first thickness")
 	default:
-		r.fault(c.spot, `name it top or bottom`, "column %s may be the top or the bottom of the layers", quote(c.name))
+		r.fault(c.spot, "name it top or bottom; a first value of 0 would make it the top", "column %s may be the top or the bottom of the layers", quote(c.name))
 		return false
 	}
 	return true
@@ -214,7 +220,7 @@ func (r *reader) required() bool {
 		if r.has(profile.VsUpper) {
 			q = profile.VsUpper
 		}
-		r.fault(r.columnOf(q).spot, "give both, or neither", "%s has no counterpart", q)
+		r.fault(r.columnOf(q).spot, "give a lower and an upper Vs, or neither", "%s has no counterpart", q)
 		return false
 	}
 	if r.has(profile.VsLower) && r.has(profile.SigmaLnVs) {
@@ -265,7 +271,7 @@ func (r *reader) hintNoTable() string {
 			try := ahead
 			try.sep, try.cells = sep, nil
 			if ok, bad := try.next(); ok && bad == nil && recognised(try.cells) > 2*MaxColumns {
-				return "line " + count(try.end.line, "")[:len(count(try.end.line, ""))-1] + "looks like the header: begin the lines above it with #"
+				return "line " + strconv.Itoa(try.end.line) + " looks like the header: begin the lines above it with #"
 			}
 		}
 		ahead.rawLine()

@@ -129,12 +129,12 @@ func (r *reader) read(data []byte) {
 
 // decode turns the bytes into text.
 func (r *reader) decode(data []byte) bool {
-	sum := sha256.Sum256(data)
-	r.reading = profile.Reading{File: r.file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data))}
 	if len(data) > MaxBytes {
 		r.fault(spot{}, "split it", "the file is larger than %d MiB", MaxBytes>>20)
 		return false
 	}
+	sum := sha256.Sum256(data)
+	r.reading = profile.Reading{File: r.file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data))}
 	text, encoding, bad := decode(data)
 	if bad != nil {
 		r.trouble(bad)

@@ -22,7 +22,7 @@ type preamble struct {
 type statement struct {
 	text       string // all of it, without the #
 	key, value string
-	spot       // of its #
+	spot           // of its #
 	end        int // column after its last character; 0 if it was quoted
 }
 
@@ -156,7 +156,7 @@ func (r *reader) first(name string, k key, st *statement) bool {
 
 // own splits the lines that hold for one profile from the rest. It returns
 // them by profile, without their "[name]".
-func (r *reader) own(names map[string]bool) map[string][]statement {
+func (r *reader) own(names map[string]int) map[string][]statement {
 	p := &r.preamble
 	found := map[string][]statement{}
 	kept := p.statements[:0]
@@ -180,7 +180,7 @@ func (r *reader) own(names map[string]bool) map[string][]statement {
 // scoped finds the profile that a line "[name] key: value" is about. A name
 // may hold brackets. If no such profile is known but the key is, it returns
 // what seems to be the name, and rest; of any other line rest is "".
-func scoped(text string, names map[string]bool) (name, rest string, ok bool) {
+func scoped(text string, names map[string]int) (name, rest string, ok bool) {
 	if !strings.HasPrefix(text, "[") {
 		return "", "", false
 	}
@@ -189,7 +189,7 @@ func scoped(text string, names map[string]bool) (name, rest string, ok bool) {
 			continue
 		}
 		inside, after := text[1:i], strings.TrimSpace(text[i+1:])
-		if names[inside] && strings.Contains(after, ":") {
+		if names[inside] > 0 && strings.Contains(after, ":") {
 			return inside, after, true
 		}
 		if k, _, found := strings.Cut(after, ":"); found && rest == "" && keyOf(k) != "" {

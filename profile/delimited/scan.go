@@ -54,7 +54,7 @@ func (s *scanner) place(i int) spot {
 
 // cell is the text of cell i of the row last read, blank if it has none.
 func (s *scanner) cell(i int) []byte {
-	if i < len(s.cells) {
+	if i >= 0 && i < len(s.cells) {
 		return s.cells[i].text
 	}
 	return nil

@@ -39,7 +39,10 @@ func ParseUnits(text string) (Units, error) {
 func (u *Units) add(item string) (problem string) {
 	name, text, named := strings.Cut(item, "=")
 	if named {
-		return u.addNamed(name, text)
+		if problem = u.addNamed(name, text); problem != "" {
+			problem = quote(item) + ": " + problem
+		}
+		return problem
 	}
 	for d := profile.Length; d <= profile.Percent; d++ {
 		if unit, ok := unitOf(item, d); ok {
@@ -56,7 +59,7 @@ func (u *Units) addNamed(name, text string) (problem string) {
 	}
 	d := quantities[0].Dimension()
 	unit, ok := unitOf(text, d)
-	if !ok || d == profile.Dimensionless {
+	if !ok {
 		return notAUnit(text, d)
 	}
 	for _, q := range quantities {
@@ -104,7 +107,7 @@ func (u *Units) of(q profile.Quantity) (profile.Unit, bool) {
 // notAUnit says that text is not a unit of dimension d, and which are.
 func notAUnit(text string, d profile.Dimension) string {
 	if d == profile.Dimensionless {
-		return quote(strings.TrimSpace(text)) + " is given for a column that has no unit"
+		return "the column has no unit"
 	}
 	return quote(strings.TrimSpace(text)) + " is not a unit of " + d.String() + " that is read (" +
 		strings.Join(profile.UnitNames(d), ", ") + ")"

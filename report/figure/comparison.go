@@ -105,7 +105,7 @@ func (f *comparison) draw() *report.Picture {
 // what is written about each.
 func (f *comparison) frame(s sheet) *plane {
 	p := &plane{Canvas: s.Canvas, x: f.x}
-	p.Min.X = margin + gap + f.widest(f.name)
+	p.Min.X = margin + gap + max(f.widest(f.name), 2*gap) // half a tick's label goes there
 	f.answers = f.width - margin - gap - f.widest(f.average) - f.widest(f.verdict)
 	p.Max.X = f.answers - 2*gap
 	p.Min.Y = margin + axisHeight

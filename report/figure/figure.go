@@ -18,6 +18,7 @@ import (
 	"fmt"
 	"math"
 	"strconv"
+	"strings"
 
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/draw"
@@ -66,7 +67,7 @@ func (u Units) lengthText(metres float64) string {
 	return strconv.FormatFloat(v, 'f', -1, 64) + noBreak + unit.Name
 }
 
-// noBreak is a space at which no line is broken.
+// noBreak is a space at which no line is broken; it is written as a space.
 const noBreak = "\u00a0"
 
 // velocityNumber returns a velocity in m/s as a number to four digits,
@@ -150,7 +151,7 @@ func (s *sheet) write(l lettering, x, y vg.Length, align draw.XAlignment, text s
 		x += vg.Length(align) * face.Width(text)
 	}
 	s.SetColor(l.colour)
-	s.FillString(face, vg.Point{X: x, Y: y}, text)
+	s.FillString(face, vg.Point{X: x, Y: y}, strings.ReplaceAll(text, noBreak, " "))
 }
 
 // writeUp writes text that reads upward, its base line at x and its middle

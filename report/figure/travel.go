@@ -149,6 +149,10 @@ func (f *travel) drawKey(s *sheet, p *plane) {
 	s.write(plain, x, base, draw.XLeft, text)
 	x += plain.width(text) + 4*gap
 	s.StrokeLine2(thicknessLine, x, middle-5, x, middle+5)
-	s.write(plain, x+gap, base, draw.XLeft, "share of the thickness")
-	s.write(plain, f.width-margin, base, draw.XRight, "time")
+	text = "share of the thickness"
+	s.write(plain, x+gap, base, draw.XLeft, text)
+	x += gap + plain.width(text)
+	if heading := "time"; f.width-margin-plain.width(heading) > x+gap {
+		s.write(plain, f.width-margin, base, draw.XRight, heading)
+	}
 }

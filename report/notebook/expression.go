@@ -139,7 +139,7 @@ func functions(names scope) []expr.Option {
 		expr.DisableAllBuiltins(),
 		expr.MaxNodes(maxNodes),
 		expr.Function("quantity", quantityOf, new(func(int, string) Quantity), new(func(float64, string) Quantity)),
-		expr.Function("in", inUnit, new(func(Quantity, string) Quantity)),
+		expr.Function("number", inUnit, new(func(Quantity, string) Quantity)),
 		expr.Function("round", round, new(func(Quantity, int) Quantity), new(func(float64, int) Quantity)),
 		expr.Function("profile", names.profile, new(func(string) Results)),
 		unary("sqrt", math.Sqrt), unary("ln", math.Log), unary("exp", math.Exp), unary("log10", math.Log10),

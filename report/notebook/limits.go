@@ -58,7 +58,7 @@ func (ev *evaluation) siteNotes(s *site) []string {
 		if editions := concerns[n.Text]; len(editions) < len(ids) && len(editions) > 0 {
 			of += ", " + strings.Join(editions, " and ")
 		}
-		texts = append(texts, of+": "+sentence(n.Text))
+		texts = append(texts, of+": "+strings.TrimSuffix(n.Text, ".")+".")
 	}
 	return texts
 }

@@ -64,11 +64,9 @@ func (s *setter) block(b report.Block, a area) (pieces []*piece, above, below fl
 	case *report.Heading:
 		return s.heading(b, a)
 	case *report.Paragraph:
-		gap := 0.68 * a.size
-		return s.paragraph(b.Inline, a), gap, gap
+		return s.paragraph(b.Inline, a), a.gap(), a.gap()
 	case *report.List:
-		gap := 0.68 * a.size
-		return s.list(b, a), gap, gap
+		return s.list(b, a), a.gap(), a.gap()
 	case *report.Quote:
 		return s.quote(b, a), paragraphGap, paragraphGap
 	case *report.CodeBlock:
@@ -96,6 +94,14 @@ func (s *setter) block(b report.Block, a area) (pieces []*piece, above, below fl
 	default:
 		panic(fmt.Sprintf("pdf: unknown block %T", b))
 	}
+}
+
+// gap is the space between paragraphs, and that between the items of a list.
+func (a area) gap() float64 {
+	if a.tight {
+		return 0.25 * a.size
+	}
+	return 0.68 * a.size
 }
 
 // paragraph sets prose, two lines at least at the foot and the head of a
@@ -160,6 +166,7 @@ func (s *setter) list(l *report.List, a area) []*piece {
 	}
 	inner := a.inset(hang)
 	inner.depth++
+	inner.tight = l.Tight
 	var out []*piece
 	for i, item := range l.Items {
 		pieces := s.flow(item.Blocks, inner)
@@ -167,10 +174,7 @@ func (s *setter) list(l *report.List, a area) []*piece {
 			pieces = []*piece{space(a.leading)}
 		}
 		if i > 0 {
-			pieces[0].above = 0.25 * a.size
-			if !l.Tight {
-				pieces[0].above = 0.6 * a.size
-			}
+			pieces[0].above = inner.gap()
 		}
 		first := pieces[0]
 		y := firstBaseline(first, a.baseline())

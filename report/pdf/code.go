@@ -47,7 +47,7 @@ func (s *setter) codeLine(text string, st style, x, y, width float64) (ops []op,
 	left := width
 	for text != "" {
 		part, as, after := s.printable(text, st)
-		n := s.fitting(as, part, left, 0, left == width)
+		n := s.fitting(as, part, left, width, left == width)
 		if n > 0 {
 			ops = append(ops, &textOp{x, y - as.rise, part[:n], as})
 			w := s.width(as, part[:n])

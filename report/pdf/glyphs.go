@@ -18,8 +18,9 @@ func (s *setter) printable(text string, st style) (part string, as style, rest s
 		return text, st, ""
 	}
 	var b strings.Builder
+	small := s.fonts.lacksFigure(text, st.font)
 	for i, r := range text {
-		use, face, sized := s.substitute(r, st)
+		use, face, sized := s.substitute(r, st, small)
 		if i == 0 {
 			as = sized
 			as.font = face
@@ -40,8 +41,20 @@ func plainASCII(text string) bool {
 	return true
 }
 
-// substitute returns the character, the face and the style that print r.
-func (s *setter) substitute(r rune, st style) (rune, report.Font, style) {
+// lacksFigure tells whether a raised or lowered figure of text is missing
+// from a face. Then all of them are set small, so that they look alike.
+func (f *faces) lacksFigure(text string, font report.Font) bool {
+	for _, r := range text {
+		if plain, _ := smallFigure(r); plain != 0 && f.get(font).glyph(r) == 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// substitute returns the character, the face and the style that print r;
+// small tells that raised and lowered figures are set small.
+func (s *setter) substitute(r rune, st style, small bool) (rune, report.Font, style) {
 	switch {
 	case r == '\u00A0' || unicode.Is(unicode.Zs, r) && s.fonts.get(st.font).glyph(r) == 0:
 		return ' ', st.font, st
@@ -50,14 +63,14 @@ func (s *setter) substitute(r rune, st style) (rune, report.Font, style) {
 	case r == '\u22C5': // dot operator
 		return '·', st.font, st
 	}
-	if face, ok := s.fonts.printer(r, st.font); ok {
-		return r, face, st
-	}
-	if plain, up := smallFigure(r); plain != 0 {
+	if plain, up := smallFigure(r); plain != 0 && small {
 		if up {
 			return plain, st.font, raised(st)
 		}
 		return plain, st.font, lowered(st)
+	}
+	if face, ok := s.fonts.printer(r, st.font); ok {
+		return r, face, st
 	}
 	s.fonts.miss(r)
 	return r, st.font, st
@@ -99,8 +112,12 @@ func (f *faces) miss(r rune) {
 // smallFigure returns what a superscript or subscript stands for.
 func smallFigure(r rune) (plain rune, up bool) {
 	switch {
-	case 0x2070 <= r && r <= 0x207E:
-		return []rune("0i??456789+−=()")[r-0x2070], true
+	case r == '¹':
+		return '1', true
+	case r == '²' || r == '³':
+		return r - '²' + '2', true
+	case r == '\u2070' || 0x2074 <= r && r <= 0x207E:
+		return []rune("0...456789+−=()")[r-0x2070], true
 	case 0x2080 <= r && r <= 0x208E:
 		return []rune("0123456789+−=()")[r-0x2080], false
 	}
@@ -185,7 +202,7 @@ func appendSegment(out []segment, x float64, text string) []segment {
 
 // markStack is how far the marks on a letter have grown, in font units from
 // its own edges.
-type markStack struct{ above, below int }
+type markStack struct{ above, below, count int }
 
 // place centres a mark over or under its letter, clear of it and of the marks
 // before, in font units from the letter's origin. Nothing in the file tells
@@ -197,7 +214,9 @@ func (m *markStack) place(f *face, base, mark rune) (dx, dy float64) {
 		b = bounds{0, 0, 1000, 1082}
 	}
 	shift := 0
+	m.count++
 	switch {
+	case m.count > 4: // no more than five are set clear of each other
 	case k.bottom > 500:
 		shift = b.top + clear + m.above - k.bottom
 		m.above += k.top - k.bottom + clear

@@ -49,7 +49,7 @@ func (s *setter) raggedLines(words []word, width float64) []setLine {
 		for start := end - 1; start >= max(0, end-mostWords); start-- {
 			w += words[start].width
 			if start < end-1 {
-				w += words[start].gap.width
+				w += words[start].gapWidth()
 			}
 			if w > width+0.01 && start < end-1 {
 				break
@@ -106,8 +106,8 @@ func (s *setter) joinWords(words []word) setLine {
 		}
 		l.notes = append(l.notes, w.notes...)
 		switch last := i == len(words)-1; {
-		case !last && w.gap.text != "":
-			add(w.gap)
+		case !last && w.gap != nil:
+			add(*w.gap)
 		case last && w.hyphen:
 			add(run{w.runs[len(w.runs)-1].style, "-", s.hyphenWidth(w)})
 		}
@@ -182,7 +182,7 @@ func (s *setter) fitting(st style, text string, space, width float64, empty bool
 			}
 			return i
 		}
-		if w > space-width/3 && strings.ContainsRune("/\\_-.?&=,;:)]}@#+", r) && i+1 < len(text) {
+		if w > space-width/3 && strings.ContainsRune(" /\\_-.?&=,;:)]}@#+", r) && i+1 < len(text) {
 			good = i + 1
 		}
 	}
@@ -220,7 +220,7 @@ func natural(words []word) float64 {
 			w = 0
 			continue
 		}
-		w += words[i].gap.width
+		w += words[i].gapWidth()
 	}
 	return most
 }
@@ -238,7 +238,7 @@ func (s *setter) lineOps(l setLine, align report.Align, x, y, width float64) []o
 		r := l.runs[i]
 		ops = append(ops, &textOp{x, y - r.rise, r.text, r.style})
 		if r.strike {
-			ops = append(ops, &fillOp{x, y - r.rise - 0.28*r.size, r.width, 0.06 * r.size, r.colour})
+			ops = append(ops, rule(x, y-r.rise-0.27*r.size, r.width, 0.06*r.size, r.colour))
 		}
 		if r.link != nil {
 			ops = append(ops, &linkOp{x, y - r.rise - 0.8*r.size, r.width, 1.05 * r.size, r.link})

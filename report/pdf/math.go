@@ -325,7 +325,7 @@ func (s *setter) mathFrac(m report.MathFrac, size float64) mathBox {
 		num, den = s.math(m.Num, 0.85*size), s.math(m.Den, 0.85*size)
 	}
 	const bar = 0.55
-	gap, side := 0.22*size, 0.14*size
+	gap, side := 0.27*size, 0.14*size
 	w := max(num.width, den.width) + 2*side
 	num.move((w-num.width)/2, -mathAxis*size-gap-num.down)
 	den.move((w-den.width)/2, -mathAxis*size+gap+den.up)
@@ -410,9 +410,11 @@ func (b mathBox) move(dx, dy float64) {
 		case *textOp:
 			o.x += dx
 			o.y += dy
-		case *fillOp:
-			o.x += dx
-			o.y += dy
+		case *pathOp:
+			for i := range o.points {
+				o.points[i].x += dx
+				o.points[i].y += dy
+			}
 		default:
 			panic(fmt.Sprintf("pdf: %T in a formula", o))
 		}

@@ -113,6 +113,7 @@ type setter struct {
 	mentioned map[int]bool     // footnotes whose first mention is set
 	notes     map[int][]*piece // by number
 	anchors   report.Anchors
+	rasters   map[string]*raster
 	err       error // the first
 }
 
@@ -126,7 +127,8 @@ func (s *setter) fail(err error) {
 type area struct {
 	x, width float64
 	look
-	depth int // of lists
+	depth int  // of lists
+	tight bool // in a list without space between its items
 }
 
 func (s *setter) column() area { return area{width: columnWidth, look: bodyLook()} }

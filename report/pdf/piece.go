@@ -1,6 +1,10 @@
 package pdf
 
-import "shearbook/report"
+import (
+	"math"
+
+	"shearbook/report"
+)
 
 // piece is what a page break leaves whole: a line of type, a row of a table,
 // a figure with its caption. A document is one column of pieces.
@@ -36,7 +40,7 @@ type textOp struct {
 	style
 }
 
-// fillOp is a filled rectangle. Rules are fillOps.
+// fillOp is a filled rectangle.
 type fillOp struct {
 	x, y, width, height float64
 	colour              report.Colour
@@ -95,7 +99,7 @@ func (*outlineOp) op() {}
 
 // rule is a horizontal line of a thickness, centred on y.
 func rule(x, y, width, thickness float64, c report.Colour) op {
-	return &fillOp{x, y - thickness/2, width, thickness, c}
+	return &pathOp{points: []point{{x, y}, {x + width, y}}, width: thickness, colour: c}
 }
 
 // box is the outline of a rectangle.
@@ -145,3 +149,14 @@ func enframe(f *frame, pieces []*piece) {
 
 // space is a piece with nothing in it.
 func space(h float64) *piece { return &piece{height: h} }
+
+// circle is a dashed circle.
+func circle(x, y, radius float64, c report.Colour) op {
+	const corners = 72
+	p := &pathOp{closed: true, width: 0.6, dash: []float64{2.5, 2.5}, colour: c}
+	for i := range corners {
+		sin, cos := math.Sincos(2 * math.Pi * float64(i) / corners)
+		p.points = append(p.points, point{x + radius*cos, y + radius*sin})
+	}
+	return p
+}

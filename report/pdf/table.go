@@ -12,6 +12,7 @@ const (
 	compactSize  = 7.2
 	tableFloor   = 6.0 // type is made no smaller to fit a table's width
 	tableLeading = 1.28
+	smallTable   = 0.3 // of a page: a table that is not split
 )
 
 // grid is a table while it is set.
@@ -59,6 +60,9 @@ func (s *setter) table(t *report.Table, a area) []*piece {
 	head := g.headPiece()
 	rows := g.rowPieces(head)
 	keepEnds(rows)
+	if height(rows, true) < smallTable*s.bodyHeight() {
+		keepAll(rows)
+	}
 	out := append(s.tableCaption(t, a), head)
 	keepAll(out)
 	head.keep = true
@@ -162,6 +166,9 @@ func (g *grid) headPiece() *piece {
 	for i, words := range g.head {
 		cells[i] = g.s.breakLines(words, g.cols[i].width)
 		deepest = max(deepest, len(cells[i]))
+	}
+	if deepest == 0 {
+		return &piece{height: 1, ops: []op{rule(g.x, 0, g.width, heavyRule, ink)}}
 	}
 	p := &piece{height: float64(deepest)*g.look.leading + 2*g.padY + 1}
 	p.ops = append(p.ops, rule(g.x, 0, g.width, heavyRule, ink), rule(g.x, p.height, g.width, thinRule, ink))

@@ -34,8 +34,8 @@ func cellRuns(words []word) []run {
 	var runs []run
 	for _, w := range words {
 		runs = append(runs, w.runs...)
-		if w.gap.text != "" {
-			runs = append(runs, w.gap)
+		if w.gap != nil {
+			runs = append(runs, *w.gap)
 		}
 	}
 	if n := len(runs); n > 0 && runs[n-1].text == " " {
@@ -131,9 +131,14 @@ func (g *grid) sum(width func(gridColumn) float64) float64 {
 }
 
 // spread gives every column its most. What is left goes to the wide columns;
-// where there is none, a little to each, so that a small table stays small.
+// where there is none to each alike, but only a little if the table is small:
+// its rows are easier to follow so.
 func (g *grid) spread(free float64) {
 	left := free - g.sum(most)
+	each := left / float64(len(g.cols))
+	if each > 4.5*g.look.size {
+		each = 2.6 * g.look.size
+	}
 	wide := 0
 	for _, c := range g.cols {
 		if c.wide {
@@ -147,7 +152,7 @@ func (g *grid) spread(free float64) {
 		case wide > 0 && c.wide:
 			c.width += left / float64(wide)
 		case wide == 0:
-			c.width += min(left/float64(len(g.cols)), 2.6*g.look.size)
+			c.width += each
 		}
 	}
 }

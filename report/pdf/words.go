@@ -20,7 +20,7 @@ type run struct {
 type word struct {
 	runs   []run
 	width  float64
-	gap    run   // the space to the next word if both stand on a line
+	gap    *run  // the space to the next word if both stand on a line; nil for none
 	hyphen bool  // a soft hyphen: shown if the line ends here
 	ends   bool  // the line ends here
 	notes  []int // footnotes mentioned
@@ -39,6 +39,7 @@ type maker struct {
 	words []word
 	now   word
 	last  [2]rune // the two characters before
+	gap   *run    // the last one: most words share it
 }
 
 func (s *setter) words(inlines []report.Inline, st style) []word {
@@ -162,10 +163,12 @@ func (m *maker) mention(n int, st style) {
 // otherwise be invisible.
 func clean(text string) string {
 	if strings.ContainsAny(text, "\r\n\t") {
-		text = strings.NewReplacer("\r\n", " ", "\r", " ", "\n", " ", "\t", " ").Replace(text)
+		text = whiteSpace.Replace(text)
 	}
 	return report.Visible(text)
 }
+
+var whiteSpace = strings.NewReplacer("\r\n", " ", "\r", " ", "\n", " ", "\t", " ")
 
 func (m *maker) text(text string, st style) {
 	text = clean(text)
@@ -215,7 +218,7 @@ func (m *maker) add(text string, st style) {
 		part, as, text = m.s.printable(text, st)
 		w := m.s.width(as, part)
 		m.now.width += w
-		if n := len(m.now.runs); n > 0 && m.now.runs[n-1].style == as {
+		if n := len(m.now.runs); n > 0 && m.now.runs[n-1].style == as && len(m.now.runs[n-1].text) < 500 {
 			m.now.runs[n-1].text += part
 			m.now.runs[n-1].width += w
 			continue
@@ -226,12 +229,14 @@ func (m *maker) add(text string, st style) {
 
 // space ends the word at hand with a space after it.
 func (m *maker) space(st style) {
-	gap := run{st, " ", m.s.width(st, " ")}
+	if m.gap == nil || m.gap.style != st {
+		m.gap = &run{st, " ", m.s.width(st, " ")}
+	}
 	if len(m.now.runs) > 0 {
-		m.now.gap = gap
+		m.now.gap = m.gap
 		m.flush()
-	} else if n := len(m.words); n > 0 && m.words[n-1].gap.text == "" {
-		m.words[n-1].gap = gap
+	} else if n := len(m.words); n > 0 && m.words[n-1].gap == nil {
+		m.words[n-1].gap = m.gap
 	}
 }
 
@@ -243,6 +248,14 @@ func (m *maker) breakHere(must bool) {
 		m.flush()
 	}
 	m.last = [2]rune{}
+}
+
+// gapWidth is the width of the space after a word.
+func (w *word) gapWidth() float64 {
+	if w.gap == nil {
+		return 0
+	}
+	return w.gap.width
 }
 
 func (m *maker) flush() {

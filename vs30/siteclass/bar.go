@@ -35,13 +35,16 @@ func (r *ruling) barOne(c *Condition, class string) string {
 		}
 	}
 	r.record(c, o)
-	switch {
-	case o.State == Met && c.OwnAverage:
-		return r.byOwnAverage(c, first, soil)
-	case o.State == Met:
-		r.note("rock-barred", "class %s is barred: %s (%s); the print names no class to take instead, and %s, the next, is taken",
-			first, c.Text, c.Clause, class)
+	if o.State != Met {
+		return class
 	}
+	free := r.stiffestFree(c)
+	r.after = func(other string) string { return r.softerOf(other, free) }
+	if c.OwnAverage {
+		return r.byOwnAverage(c, first, soil)
+	}
+	r.note("rock-barred", "class %s is barred: %s (%s); the print names no class to take instead, and %s, the next, is taken",
+		first, c.Text, c.Clause, class)
 	return class
 }
 
@@ -54,38 +57,6 @@ func (r *ruling) barStep(c *Condition, class string, cov cover) ([]Step, bool) {
 	rock := r.code.Bands[r.code.band(class)].Vs.Lower
 	subject := "material softer than " + r.speed(rock.Value) + " below " + r.startOf(c) + ", class " + class
 	return k.compare(cov.thickness(), subject, c.Clause)
-}
-
-// barred reports whether the bar holds against a class, without a word.
-func (r *ruling) barred(c *Condition, class string) (cover, bool) {
-	if !slices.Contains(c.Bars, class) {
-		return cover{}, false
-	}
-	cov := r.soilOver(c, class)
-	k, ok := c.limitOn(CoverThickness)
-	return cov, ok && k.Range.Contains(cov.thickness()/k.Unit.Factor)
-}
-
-// whereBarred returns the class that the bars leave of a class.
-func (r *ruling) whereBarred(class string) string {
-	for i := range r.code.Conditions {
-		c := &r.code.Conditions[i]
-		if c.Kind != Barred {
-			continue
-		}
-		for {
-			cov, barred := r.barred(c, class)
-			if !barred {
-				break
-			}
-			if c.OwnAverage {
-				class = r.ownClass(c, cov)
-				break
-			}
-			class = r.next(class)
-		}
-	}
-	return class
 }
 
 // soilOver returns the ground above the rock of a class: above the first
@@ -144,22 +115,24 @@ func (r *ruling) next(class string) string {
 	return class
 }
 
-// firstFree returns class, or the first softer one that the bar does not
-// name.
-func (r *ruling) firstFree(c *Condition, class string) string {
+// softerOf returns the softer of two classes.
+func (r *ruling) softerOf(a, b string) string {
+	if r.code.band(a) > r.code.band(b) {
+		return a
+	}
+	return b
+}
+
+// stiffestFree returns the stiffest class that the bar lets stand.
+func (r *ruling) stiffestFree(c *Condition) string {
+	class := c.Bars[0]
 	for slices.Contains(c.Bars, class) {
+		if _, barred := r.barStep(c, class, r.soilOver(c, class)); !barred {
+			break
+		}
 		class = r.next(class)
 	}
 	return class
-}
-
-// ownClass returns the class by the average over the soil above the rock.
-func (r *ruling) ownClass(c *Condition, soil cover) string {
-	i := r.code.Lookup(soil.average(r.layers) / r.code.Unit.Factor)
-	if i < 0 {
-		return r.code.Outside
-	}
-	return r.firstFree(c, r.code.Bands[i].Class)
 }
 
 // byOwnAverage takes the average over the soil above the rock for the
@@ -168,8 +141,12 @@ func (r *ruling) byOwnAverage(c *Condition, first string, soil cover) string {
 	whole, over := r.velocity, r.over
 	r.datum = soil.from
 	r.take(soil.average(r.layers), soil.thickness(), "the "+r.length(soil.thickness())+" of softer material")
-	r.after = func(class string) string { return r.firstFree(c, class) }
 	r.note("rock-barred", "class %s, by %s of %s, is barred: %s (%s); the class comes from the average over the %s of softer material, %s",
 		first, over, r.speed(whole), c.Text, c.Clause, r.length(r.thickness), r.speed(r.velocity))
-	return r.after(r.byAverage())
+	class := r.byAverage()
+	free := r.after(class)
+	if free != class {
+		r.note("rock-barred", "class %s, by %s, is barred for the same reason; %s, the next, is taken", class, r.over, free)
+	}
+	return free
 }

@@ -74,7 +74,7 @@ func (k Criterion) compare(si float64, subject, clause string) (steps []Step, ho
 		}
 		text := subject
 		if bound.Op == Dash {
-			text += [...]string{", from", ", to"}[i]
+			text += [...]string{", lower end", ", upper end"}[i]
 		}
 		s := newStep(text, clause, v, bound, i == 0, k.Unit)
 		steps = append(steps, s)

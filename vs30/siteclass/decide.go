@@ -52,7 +52,7 @@ type ruling struct {
 	over      string  // what velocity is: "v̄s over 100 ft"
 
 	// after turns the class that the velocity column gives into the one that
-	// comes of it: where a rock class is barred, the one below.
+	// comes of it: once the rock classes are barred, the one below.
 	after func(class string) string
 	parts []part // of the code that were used
 	d     Decision
@@ -68,7 +68,7 @@ type part struct {
 func begin(c *Code, s Site) *ruling {
 	r := &ruling{code: c, site: &s, layers: s.layers(),
 		d: Decision{Code: c, Route: "velocity", Notes: slices.Clone(s.Notes)}}
-	r.after = r.whereBarred
+	r.after = func(class string) string { return class }
 	r.takeDatum()
 	return r
 }

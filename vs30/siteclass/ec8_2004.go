@@ -47,7 +47,7 @@ func ec8_2004() *Code {
 			{ID: "sensitive-clay", Kind: Special, Class: "S2", Clause: "Table 3.1, 3.1.2(4)P", Standing: Checked, Fact: Sensitive,
 				Text: "sensitive clay"},
 			{ID: "soft-clay", Kind: Special, Class: "S1", Clause: "Table 3.1, 3.1.2(4)P", Standing: Checked, Fact: SoftClay,
-				Text: "a layer at least 10 m thick (≥ 10 m) of soft clay or silt of PI > 40 and high water content; the table shows cu of 10 – 20 kPa",
+				Text: "a layer at least 10 m thick of soft clay or silt of PI > 40 and high water content (the table shows cu of 10 – 20 kPa)",
 				Limits: []Criterion{
 					{Property: Thickness, Range: atLeast(10), Unit: profile.Metre},
 					{Property: PlasticityIndex, Range: above(40), Unit: bare},

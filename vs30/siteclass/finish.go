@@ -75,12 +75,13 @@ func (r *ruling) twinPrint() {
 	if t.Unit.Name == "" {
 		return
 	}
-	class := r.classAt(r.code.fromTwin(r.d.Velocity))
-	if class == r.d.Class {
+	own, twin := r.code.Lookup(r.velocity), r.code.Lookup(r.code.fromTwin(r.d.Velocity))
+	if own < 0 || twin < 0 || own == twin {
 		return
 	}
 	r.note("unit-print", "%s is %s: class %s by this table's bounds in %s, class %s by the print in %s (%s); the code's own unit decides",
-		quantity(r.d.Velocity, t.Unit), r.speed(r.velocity), r.d.Class, r.code.Unit.Name, class, t.Unit.Name, t.Source)
+		quantity(r.d.Velocity, t.Unit), r.speed(r.velocity), r.code.Bands[own].Class, r.code.Unit.Name,
+		r.code.Bands[twin].Class, t.Unit.Name, t.Source)
 }
 
 // indicative notes where the average lies within bounds that the table shows

@@ -3,6 +3,7 @@ package siteclass
 import (
 	"fmt"
 	"slices"
+	"strings"
 
 	"shearbook/profile"
 )
@@ -29,7 +30,21 @@ func Find(id string) (*Code, error) {
 		}
 		ids[i] = c.ID
 	}
-	return nil, &UnknownError{ID: id, Nearest: profile.Nearest(id, ids)}
+	return nil, &UnknownError{ID: id, Nearest: nearest(id, ids)}
+}
+
+// nearest returns the ID most like the word, or else the first that begins
+// with it, or "".
+func nearest(word string, ids []string) string {
+	if like := profile.Nearest(word, ids); like != "" || word == "" {
+		return like
+	}
+	for _, id := range ids {
+		if strings.HasPrefix(id, strings.ToLower(word)) {
+			return id
+		}
+	}
+	return ""
 }
 
 // UnknownError reports an ID that no code has.

@@ -42,13 +42,19 @@ func (r *ruling) record(c *Condition, o Outcome) {
 	r.d.Conditions = append(r.d.Conditions, ConditionResult{c, o})
 	r.d.Steps = append(r.d.Steps, o.Steps...)
 	r.d.Notes = append(r.d.Notes, o.Notes...)
-	if o.State == Met || o.State == NotMet {
+	if o.State == Met || o.State == NotMet && weighed(o.Steps) {
 		r.use(c.Standing, "%s (%s)", c.Text, c.Clause)
 	}
 	if o.State == Met && c.Class != "" && !r.settled() {
 		r.d.Class = c.Class
 		r.override(c)
 	}
+}
+
+// weighed reports whether something was held against a limit: where a
+// deposit is not there at all, no limit matters.
+func weighed(steps []Step) bool {
+	return slices.ContainsFunc(steps, func(s Step) bool { return s.Value != 0 })
 }
 
 // restricted applies Condition.Only: to the class by the average, or to the

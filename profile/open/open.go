@@ -1,0 +1,123 @@
+// Package open reads a profile file of any kind that is read: it looks at
+// what the file begins with and calls the reader for it. In this version that
+// is a table of layers in text (package delimited); other kinds are named and
+// refused, with a way out.
+package open
+
+import (
+	"errors"
+	"io"
+	"io/fs"
+	"os"
+
+	"shearbook/profile"
+	"shearbook/profile/delimited"
+)
+
+// Options says how to read a file. The zero value reads what the file states.
+type Options struct {
+	// Units are for what the file states no unit for, as "ft, ft/s"; see
+	// delimited.ParseUnits.
+	Units string
+}
+
+// Bytes reads the profiles in data. The name is that of the file; it stands
+// in messages and names a profile that has no other name. An error is a
+// profile.Faults.
+func Bytes(name string, data []byte, opt Options) ([]profile.Profile, error) {
+	if kind, ok := sniff(data); ok {
+		return nil, fault(name, kind.hint, "the file is %s, which this version does not read", kind.what)
+	}
+	return delimited.Read(name, data, delimited.Options{Units: opt.Units})
+}
+
+// File reads the profiles in a file.
+func File(path string, opt Options) ([]profile.Profile, error) {
+	f, err := os.Open(path)
+	if err != nil {
+		return nil, cannotOpen(path, err)
+	}
+	defer f.Close()
+	return file(path, f, opt)
+}
+
+// In reads the profiles in a file inside a folder, and nothing outside it.
+// The file must be an ordinary one.
+func In(root *os.Root, name string, opt Options) ([]profile.Profile, error) {
+	info, err := root.Stat(name)
+	if err != nil {
+		return nil, cannotOpen(name, err)
+	}
+	if !info.Mode().IsRegular() && !info.IsDir() {
+		return nil, fault(name, "copy it into an ordinary file", "this is not an ordinary file")
+	}
+	f, err := root.Open(name)
+	if err != nil {
+		return nil, cannotOpen(name, err)
+	}
+	defer f.Close()
+	return file(name, f, opt)
+}
+
+// file reads the profiles in an open file.
+func file(name string, f *os.File, opt Options) ([]profile.Profile, error) {
+	info, err := f.Stat()
+	switch {
+	case err != nil:
+		return nil, cannotOpen(name, err)
+	case info.IsDir():
+		return nil, fault(name, "name a file in it", "this is a folder")
+	case info.Size() > delimited.MaxBytes:
+		return nil, tooLarge(name)
+	}
+	return Reader(name, f, opt)
+}
+
+// Reader reads the profiles in a stream, such as standard input, to its end.
+// It stops at the largest size that is read.
+func Reader(name string, r io.Reader, opt Options) ([]profile.Profile, error) {
+	data, err := io.ReadAll(io.LimitReader(r, delimited.MaxBytes+1))
+	switch {
+	case err != nil:
+		return nil, fault(name, "", "reading failed: %v", plain(err))
+	case len(data) > delimited.MaxBytes:
+		return nil, tooLarge(name)
+	}
+	return Bytes(name, data, opt)
+}
+
+func tooLarge(name string) error {
+	return fault(name, "split it", "the file is larger than %d MiB", delimited.MaxBytes>>20)
+}
+
+// cannotOpen says in plain words why a file cannot be opened.
+func cannotOpen(name string, err error) error {
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+		return fault(name, "check the name, and the folder it is meant to be in", "there is no such file")
+	case errors.Is(err, fs.ErrPermission):
+		return fault(name, "ask for the right to read it, or copy it to where you have it", "the file may not be read")
+	case escapes(err):
+		return fault(name, "copy the file into the folder", "the file lies outside the folder that may be read")
+	}
+	return fault(name, "", "the file cannot be opened: %v", plain(err))
+}
+
+// escapes reports whether os.Root refused a path because it leads out of its
+// folder. The error has no name in package os.
+func escapes(err error) bool {
+	return plain(err).Error() == "path escapes from parent"
+}
+
+// plain is an error without the operation and path around it.
+func plain(err error) error {
+	var pe *fs.PathError
+	if errors.As(err, &pe) {
+		return pe.Err
+	}
+	return err
+}
+
+func fault(name, hint, format string, args ...any) error {
+	return profile.Faults{profile.Faultf(profile.Place{File: name}, hint, format, args...)}
+}

@@ -1,0 +1,67 @@
+package open
+
+import "bytes"
+
+// kind is a kind of file that is known by how it begins.
+type kind struct {
+	begins string
+	what   string
+	hint   string
+}
+
+const (
+	hintTable = "export the layers as CSV with the columns top, bottom, vs and their units, such as top_m,bottom_m,vs_mps"
+	hintText  = "find the layers in it and type or export them as CSV with the columns top, bottom, vs and their units"
+)
+
+// binary are kinds whose first bytes are fixed.
+var binary = []kind{
+	{"PK\x03\x04", "a spreadsheet (XLSX) or another zip file", hintTable},
+	{"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1", "a spreadsheet (XLS) or another file in the old Office format", hintTable},
+	{"%PDF-", "a PDF file", hintText},
+	{"\x1f\x8b", "a gzip file", "unpack it first"},
+	{"\x89PNG\r\n\x1a\n", "a PNG picture", hintText},
+	{"\xff\xd8\xff", "a JPEG picture", hintText},
+}
+
+// textual are kinds of text, known by what stands before all else.
+var textual = []kind{
+	{`"GROUP"`, "an AGS4 file", hintTable},
+	{"~V", "a LAS file", hintTable},
+	{"<", "an XML or HTML file", hintTable},
+	{"{", "a JSON file", hintTable},
+	{"[", "a JSON file", hintTable},
+}
+
+// sniff looks at the first bytes for a kind that is not a table in text.
+func sniff(data []byte) (kind, bool) {
+	for _, k := range binary {
+		if bytes.HasPrefix(data, []byte(k.begins)) {
+			return k, true
+		}
+	}
+	text := bytes.TrimLeft(bytes.TrimPrefix(data, []byte("\ufeff")), " \t\r\n")
+	for _, k := range textual {
+		if bytes.HasPrefix(bytes.ToUpper(text[:min(len(text), len(k.begins))]), []byte(k.begins)) {
+			return k, true
+		}
+	}
+	if bytes.HasPrefix(pastComments(text), []byte("~V")) {
+		return textual[1], true
+	}
+	return kind{}, false
+}
+
+// pastComments is the text after the lines that begin with #, of which LAS
+// files may have some above their first section.
+func pastComments(text []byte) []byte {
+	const most = 100
+	for range most {
+		if !bytes.HasPrefix(text, []byte("#")) {
+			break
+		}
+		_, text, _ = bytes.Cut(text, []byte("\n"))
+		text = bytes.TrimLeft(text, " \t\r\n")
+	}
+	return text
+}
