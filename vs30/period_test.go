@@ -100,6 +100,23 @@ func TestLowestPeriodIsFound(t *testing.T) {
 	}
 }
 
+// The search rests on this: below the lowest root the displacement has no zero
+// in the column, and above it, however far, it has one.
+func TestZeroOnlyAboveTheLowestRoot(t *testing.T) {
+	rng := seeded(42)
+	for range 200 {
+		layers := randomLayers(rng, true)
+		w := 2 * math.Pi / period(t, layers, 0, 35)
+		c := column{layers: layers, from: 0, to: 35, densities: true}
+		for k := 1; k <= 400; k++ {
+			at := w * float64(k) / 10.05 // never the root itself
+			if c.zero(at) != (at > w) {
+				t.Fatalf("zero at %v of the lowest frequency: %v", at/w, c.zero(at))
+			}
+		}
+	}
+}
+
 // What theory says of every column: splitting a layer changes nothing; with
 // one density a faster layer never makes the period longer (Rayleigh's
 // principle), so it lies between 4H/v of the fastest and of the slowest;

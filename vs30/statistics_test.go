@@ -46,6 +46,7 @@ func TestDescribeGradient(t *testing.T) {
 	near(t, "mean by thickness", s.ThicknessMean, 250, 1e-12)
 	near(t, "deviation", s.StdDev, 300/math.Sqrt(12), 1e-10)
 	near(t, "time average", s.TimeAverage, 300/math.Log(4), 1e-10)
+	near(t, "arithmetic mean", s.ArithmeticMean, 250, 1e-12)
 	near(t, "harmonic mean", s.HarmonicMean, s.TimeAverage, 1e-10)
 	near(t, "slowest", s.Min, 100, 0)
 	near(t, "fastest", s.Max, 400, 0)

@@ -24,10 +24,10 @@ func evaluateCompare(ev *evaluation, c call) []report.Block {
 	return ev.each(sites, func(s *site) []report.Block {
 		t := &report.Table{
 			Caption: words("Profile " + s.profile.Name + " under several codes"),
-			Columns: []report.TableColumn{wide("Code"), column("Average ("+ev.system.velocity().Name+")", report.AlignDecimal),
+			Columns: []report.TableColumn{column("Code", report.AlignLeft), column("Average ("+ev.system.velocity().Name+")", report.AlignDecimal),
 				column("In the code's unit", report.AlignRight), column("Over ("+ev.system.length().Name+")", report.AlignDecimal),
 				column("Datum ("+ev.system.length().Name+")", report.AlignDecimal), column("Class", report.AlignLeft),
-				column("Next class", report.AlignLeft), column("Standing", report.AlignLeft)},
+				wide("Next class"), column("Standing", report.AlignLeft)},
 		}
 		var strips []siteclass.Decision
 		for _, code := range codes {
@@ -39,10 +39,11 @@ func evaluateCompare(ev *evaluation, c call) []report.Block {
 			if d.Margin != nil {
 				next = d.Margin.ToClass + ", " + MarginText(d.Margin)
 			}
-			r := row(d.Code.Edition, fixed(d.Velocity/ev.system.velocity().Factor, 1),
+			r := row(d.Code.ID, fixed(d.Velocity/ev.system.velocity().Factor, 1),
 				fixed(d.Velocity/d.Code.Unit.Factor, 1)+" "+d.Code.Unit.Name, ev.length(d.Thickness), ev.length(d.Datum), "", next, d.Standing.String())
 			r.Cells[5] = append(strong(d.Class), ev.refs(d.Notes)...)
 			t.Rows = append(t.Rows, r)
+			t.Notes = append(t.Notes, words(d.Code.ID+": "+d.Code.Edition+", "+d.Code.Table+"."))
 			strips = append(strips, d)
 		}
 		blocks := one(t)

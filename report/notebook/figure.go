@@ -99,7 +99,7 @@ func (ev *evaluation) velocityFigure(sites []*site, code *siteclass.Code, captio
 
 // classes are the velocity bounds of a code in m/s, softest first.
 func classes(code *siteclass.Code) figure.Classes {
-	out := figure.Classes{Code: code.Edition}
+	out := figure.Classes{Code: code.ID}
 	for i := len(code.Bands) - 1; i >= 0; i-- {
 		b := code.Bands[i]
 		switch {

@@ -48,7 +48,7 @@ func (s System) velocity() profile.Unit {
 type Quantity struct {
 	Value    float64 // in m, s, kPa
 	M, S, P  int     // exponents of metre, second, kilopascal
-	Decimals int     // printed decimals where it prints in a plain unit of its own; -1 for 4 significant figures
+	Decimals int     // printed decimals, at most for a length; -1 for 4 significant figures
 	Notes    []profile.Note
 	Missing  string // why there is no value; "" where there is one
 }
@@ -81,6 +81,8 @@ func (q Quantity) Print(s System) string {
 	}
 	text := ""
 	switch {
+	case q.Decimals >= 0 && q.M == 1 && q.S == 0 && q.P == 0:
+		text = shortest(v, q.Decimals)
 	case q.Decimals >= 0:
 		text = fixed(v, q.Decimals)
 	case v == math.Trunc(v) && math.Abs(v) < 1e6:

@@ -222,7 +222,12 @@ func (ev *evaluation) surveyFields() []surveyField {
 		{"Date", func(s *site) string { return s.profile.Survey.Date }},
 		{"Operator", func(s *site) string { return s.profile.Survey.Operator }},
 		{"Location", func(s *site) string { return s.profile.Survey.Location }},
-		{"Position", func(s *site) string { return positionText(s.profile.Position) }},
+		{"Position", func(s *site) string {
+			if text := positionText(s.profile.Position); text != "" {
+				return text
+			}
+			return positionText(ev.nb.Header.Position)
+		}},
 		{"Ground level", func(s *site) string {
 			level := s.profile.Survey.GroundLevel
 			if !level.Known {

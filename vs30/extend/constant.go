@@ -38,15 +38,17 @@ func ConstantVelocity(layers []profile.Layer, to float64) []profile.Layer {
 	return append(out, profile.Layer{Top: last.Bottom, Bottom: to, Vs: last.VsAt(last.Bottom)})
 }
 
-// Note is the note that must stand beside an average between the depths from
-// and to (m below ground level) of layers that ConstantVelocity continued down
-// to to. layers are those of the profile, before they were continued. It is
-// the zero Note where they reach far enough and nothing was added.
-func Note(layers []profile.Layer, from, to float64) profile.Note {
+// Note is the note that must stand beside an average over thickness m, > 0,
+// below depth from (m below ground level) of layers that ConstantVelocity
+// continued down to from+thickness. layers are those of the profile, before
+// they were continued. It is the zero Note where they reach far enough and
+// nothing was added.
+func Note(layers []profile.Layer, from, thickness float64) profile.Note {
 	if len(layers) == 0 {
 		return profile.Note{}
 	}
 	last := &layers[len(layers)-1]
+	to := from + thickness
 	if last.Bottom >= to-vs30.Touching {
 		return profile.Note{}
 	}
@@ -56,5 +58,5 @@ func Note(layers []profile.Layer, from, to float64) profile.Note {
 			"is taken to go on unchanged over %.4g m, %.0f %% of the averaging depth "+
 			"(constant-velocity extension, Boore 2004, BSSA 94(2):591–597, doi:10.1785/0120030105); "+
 			"the average is too high where the ground is slower there",
-		last.Bottom, last.VsAt(last.Bottom), added, 100*added/(to-from))}
+		last.Bottom, last.VsAt(last.Bottom), added, 100*added/thickness)}
 }

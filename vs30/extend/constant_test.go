@@ -160,23 +160,23 @@ func TestNothingToAdd(t *testing.T) {
 func TestNote(t *testing.T) {
 	layers := []profile.Layer{{Bottom: 8.6, Vs: 207}, {Top: 8.6, Bottom: 12.8, Vs: 247}}
 	for _, c := range []struct {
-		from, to float64
-		say      []string
+		from, thickness float64
+		say             []string
 	}{
 		// 30 − 12.8 = 17.2 m, 57 % of 30 m.
 		{0, 30, []string{"ends 12.8 m", "247 m/s", "17.2 m,", "57 %", "Boore 2004", "doi:10.1785/0120030105"}},
 		// 32 − 12.8 = 19.2 m, 64 % of the 30 m below 2 m.
-		{2, 32, []string{"ends 12.8 m", "247 m/s", "19.2 m,", "64 %"}},
+		{2, 30, []string{"ends 12.8 m", "247 m/s", "19.2 m,", "64 %"}},
 		// From below its end all of it is extension.
-		{20, 50, []string{"ends 12.8 m", "30 m,", "100 %"}},
+		{20, 30, []string{"ends 12.8 m", "30 m,", "100 %"}},
 	} {
-		n := Note(layers, c.from, c.to)
+		n := Note(layers, c.from, c.thickness)
 		if n.ID != "extended" {
 			t.Errorf("id %q, want extended", n.ID)
 		}
 		for _, words := range c.say {
 			if !strings.Contains(n.Text, words) {
-				t.Errorf("from %g m to %g m: %q does not say %q", c.from, c.to, n.Text, words)
+				t.Errorf("%g m below %g m: %q does not say %q", c.thickness, c.from, n.Text, words)
 			}
 		}
 		if strings.HasSuffix(n.Text, ".") {

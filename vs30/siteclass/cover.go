@@ -13,7 +13,7 @@ import (
 type cover struct {
 	from, bottom float64 // m below ground level
 	found        bool    // the stiff ground is there; else bottom is where the looking ended
-	stiff        float64 // m/s; the slowest layer of the stiff ground, or the last of the cover
+	stiff        float64 // m/s; the slowest of the stiff ground, just above the bound where it grows through it; or the last of the cover
 }
 
 // thickness returns the thickness of the cover in m, 0 if there is none.
@@ -66,7 +66,7 @@ func coverAbove(layers []profile.Layer, from, to float64, bound Limit, u profile
 		c.found, c.bottom = true, top
 		if !stiffEnough(v0) {
 			c.bottom = top + (bottom-top)*min(1, (bound.Value*u.Factor-v0)/(v1-v0))
-			c.stiff = min(c.stiff, v1)
+			c.stiff = min(c.stiff, bound.Value*u.Factor*(1+beside))
 			break
 		}
 		c.stiff = min(c.stiff, v0, v1)
