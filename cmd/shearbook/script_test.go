@@ -52,8 +52,10 @@ func makeFile(ts *testscript.TestScript, neg bool, args []string) {
 		ts.Fatalf("usage: make KIND FILE")
 	}
 	kinds := map[string]func() []byte{
-		"nul":       func() []byte { return []byte("top (m),bottom (m),vs (m/s)\n0,5,2\x0000\n") },
-		"bigfield":  func() []byte { return []byte("top (m),bottom (m),vs (m/s)\n0,5," + strings.Repeat("1", 100<<20) + "\n") },
+		"nul": func() []byte { return []byte("top (m),bottom (m),vs (m/s)\n0,5,2\x0000\n") },
+		"bigfield": func() []byte {
+			return []byte("top (m),bottom (m),vs (m/s)\n0,5," + strings.Repeat("1", 100<<20) + "\n")
+		},
 		"manyrows":  manyRows,
 		"utf16":     func() []byte { return utf16("top (m),bottom (m),vs (m/s),soil\r\n0,5,200,Ä\r\n5,,400,ß\r\n") },
 		"latin1":    func() []byte { return []byte("top (m),bottom (m),vs (m/s),soil\n0,5,200,M\xe4rz\n5,,400,Stra\xdfe\n") },
