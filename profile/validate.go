@@ -12,8 +12,8 @@ const Joint = 1e-6
 
 // Limits that Validate holds every profile to. They lie far outside anything
 // a site survey can find (common practice; the fastest waves in the Earth's
-// mantle travel at about 14 km/s) and keep the sums made from a profile
-// finite.
+// mantle travel at about 14 km/s, from memory) and keep the sums made from a
+// profile finite.
 const (
 	MinVelocity = 1.0   // m/s, of S and P waves
 	MaxVelocity = 20000 // m/s, of S and P waves
@@ -120,10 +120,10 @@ func (v *validator) joint(i int) {
 	}
 	above := &v.p.Layers[i-1]
 	switch {
-	case !finite(above.Bottom) || !finite(above.Top):
-		// Said where it stands.
 	case l.Top < above.Top:
 		v.at(l, "sort the layers from the top down", "layer %d starts at %s, above the layer before it", i+1, metres(l.Top))
+	case !finite(above.Bottom) || !finite(above.Top):
+		// Said where it stands.
 	case l.Top < above.Bottom-Joint:
 		v.at(l, "", "layers %d and %d overlap from %s to %s", i, i+1, metres(l.Top), metres(above.Bottom))
 	case l.Top > above.Bottom+Joint:

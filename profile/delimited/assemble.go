@@ -81,7 +81,7 @@ func (r *reader) metadataFits(own map[string][]statement, common []profile.Metad
 		n += len(lines)
 	}
 	if n > MaxMetadata {
-		r.fault(spot{}, "split the file", "more than %d lines stand above the header, counted for each profile", MaxMetadata)
+		r.stop(spot{}, "split the file", "more than %d lines stand above the header, counted for each profile", MaxMetadata)
 	}
 	return n <= MaxMetadata
 }

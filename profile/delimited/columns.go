@@ -85,10 +85,11 @@ func (r *reader) chooseSeparator() bool {
 			most, r.scan.sep = n, sep
 		}
 	}
-	if most < 0 {
+	if most <= MaxColumns && first != nil { // it names nothing
 		r.trouble(first)
+		return false
 	}
-	return most >= 0
+	return true
 }
 
 // recognised rates a header: the columns that it names, then its cells.
@@ -262,6 +263,11 @@ func (r *reader) hintNoTable() string {
 	for i := range r.columns.list {
 		if _, problem := metadataNumber(r.columns.list[i].name); problem == "" {
 			return "put a row with the names of the columns above it, such as top_m,bottom_m,vs_mps"
+		}
+	}
+	for i := range r.columns.list {
+		if c := &r.columns.list[i]; c.quantity == profile.Unknown && strings.Contains(plain(c.name), "velocity") {
+			return "is " + quote(c.name) + " the shear-wave velocity? then name it Vs"
 		}
 	}
 	ahead := r.scan

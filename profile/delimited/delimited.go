@@ -18,8 +18,9 @@
 // profile.Joint. A last layer whose bottom or thickness is blank, "inf" or
 // "half-space" is a half-space; so is the last layer of a table that gives
 // tops alone, and a note says so. A column named depth and no more is a top
-// if its first value is 0 and a bottom if it stands beside a column of tops
-// or equals the first thickness; otherwise it is refused.
+// if it stands beside a column of bottoms or its first value is 0, and a bottom
+// if it stands beside a column of tops or its first value is the first
+// thickness; a note says so. Otherwise it is refused.
 //
 // # Columns
 //
@@ -33,9 +34,9 @@
 //
 // # Units
 //
-// The unit of a column stands in its heading, as "vs (ft/s)", "Vs [m/s]",
-// "Vs, m/s", "vs_mps" or "vs_ft_s", or in a row of units under the header, or
-// in a line "# units: m, m/s" above it, or in Options. A unit that is not
+// The unit of a column stands in its heading, as "vs (ft/s)" with round or
+// square brackets, "Vs, m/s", "vs_mps" or "vs_ft_s", or in a row of units under
+// the header, or in a line "# units: m, m/s" above it, or in Options. A unit that is not
 // stated is a fault. N is in blows per 0.3 m (1 ft) and the plasticity index
 // in percent by definition.
 //
@@ -80,8 +81,9 @@ type Options struct {
 
 // Read returns the profiles of a table in the order of the file. The name of
 // the file is used in messages and for a profile that has no other name. An
-// error is a profile.Faults: everything that is wrong, at most MaxFaults and
-// a last one that says how many more. Each profile has passed
+// error is a profile.Faults: everything that is wrong, at most MaxFaults, the
+// one that ended the reading if there is one, and a last one that says how
+// many more. Each profile has passed
 // profile.Validate and carries the notes of profile.Doubts after its own:
 //
 //   - column-not-read: columns that were carried along unread.
@@ -130,7 +132,7 @@ func (r *reader) read(data []byte) {
 // decode turns the bytes into text.
 func (r *reader) decode(data []byte) bool {
 	if len(data) > MaxBytes {
-		r.fault(spot{}, "split it", "the file is larger than %d MiB", MaxBytes>>20)
+		r.stop(spot{}, "split it", "the file is larger than %d MiB", MaxBytes>>20)
 		return false
 	}
 	sum := sha256.Sum256(data)

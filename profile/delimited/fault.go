@@ -21,7 +21,8 @@ type trouble struct {
 	text, hint string
 }
 
-// collector gathers the faults of one file, MaxFaults of them in full.
+// collector gathers the faults of one file: MaxFaults of them, and the one
+// that ended the reading.
 type collector struct {
 	file   string
 	faults profile.Faults
@@ -37,8 +38,16 @@ func (c *collector) fault(at spot, hint, format string, args ...any) {
 	}
 }
 
-// trouble adds a fault that is told already.
-func (c *collector) trouble(t *trouble) { c.fault(t.spot, t.hint, "%s", t.text) }
+// stop adds a fault after which reading cannot go on; it is told however many
+// there are.
+func (c *collector) stop(at spot, hint, format string, args ...any) {
+	c.total++
+	place := profile.Place{File: c.file, Line: at.line, Column: at.column}
+	c.faults = append(c.faults, profile.Faultf(place, hint, format, args...))
+}
+
+// trouble stops with a fault that is told already.
+func (c *collector) trouble(t *trouble) { c.stop(t.spot, t.hint, "%s", t.text) }
 
 // add adds the faults of a profile.
 func (c *collector) add(faults profile.Faults) {

@@ -30,6 +30,10 @@ func parseHeading(text string) heading {
 		return unread
 	}
 	base, groups := brackets(text)
+	if h := suffixed(base); h.quantity != profile.Unknown {
+		h.bracketed(groups)
+		return h
+	}
 	for _, name := range []string{text, base} {
 		if h := named(name); h.quantity != profile.Unknown {
 			h.name = name
@@ -40,16 +44,7 @@ func parseHeading(text string) heading {
 			return h
 		}
 	}
-	h := suffixed(base)
-	if h.quantity == profile.Unknown {
-		return unread
-	}
-	for _, g := range groups {
-		if u, ok := unitOf(g, h.quantity.Dimension()); ok && u != h.unit {
-			h.problem = "two units, " + h.unit.Name + " and " + u.Name
-		}
-	}
-	return h
+	return unread
 }
 
 // named is the heading of a name without a unit.

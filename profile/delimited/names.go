@@ -22,7 +22,7 @@ var names = map[profile.Quantity][]string{
 		"depth to bottom", "depth base", "base depth", "depth to base", "depth end", "end depth",
 		"bottom of layer", "base of layer", "layer bottom", "layer base", "z bottom", "zbottom", "z base",
 	},
-	profile.Thickness: {"thickness", "layer thickness", "h", "thk", "thick"},
+	profile.Thickness: {"thickness", "thickness h", "layer thickness", "layer thickness h", "h", "thk", "thick"},
 	profile.Vs: {
 		"vs", "v s", "shear wave velocity", "shear velocity", "s wave velocity", "s velocity",
 		"shear wave velocity vs", "shear velocity vs", "s wave velocity vs", "vs shear wave velocity",

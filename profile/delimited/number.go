@@ -47,10 +47,12 @@ func (n numerals) parse(text []byte) (v float64, problem string) {
 			return 0, notNumber(text)
 		}
 	}
-	if n.comma {
-		text = bytes.Replace(text, []byte(","), []byte("."), 1)
+	var room [32]byte // spares an allocation
+	pointed := append(room[:0], text...)
+	if i := bytes.IndexByte(pointed, ','); i >= 0 {
+		pointed[i] = '.'
 	}
-	v, err := strconv.ParseFloat(string(text), 64)
+	v, err := strconv.ParseFloat(string(pointed), 64)
 	switch {
 	case err != nil && math.IsInf(v, 0):
 		return 0, "is not a finite number"

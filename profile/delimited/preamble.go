@@ -72,7 +72,7 @@ func (r *reader) preambleLine() (line []byte, ok bool) {
 	case text[0] != '#':
 		return nil, true
 	case len(line) > MaxField:
-		r.fault(at.spot(at.off), "", "the line is longer than 64 KiB")
+		r.stop(at.spot(at.off), "", "the line is longer than 64 KiB")
 		return nil, false
 	}
 	text = bytes.TrimRight(text, " \t,;")
@@ -99,7 +99,7 @@ func (r *reader) quotedStatement() (line []byte, ok bool) {
 // state keeps one statement, its key and value cut from its text.
 func (r *reader) state(st statement) bool {
 	if len(r.preamble.statements) == MaxMetadata {
-		r.fault(st.spot, "", "more than %d lines stand above the header", MaxMetadata)
+		r.stop(st.spot, "", "more than %d lines stand above the header", MaxMetadata)
 		return false
 	}
 	st.text = strings.TrimSpace(strings.TrimLeft(st.text, "#"))
@@ -184,9 +184,14 @@ func scoped(text string, names map[string]int) (name, rest string, ok bool) {
 	if !strings.HasPrefix(text, "[") {
 		return "", "", false
 	}
+	const most = 20 // brackets that are tried
+	brackets := 0
 	for i := range len(text) {
 		if text[i] != ']' {
 			continue
+		}
+		if brackets++; brackets > most {
+			break
 		}
 		inside, after := text[1:i], strings.TrimSpace(text[i+1:])
 		if names[inside] > 0 && strings.Contains(after, ":") {

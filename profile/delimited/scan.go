@@ -86,8 +86,12 @@ func (s *scanner) rawLine() []byte {
 	return line
 }
 
-// next reads a row into s.cells. It returns false at the end of the text.
+// next reads a row into s.cells, past lines that are empty. It returns false
+// at the end of the text.
 func (s *scanner) next() (bool, *trouble) {
+	for s.off < len(s.text) && isLineEnd(s.text[s.off]) {
+		s.lineEnd()
+	}
 	if s.off >= len(s.text) {
 		return false, nil
 	}

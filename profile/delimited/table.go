@@ -38,6 +38,9 @@ type stack struct {
 
 // readRows reads every layer of the file.
 func (r *reader) readRows() bool {
+	if r.tooManyRows() {
+		return false
+	}
 	r.readNumerals()
 	r.table.names = map[string]int{}
 	r.reserve()
@@ -50,11 +53,18 @@ func (r *reader) readRows() bool {
 		if !ok {
 			break
 		}
-		if r.scan.blank() || r.comment() {
+		if r.scan.blank() {
+			continue
+		}
+		if r.comment() {
+			if len(r.preamble.statements) > MaxMetadata {
+				r.stop(r.scan.place(0), "", "the file has more than %d comments", MaxMetadata)
+				return false
+			}
 			continue
 		}
 		if len(r.table.layers) == MaxRows {
-			r.fault(r.scan.place(0), "split the file", "the file has more than %d layers", MaxRows)
+			r.stopRows(r.scan.place(0))
 			return false
 		}
 		if !r.row() {
@@ -69,11 +79,38 @@ func (r *reader) readRows() bool {
 	return len(r.table.layers) > 0
 }
 
-// reserve makes room for as many layers as there are lines.
+func (r *reader) stopRows(at spot) {
+	r.stop(at, "split the file", "the file has more than %d layers", MaxRows)
+}
+
+// tooManyRows looks ahead for more rows than are read, so as not to read
+// those that are. It counts only lines that cannot be anything else.
+func (r *reader) tooManyRows() bool {
+	ahead := r.scan
+	if bytes.Count(ahead.text[ahead.off:], []byte("\n")) <= MaxRows || bytes.IndexByte(ahead.text[ahead.off:], '"') >= 0 {
+		return false
+	}
+	rows := 0
+	for ahead.off < len(ahead.text) {
+		line := ahead.line
+		if text := bytes.TrimLeft(ahead.rawLine(), " \t,;"); len(text) > 0 && text[0] != '#' {
+			rows++
+		}
+		if rows > MaxRows {
+			r.stopRows(spot{line, 1})
+			return true
+		}
+	}
+	return false
+}
+
+// reserve makes room for as many layers as there are lines that have all the
+// separators of the header.
 func (r *reader) reserve() {
 	rest := r.scan.text[r.scan.off:]
 	lines := max(bytes.Count(rest, []byte("\n")), bytes.Count(rest, []byte("\r"))) + 1
-	n := min(lines, len(rest)/2+1, MaxRows)
+	full := bytes.Count(rest, []byte{r.scan.sep})/max(len(r.columns.list)-1, 1) + 1
+	n := min(lines, full, MaxRows)
 	r.table.layers = make([]profile.Layer, 0, n)
 	r.table.rows = make([]profile.Row, 0, n)
 }
@@ -84,10 +121,8 @@ func (r *reader) comment() bool {
 	if len(cells) != 1 || len(r.columns.list) < 2 || cells[0].quoted || cells[0].text[0] != '#' {
 		return false
 	}
-	if len(r.preamble.statements) < MaxMetadata {
-		text := strings.TrimSpace(strings.TrimLeft(string(cells[0].text), "#"))
-		r.preamble.statements = append(r.preamble.statements, statement{value: text, spot: r.scan.place(0)})
-	}
+	text := strings.TrimSpace(strings.TrimLeft(string(cells[0].text), "#"))
+	r.preamble.statements = append(r.preamble.statements, statement{value: text, spot: r.scan.place(0)})
 	return true
 }
 
@@ -159,7 +194,7 @@ func (r *reader) newStack(i int, name string) bool {
 	s := stack{name: name, first: len(t.layers)}
 	switch {
 	case len(t.stacks) == MaxProfiles:
-		r.fault(r.scan.place(i), "split the file", "the file has more than %d profiles", MaxProfiles)
+		r.stop(r.scan.place(i), "split the file", "the file has more than %d profiles", MaxProfiles)
 		return false
 	case t.names[name] > 0:
 		r.fault(r.scan.place(i), "put the layers of a profile in rows that follow one another, or give the profile another name",

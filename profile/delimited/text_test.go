@@ -82,7 +82,7 @@ func TestTextFaults(t *testing.T) {
 		{"half a pair", "\xff\xfet\x00\x00\xd8o\x00", "x.csv:1:2: half of a UTF-16 surrogate pair"},
 		{"column in characters", "soil,top_m,bottom_m,vs_mps\nLöß …,0,5,x\n", `x.csv:2:11: Vs "x" is not a number`},
 		{"column after blanks", header + "0 , 5 ,  x\n", `x.csv:2:10: Vs "x" is not a number`},
-		{"line after a cell of two lines", "soil,top_m,bottom_m,vs_mps\n\"Clay\nand silt\",0,5,x\n", `x.csv:3:16: Vs "x" is not a number`},
+		{"line after a cell of two lines", "soil,top_m,bottom_m,vs_mps\n\"Clay\nand silt\",0,5,x\n", `x.csv:3:15: Vs "x" is not a number`},
 		{"direction mark", header + "0,5,\u202e002\n", `x.csv:2:5: Vs "\u202e002" is not a number`},
 	} {
 		t.Run(c.name, func(t *testing.T) {

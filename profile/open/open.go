@@ -5,6 +5,7 @@
 package open
 
 import (
+	"bytes"
 	"errors"
 	"io"
 	"io/fs"
@@ -70,20 +71,26 @@ func file(name string, f *os.File, opt Options) ([]profile.Profile, error) {
 	case info.Size() > delimited.MaxBytes:
 		return nil, tooLarge(name)
 	}
-	return Reader(name, f, opt)
+	return read(name, f, info.Size(), opt)
 }
 
 // Reader reads the profiles in a stream, such as standard input, to its end.
 // It stops at the largest size that is read.
 func Reader(name string, r io.Reader, opt Options) ([]profile.Profile, error) {
-	data, err := io.ReadAll(io.LimitReader(r, delimited.MaxBytes+1))
+	return read(name, r, 0, opt)
+}
+
+// read reads a stream of about size bytes.
+func read(name string, r io.Reader, size int64, opt Options) ([]profile.Profile, error) {
+	data := bytes.NewBuffer(make([]byte, 0, size+bytes.MinRead))
+	_, err := data.ReadFrom(io.LimitReader(r, delimited.MaxBytes+1))
 	switch {
 	case err != nil:
 		return nil, fault(name, "", "reading failed: %v", plain(err))
-	case len(data) > delimited.MaxBytes:
+	case data.Len() > delimited.MaxBytes:
 		return nil, tooLarge(name)
 	}
-	return Bytes(name, data, opt)
+	return Bytes(name, data.Bytes(), opt)
 }
 
 func tooLarge(name string) error {

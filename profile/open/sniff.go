@@ -41,13 +41,21 @@ func sniff(data []byte) (kind, bool) {
 		}
 	}
 	text := bytes.TrimLeft(bytes.TrimPrefix(data, []byte("\ufeff")), " \t\r\n")
+	if k, ok := textKind(text); ok {
+		return k, true
+	}
+	if k, ok := textKind(pastComments(text)); ok && k.begins == "~V" {
+		return k, true
+	}
+	return kind{}, false
+}
+
+// textKind is the kind whose text begins so, in either case.
+func textKind(text []byte) (kind, bool) {
 	for _, k := range textual {
 		if bytes.HasPrefix(bytes.ToUpper(text[:min(len(text), len(k.begins))]), []byte(k.begins)) {
 			return k, true
 		}
-	}
-	if bytes.HasPrefix(pastComments(text), []byte("~V")) {
-		return textual[1], true
 	}
 	return kind{}, false
 }
