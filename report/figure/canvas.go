@@ -164,9 +164,12 @@ func (c *canvas) path(p vg.Path) report.Path {
 	var at vg.Point // where the pen is, before the transform
 	for _, comp := range p {
 		switch comp.Type {
-		case vg.MoveComp, vg.LineComp:
+		case vg.MoveComp:
 			at = comp.Pos
-			out = append(out, c.move(report.MoveKind(comp.Type), at))
+			out = append(out, c.move(report.MoveTo, at))
+		case vg.LineComp:
+			at = comp.Pos
+			out = append(out, c.move(report.LineTo, at))
 		case vg.ArcComp:
 			out, at = c.arc(out, comp)
 		case vg.CurveComp:
@@ -181,12 +184,6 @@ func (c *canvas) path(p vg.Path) report.Path {
 	}
 	return out
 }
-
-// The two kinds below are converted by value in path.
-var (
-	_ = [1]int{}[int(report.MoveTo)-vg.MoveComp]
-	_ = [1]int{}[int(report.LineTo)-vg.LineComp]
-)
 
 // move returns a straight movement.
 func (c *canvas) move(kind report.MoveKind, to vg.Point) report.Move {

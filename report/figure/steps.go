@@ -10,10 +10,11 @@ import (
 	"shearbook/profile"
 )
 
-// What can be drawn at most. Anything in the ground lies far inside.
+// What can be drawn. Anything in the ground lies far inside.
 const (
-	fastest = 1e5 // m/s
-	deepest = 1e5 // m
+	fastest    = 1e5 // m/s
+	deepest    = 1e5 // m
+	shallowest = 0.1 // m, of a depth axis
 )
 
 // Line is one profile of a Velocity figure.
@@ -115,14 +116,17 @@ func extend(lines [][]Point, y *profile.Layer, top, bottom float64) [][]Point {
 	return append(lines, []Point{from, to})
 }
 
-// end returns the lowest point that is drawn.
-func (s steps) end() Point {
+// end returns the lowest point that is drawn, and false if there is none.
+func (s steps) end() (Point, bool) {
 	lines := s.extended
 	if len(lines) == 0 {
 		lines = s.measured
 	}
+	if len(lines) == 0 {
+		return Point{}, false
+	}
 	last := lines[len(lines)-1]
-	return last[len(last)-1]
+	return last[len(last)-1], true
 }
 
 // look is how a profile is drawn.
@@ -164,8 +168,8 @@ func lookOf(i, n int) look {
 func (s *sheet) drawLine(p *plane, line *Line, st steps, k look) {
 	s.curves(p, k.layers, st.measured)
 	s.curves(p, k.extension, st.extended)
-	if st.goesOn {
-		s.arrow(k.layers.Color.(ink), p.at(st.end().Velocity, st.end().Depth))
+	if end, ok := st.end(); ok && st.goesOn {
+		s.arrow(k.layers.Color.(ink), p.at(end.Velocity, end.Depth))
 	}
 	average := finitePoints(line.Average)
 	if len(average) == 0 {

@@ -14,7 +14,7 @@ type VelocityOptions struct {
 	Units     Units
 	Width     float64 // m on paper, from 0.1 to 0.4; 0 is 0.165
 	Height    float64 // m on paper, at least; 0 is 0.11. The figure grows where its key needs it
-	Depth     float64 // m below ground level at which the depth axis ends; 0 shows every layer
+	Depth     float64 // m below ground level at which the depth axis ends, at least 0.1; 0 shows every layer
 	Datum     float64 // m below ground level from which the velocity is averaged
 	Thickness float64 // m over which it is averaged; 0 marks no averaging depth
 	Classes   Classes // the bounds to show behind; none if zero
@@ -52,6 +52,9 @@ func (o *VelocityOptions) check(lines []Line) error {
 		if !(d >= 0 && d <= deepest) {
 			return fmt.Errorf("a depth of %v m cannot be drawn", d)
 		}
+	}
+	if o.Depth > 0 && o.Depth < shallowest {
+		return fmt.Errorf("a depth axis of %v m cannot be drawn", o.Depth)
 	}
 	return o.Classes.check()
 }
@@ -99,7 +102,7 @@ func (f *velocity) fitDepth() {
 // lowest returns the greatest depth in m that the figure must show. A ground
 // that is nothing but a half-space is shown to 30 m.
 func (f *velocity) lowest() float64 {
-	z := f.averagingDepth()
+	z := max(f.averagingDepth(), f.Datum)
 	for i := range f.lines {
 		l := &f.lines[i]
 		z = max(z, l.Reached)

@@ -22,6 +22,10 @@ var (
 	manyClasses = figure.Classes{Code: "Code of eight", Lowest: "T", Bounds: []figure.Bound{{Value: 152.4, Class: "TS"}, {Value: 213.36, Class: "S"}, {Value: 304.8, Class: "SR"}, {Value: 441.96, Class: "R"}, {Value: 640.08, Class: "RQ"}, {Value: 914.4, Class: "Q"}, {Value: 1524, Class: "P"}}}
 )
 
+// wordClasses has names that are wider than their classes.
+var wordClasses = figure.Classes{Code: strings.Repeat("A code of words ", 9), Lowest: "the softest of all",
+	Bounds: []figure.Bound{{Value: 300, Class: ""}, {Value: 330, Class: "and one without a bound above"}}}
+
 // site is an invented profile with a gradient, a reversal and a half-space.
 func site() []profile.Layer {
 	return []profile.Layer{
@@ -160,12 +164,14 @@ func TestVelocityDepthOption(t *testing.T) {
 	if r.find(r.x(260), r.y(14), r.x(260), r.y(16.5)) != nil {
 		t.Error("a layer is drawn below the axis")
 	}
+	r = velocity(t, []figure.Line{{Layers: site()[2:]}}, figure.VelocityOptions{Depth: 0.1})
+	r.checkLabels(t) // all of the profile is deeper
 }
 
 func TestVelocityStaggersLetters(t *testing.T) {
 	// On an axis to 3500 m/s and more, 60 to 90 m/s are some 6 pt: narrower
 	// than their letters.
-	r := velocity(t, []figure.Line{{Name: "two\n words", Layers: []profile.Layer{{Bottom: 30, Vs: 3500}}}},
+	r := velocity(t, []figure.Line{{Name: "two\nwords", Layers: []profile.Layer{{Bottom: 30, Vs: 3500}}}},
 		figure.VelocityOptions{Classes: manyClasses})
 	r.label(t, "two words")
 	for text, middle := range map[string]float64{"T": 152.4 / 2, "TS": (152.4 + 213.36) / 2, "S": (213.36 + 304.8) / 2, "SR": (304.8 + 441.96) / 2} {
@@ -176,6 +182,13 @@ func TestVelocityStaggersLetters(t *testing.T) {
 		}
 	}
 	r.checkLabels(t)
+}
+
+func TestVelocityLeavesOutLongNames(t *testing.T) {
+	r := velocity(t, []figure.Line{{Layers: []profile.Layer{{Bottom: 30, Vs: 320}}}},
+		figure.VelocityOptions{Classes: wordClasses})
+	r.label(t, "the softest of all")
+	r.checkLabels(t) // the last name would run into the code's
 }
 
 func TestVelocityTellsProfilesApartInGrey(t *testing.T) {
@@ -276,7 +289,7 @@ func randomLines(rng *rand.Rand) []figure.Line {
 // randomOptions returns options, each of them often zero.
 func randomOptions(rng *rand.Rand) figure.VelocityOptions {
 	o := figure.VelocityOptions{Units: figure.Units(rng.IntN(2))}
-	o.Classes = []figure.Classes{{}, fourClasses, manyClasses}[rng.IntN(3)]
+	o.Classes = []figure.Classes{{}, fourClasses, manyClasses, wordClasses}[rng.IntN(4)]
 	if rng.IntN(5) > 0 {
 		o.Thickness = 30
 	}
@@ -290,7 +303,7 @@ func randomOptions(rng *rand.Rand) figure.VelocityOptions {
 }
 
 func TestVelocityOfRandomProfiles(t *testing.T) {
-	for seed := range uint64(250) {
+	for seed := range uint64(200) {
 		rng := rand.New(rand.NewPCG(seed, 1))
 		lines, o := randomLines(rng), randomOptions(rng)
 		r := velocity(t, lines, o)
@@ -385,6 +398,7 @@ func TestVelocityRefuses(t *testing.T) {
 		{good, figure.VelocityOptions{Thickness: inf}, "depth of +Inf"},
 		{good, figure.VelocityOptions{Datum: -1}, "depth of -1"},
 		{good, figure.VelocityOptions{Depth: nan}, "depth of NaN"},
+		{good, figure.VelocityOptions{Depth: 1e-300}, "depth axis of 1e-300"},
 		{good, figure.VelocityOptions{Classes: figure.Classes{Code: "X", Bounds: []figure.Bound{{Value: nan}}}}, `bound of "X"`},
 	}
 	for _, tt := range tests {

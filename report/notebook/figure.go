@@ -69,7 +69,10 @@ func (ev *evaluation) velocityFigure(sites []*site, code *siteclass.Code, captio
 	var names []string
 	for _, s := range sites {
 		layers, _ := ev.layersTo(s, datum, thickness)
-		line := figure.Line{Name: s.profile.Name, Layers: layers, Reached: s.profile.DepthReached()}
+		line := figure.Line{Name: s.profile.Name, Layers: layers, Reached: s.profile.Survey.DepthReached}
+		if line.Reached == 0 && len(layers) > len(s.profile.Layers) {
+			line.Reached = s.profile.DepthModelled()
+		}
 		for _, p := range vs30.Curve(layers, datum, datum+thickness, 0.25) {
 			line.Average = append(line.Average, figure.Point{Velocity: p.Average, Depth: p.Depth})
 		}
