@@ -80,7 +80,7 @@ func (s *setter) block(b report.Block, a area) (pieces []*piece, above, below fl
 	case *report.Formula:
 		return s.formula(b, a), blockGap - 2, blockGap - 2
 	case *report.Rule:
-		return []*piece{{height: 1, ops: []op{rule(a.x, 0.5, a.width, 0.6, hair)}}}, blockGap, blockGap
+		return []*piece{{height: 1, keep: true, ops: []op{rule(a.x, 0.5, a.width, 0.6, hair)}}}, blockGap, blockGap
 	case *report.TitleBlock:
 		return s.titleBlock(b, a), 0, 16
 	case *report.Summary:
@@ -242,7 +242,7 @@ func (s *setter) note(n int) []*piece {
 	a := s.column()
 	a.look = noteLook()
 	inner := a.inset(13)
-	pieces := s.flow(s.doc.Footnotes[n-1].Blocks, inner)
+	pieces := cutAll(s.flow(s.doc.Footnotes[n-1].Blocks, inner), 0.5*s.bodyHeight())
 	if len(pieces) == 0 {
 		pieces = []*piece{space(a.leading)}
 	}

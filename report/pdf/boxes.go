@@ -21,9 +21,12 @@ func (s *setter) titleBlock(t *report.TitleBlock, a area) []*piece {
 	half := (a.width - gutter) / 2
 	labels := min(s.widestLabel(t.Fields, a)+10, 0.45*half)
 	for i := 0; i < len(t.Fields); i += 2 {
-		row := s.fieldRow(t.Fields[i], a.x, labels, half, a)
+		var row *piece
 		if i+1 < len(t.Fields) {
-			row = beside(row, s.fieldRow(t.Fields[i+1], a.x+half+gutter, labels, half, a))
+			row = beside(s.fieldRow(t.Fields[i], a.x, labels, half, a),
+				s.fieldRow(t.Fields[i+1], a.x+half+gutter, labels, half, a))
+		} else {
+			row = s.fieldRow(t.Fields[i], a.x, labels, a.width, a)
 		}
 		row.height += 3
 		out = append(out, row)
@@ -81,6 +84,9 @@ func (s *setter) summary(b *report.Summary, a area) []*piece {
 	inner := a.inset(pad)
 	inner.width -= pad
 	answer := s.answer(b, inner)
+	if answer.height > s.bodyHeight()/2 {
+		return s.wordySummary(b, a)
+	}
 	right := inner.x + answer.width + 2*gutter
 	width := inner.x + inner.width - right
 	fields := inner
@@ -110,6 +116,21 @@ func (s *setter) summary(b *report.Summary, a area) []*piece {
 	out := append(append([]*piece{head}, body...), space(pad-2))
 	keepAll(out)
 	enframe(&frame{x: a.x, width: a.width, stroke: &line, bar: &accent, barWidth: 3}, out)
+	return out
+}
+
+// wordySummary sets a summary whose answer is no word but a page: as prose.
+func (s *setter) wordySummary(b *report.Summary, a area) []*piece {
+	blocks := []report.Block{
+		&report.Paragraph{Inline: []report.Inline{&report.Strong{Inline: []report.Inline{report.Text(b.Heading)}}}},
+		&report.Paragraph{Inline: []report.Inline{report.Text(b.Label)}},
+		&report.Paragraph{Inline: []report.Inline{&report.Strong{Inline: []report.Inline{report.Text(b.Answer)}}}},
+	}
+	out := s.flow(blocks, a)
+	labels := min(s.widestLabel(b.Fields, a)+10, 0.4*a.width)
+	for _, f := range b.Fields {
+		out = append(out, s.fieldRow(f, a.x, labels, a.width, a))
+	}
 	return out
 }
 
@@ -147,31 +168,11 @@ func (s *setter) answer(b *report.Summary, a area) setAnswer {
 		if i == 1 && part.height > 0 {
 			out.height += 3
 		}
-		for _, o := range part.ops {
-			shift(o, out.height)
-		}
+		shift(part.ops, out.height)
 		out.ops = append(out.ops, part.ops...)
 		out.height += part.height
 	}
 	return out
-}
-
-// shift moves a mark down.
-func shift(o op, dy float64) {
-	switch o := o.(type) {
-	case *textOp:
-		o.y += dy
-	case *pathOp:
-		for i := range o.points {
-			o.points[i].y += dy
-		}
-	case *linkOp:
-		o.y += dy
-	case *destOp:
-		o.y += dy
-	default:
-		panic("pdf: a line of text holds no other marks")
-	}
 }
 
 // cautionBox frames what the reader must not miss, its first paragraph in
@@ -271,9 +272,7 @@ func (p *piece) band(n int, least float64, part func(int) *piece) {
 		tall = max(tall, parts[i].height)
 	}
 	for _, part := range parts {
-		for _, o := range part.ops {
-			shift(o, p.height+tall-part.height)
-		}
+		shift(part.ops, p.height+tall-part.height)
 		p.ops = append(p.ops, part.ops...)
 	}
 	p.height += tall
@@ -291,9 +290,7 @@ func (s *setter) seals(row *piece, group []report.Signature, at func(int) float6
 		row.ops = append(row.ops, circle(at(i)+width/2, y, sealSize/2, line))
 		small.align = report.AlignCentre
 		word := s.linesPiece(s.plainWords("Seal", small.style), at(i), width, small)
-		for _, o := range word.ops {
-			shift(o, y-small.leading/2)
-		}
+		shift(word.ops, y-small.leading/2)
 		row.ops = append(row.ops, word.ops...)
 	}
 	if any {

@@ -103,7 +103,7 @@ func demoFront() []report.Block {
 			field("Location", "Ferry Road, north bank of the canal; 51.02° N, 4.1° E"),
 		}},
 		&report.Summary{Heading: "Profile L1", Label: "Site class", Answer: "C", Fields: []report.Field{
-			field("Code", "EN 1998-1:2004, Table 3.1"),
+			field("Code", "Code One (invented), Table 3.1"),
 			field("Average velocity", strong("238.4 m/s"), " (782 ft/s)", report.FootnoteRef(1)),
 			field("Averaged over", "30 m (98.4 ft) below ground level"),
 			field("How measured", "MASW; velocities inverted; reached 34 m", report.FootnoteRef(2)),
@@ -193,7 +193,7 @@ func longSum(n int) report.Math {
 }
 
 func demoClass() []report.Block {
-	class := &report.Table{Caption: inl("EN 1998-1:2004, Table 3.1, ground types, with the type of this site marked"),
+	class := &report.Table{Caption: inl("Code One (invented), Table 3.1, ground types, with the type of this site marked"),
 		Columns: []report.TableColumn{column("Type", report.AlignLeft), wideColumn("Stratigraphic profile"), {Header: inl("V", report.Sub("S,30"), " (m/s)"), Align: report.AlignRight}},
 		Rows: []report.TableRow{
 			tableRow("A", "Rock or other rock-like geological formation, with at most 5 m of weaker material at the surface", "> 800"),

@@ -69,8 +69,7 @@ type face struct {
 
 // loadFace reads the directory of a TrueType file. The files are part of the
 // program, so their structure is not in doubt.
-func loadFace(f report.Font) *face {
-	file := trueType(f)
+func loadFace(file []byte) *face {
 	t := &face{file: file, tables: map[string][]byte{}}
 	for i := range be16(file, 4) {
 		entry := file[12+16*i:]
@@ -219,7 +218,7 @@ type faces struct {
 
 func (f *faces) get(font report.Font) *face {
 	if f.loaded[font] == nil {
-		f.loaded[font] = loadFace(font)
+		f.loaded[font] = loadFace(trueType(font))
 	}
 	return f.loaded[font]
 }

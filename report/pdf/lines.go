@@ -30,6 +30,10 @@ func (s *setter) breakLines(words []word, width float64) []setLine {
 	return lines
 }
 
+// partCost is what it costs to part words that belong together: as much as a
+// line that is half empty.
+const partCost = 0.25
+
 // mostWords bounds the words of a line, for those that take no room.
 const mostWords = 500
 
@@ -54,7 +58,11 @@ func (s *setter) raggedLines(words []word, width float64) []setLine {
 			if w > width+0.01 && start < end-1 {
 				break
 			}
-			if c := cost[start] + rag(w, width, start > 0, end == n); c <= cost[end] {
+			c := cost[start] + rag(w, width, start > 0, end == n)
+			if end < n && words[end-1].binds {
+				c += partCost
+			}
+			if c <= cost[end] {
 				cost[end], from[end] = c, start
 			}
 		}

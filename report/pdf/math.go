@@ -9,7 +9,7 @@ import (
 
 // The type of formulas: Serif, variables in italics.
 const (
-	mathSize     = 10.8
+	mathSize     = 11.2
 	mathSmallest = 7.5 // made smaller only where nothing else fits
 	mathLeading  = 5.0 // between the lines of a formula that is broken
 )
@@ -30,7 +30,7 @@ func (s *setter) formula(f *report.Formula, a area) []*piece {
 	}
 	items := flatten(f.Math)
 	var lines []mathBox
-	for _, size := range []float64{mathSize, 9.6, 8.5, mathSmallest} {
+	for _, size := range []float64{mathSize, 10, 8.7, mathSmallest} {
 		lines = s.mathLines(items, size, a.width, isBreak)
 		if widestBox(lines) <= a.width {
 			break
@@ -40,11 +40,14 @@ func (s *setter) formula(f *report.Formula, a area) []*piece {
 		items = splitTexts(items)
 		lines = s.mathLines(items, mathSmallest, a.width, func([]report.Math, int) bool { return true })
 	}
-	shrink := min(a.width/widestBox(lines), 0.7*s.bodyHeight()/tallestBox(lines))
-	if shrink < 1 {
-		lines = s.mathLines(items, mathSmallest*shrink, a.width, func([]report.Math, int) bool { return true })
+	for size := mathSmallest; ; {
+		shrink := min(a.width/widestBox(lines), 0.7*s.bodyHeight()/tallestBox(lines))
+		if shrink >= 1 {
+			return s.stackLines(lines, a)
+		}
+		size *= 0.99 * shrink
+		lines = s.mathLines(items, size, a.width, func([]report.Math, int) bool { return true })
 	}
-	return s.stackLines(lines, a)
 }
 
 // stackLines makes a piece of each line, the block of them in the middle.
@@ -320,10 +323,11 @@ func (s *setter) inkOf(st style, text string) (up, down float64) {
 const mathAxis = 0.25
 
 func (s *setter) mathFrac(m report.MathFrac, size float64) mathBox {
-	num, den := s.math(m.Num, size), s.math(m.Den, size)
-	if size >= mathSize && (containsFrac(m.Num) || containsFrac(m.Den)) {
-		num, den = s.math(m.Num, 0.85*size), s.math(m.Den, 0.85*size)
+	inner := size
+	if containsFrac(m.Num) || containsFrac(m.Den) {
+		inner = 0.85 * size
 	}
+	num, den := s.math(m.Num, inner), s.math(m.Den, inner)
 	const bar = 0.55
 	gap, side := 0.27*size, 0.14*size
 	w := max(num.width, den.width) + 2*side

@@ -23,7 +23,7 @@ type framed struct {
 // The foot of a page: a short rule, then the notes.
 const (
 	footGap   = 15.0 // from the body to the first note; the rule stands in it
-	footMost  = 0.6  // of the body, for notes carried over from the page before
+	footMost  = 0.6  // of the body: what notes may take of a page that has more to hold
 	footLarge = 0.35 // of the body: a longer note may run on
 )
 
@@ -44,6 +44,7 @@ type builder struct {
 func (s *setter) paginate(pieces []*piece) []*page {
 	b := &builder{s: s, sheet: s.sheet, noted: make([]bool, len(s.doc.Footnotes)+1)}
 	b.newPage(nil)
+	pieces = cutAll(pieces, s.bodyHeight())
 	for len(pieces) > 0 {
 		n := 1
 		for n < len(pieces) && pieces[n-1].keep && !pieces[n].breaks {
@@ -62,6 +63,20 @@ func (s *setter) paginate(pieces []*piece) []*page {
 	return b.pages
 }
 
+// cutAll cuts the pieces that are taller than a page.
+func cutAll(pieces []*piece, page float64) []*piece {
+	for i, p := range pieces {
+		if p.height > page {
+			out := append([]*piece{}, pieces[:i]...)
+			for _, p := range pieces[i:] {
+				out = append(out, p.cut(0.6*page)...)
+			}
+			return out
+		}
+	}
+	return pieces
+}
+
 // newPage opens a page that starts with p, nil for nothing yet.
 func (b *builder) newPage(p *piece) {
 	b.now = &page{first: len(b.pages) == 0}
@@ -72,7 +87,7 @@ func (b *builder) newPage(p *piece) {
 	b.drain(footMost)
 	if p != nil {
 		for _, h := range p.repeat {
-			b.put(h, false)
+			b.put(h)
 		}
 	}
 }
@@ -101,8 +116,9 @@ func (b *builder) placeGroup(group []*piece) {
 	}
 	if b.fits(group) {
 		for _, p := range group {
-			b.put(p, true)
+			b.put(p)
 		}
+		b.note(group)
 		return
 	}
 	for _, p := range group {
@@ -120,7 +136,8 @@ func (b *builder) placeLoose(p *piece) {
 			break // as empty as a page gets
 		}
 	}
-	b.put(p, true)
+	b.put(p)
+	b.note(one)
 }
 
 // fits tells whether pieces and the notes they mention fit this page.
@@ -171,7 +188,7 @@ func (b *builder) noteHeight(n int) float64 {
 }
 
 // put places a piece here.
-func (b *builder) put(p *piece, notes bool) {
+func (b *builder) put(p *piece) {
 	if !b.empty() {
 		b.y += p.above
 	}
@@ -186,12 +203,17 @@ func (b *builder) put(p *piece, notes bool) {
 		b.now.frames[i].bottom = b.y + p.height
 	}
 	b.y += p.height
-	if notes && len(p.footnotes) > 0 {
+}
+
+// note puts the notes that pieces mention at the foot, once the pieces are
+// placed.
+func (b *builder) note(group []*piece) {
+	for _, p := range group {
 		for _, n := range p.footnotes {
 			b.enqueue(n)
 		}
-		b.drain(1)
 	}
+	b.drain(footMost)
 }
 
 // enqueue lets a note wait for room at the foot, once.

@@ -64,7 +64,10 @@ func (m *MissingGlyphs) Error() string {
 }
 
 // Write prints a document. Nothing is written if it cannot be printed: the
-// error is a *MissingGlyphs, or names the figure or image at fault.
+// error is a *MissingGlyphs, or names the figure or image at fault. Write
+// panics where the tree itself is wrong: at a node that it does not know, a
+// reference to a footnote that is not there, a row of more cells than its
+// table has columns. It may be called from several goroutines at once.
 func Write(w io.Writer, d *report.Document, opt Options) error {
 	s := &setter{
 		doc: d, sheet: newSheet(opt.Paper),

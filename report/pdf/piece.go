@@ -1,6 +1,7 @@
 package pdf
 
 import (
+	"fmt"
 	"math"
 
 	"shearbook/report"
@@ -159,4 +160,76 @@ func circle(x, y, radius float64, c report.Colour) op {
 		p.points = append(p.points, point{x + radius*cos, y + radius*sin})
 	}
 	return p
+}
+
+// shift moves marks down.
+func shift(ops []op, dy float64) {
+	for _, o := range ops {
+		switch o := o.(type) {
+		case *textOp:
+			o.y += dy
+		case *fillOp:
+			o.y += dy
+		case *pathOp:
+			for i := range o.points {
+				o.points[i].y += dy
+			}
+		case *figureOp:
+			o.y += dy
+		case *imageOp:
+			o.y += dy
+		case *linkOp:
+			o.y += dy
+		case *destOp:
+			o.y += dy
+		case *outlineOp:
+		default:
+			panic(fmt.Sprintf("pdf: unknown mark %T", o))
+		}
+	}
+}
+
+// top returns where a mark begins; for text, its base line.
+func top(o op) float64 {
+	switch o := o.(type) {
+	case *textOp:
+		return o.y
+	case *fillOp:
+		return o.y
+	case *pathOp:
+		return o.points[0].y
+	case *figureOp:
+		return o.y
+	case *imageOp:
+		return o.y
+	case *linkOp:
+		return o.y
+	case *destOp:
+		return o.y
+	case *outlineOp:
+		return 0
+	default:
+		panic(fmt.Sprintf("pdf: unknown mark %T", o))
+	}
+}
+
+// cut divides a piece that is taller than a page. It happens to fields that
+// hold pages of text: what fits no page must not run off it.
+func (p *piece) cut(most float64) []*piece {
+	if p.height <= most {
+		return []*piece{p}
+	}
+	n := int(math.Ceil(p.height / most))
+	parts := make([]*piece, n)
+	for i := range parts {
+		parts[i] = &piece{height: min(most, p.height-float64(i)*most), frames: p.frames, repeat: p.repeat}
+	}
+	for _, o := range p.ops {
+		i := min(max(int(top(o)/most), 0), n-1)
+		shift([]op{o}, -float64(i)*most)
+		parts[i].ops = append(parts[i].ops, o)
+	}
+	parts[0].above, parts[0].breaks, parts[0].footnotes = p.above, p.breaks, p.footnotes
+	parts[n-1].keep = p.keep
+	return parts
 }

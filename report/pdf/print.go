@@ -335,12 +335,13 @@ func (p *printer) polygon(o *pathOp, dx, dy float64) {
 
 // furnish sets header and footer of every page.
 func (p *printer) furnish(pages []*page) {
+	header := p.header()
 	for i := range pages {
-		var ops []op
+		ops := p.footer(i+1, len(pages))
 		if i > 0 || !p.s.plainFirstPage() {
-			ops = p.header()
+			ops = append(ops, header...)
 		}
-		p.furniture = append(p.furniture, append(ops, p.footer(i+1, len(pages))...))
+		p.furniture = append(p.furniture, ops)
 	}
 }
 

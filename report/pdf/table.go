@@ -12,7 +12,7 @@ const (
 	compactSize  = 7.2
 	tableFloor   = 6.0 // type is made no smaller to fit a table's width
 	tableLeading = 1.28
-	smallTable   = 0.3 // of a page: a table that is not split
+	smallTable   = 0.2 // of a page: a table that is not split
 )
 
 // grid is a table while it is set.
@@ -148,6 +148,9 @@ func (s *setter) tableNotes(t *report.Table, a area) []*piece {
 	}
 	if len(out) > 0 {
 		out[0].above = 3.5
+	}
+	if height(out, true) < 0.75*smallTable*s.bodyHeight() {
+		keepAll(out)
 	}
 	return out
 }

@@ -23,6 +23,7 @@ type word struct {
 	gap    *run  // the space to the next word if both stand on a line; nil for none
 	hyphen bool  // a soft hyphen: shown if the line ends here
 	ends   bool  // the line ends here
+	binds  bool  // better not parted from the next word: a number and its unit
 	notes  []int // footnotes mentioned
 }
 
@@ -46,6 +47,7 @@ func (s *setter) words(inlines []report.Inline, st style) []word {
 	m := maker{s: s}
 	m.inlines(inlines, st)
 	m.close()
+	bind(m.words)
 	return m.words
 }
 
@@ -54,6 +56,7 @@ func (s *setter) plainWords(text string, st style) []word {
 	m := maker{s: s}
 	m.text(text, st)
 	m.close()
+	bind(m.words)
 	return m.words
 }
 
@@ -118,7 +121,7 @@ func (m *maker) link(in *report.Link, st style) {
 	switch {
 	case shown == "":
 		m.text(in.URL, st)
-	case shown != in.URL && st.link == nil:
+	case in.URL != "" && shown != in.URL && st.link == nil:
 		m.text(" ("+in.URL+")", st)
 	}
 }
