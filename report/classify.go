@@ -17,22 +17,47 @@ type Facts struct {
 	Extend     string // one of Extensions; "" refuses a profile that is too short
 }
 
-// Extensions are the ways in which a profile that ends above the averaging
-// depth may be carried down to it.
-var Extensions = []string{"constant-velocity"}
+// Extensions returns the IDs of the ways in which a profile that ends above
+// the averaging depth may be carried down to it.
+func Extensions() []string {
+	var ids []string
+	for _, r := range extend.All() {
+		ids = append(ids, r.ID)
+	}
+	return ids
+}
+
+// Extended returns the layers of a profile carried down to thickness m below
+// depth from by the relation of an ID, with the notes that must stand beside
+// their average. The error is an *extend.Refusal where the relation does not
+// hold for the profile.
+func Extended(p *profile.Profile, id string, from, thickness float64) ([]profile.Layer, []profile.Note, error) {
+	relation, err := extend.Find(id)
+	if err != nil {
+		return nil, nil, err
+	}
+	e, err := relation.Estimate(p.Layers, from, thickness)
+	if err != nil {
+		return nil, nil, err
+	}
+	return e.Continue(p.Layers), append([]profile.Note{e.Note}, e.Doubts...), nil
+}
 
 // Classify decides the class of a profile under a code. A profile that ends
 // above the averaging depth is extended as facts say, and the decision notes
-// it; otherwise the error is a *vs30.ShortError. The doubts about the
-// profile itself join the decision's notes.
+// it; otherwise the error is a *vs30.ShortError, or an *extend.Refusal. The
+// doubts about the profile itself join the decision's notes.
 func Classify(p *profile.Profile, code *siteclass.Code, facts Facts) (siteclass.Decision, error) {
 	site := siteclass.Site{Profile: p, Layers: p.Layers, Datum: facts.Datum,
 		FoundationDepth: facts.Foundation, Ground: facts.Ground}
 	d, err := code.Decide(site)
 	var short *vs30.ShortError
 	if errors.As(err, &short) && facts.Extend != "" {
-		site.Layers, site.Extended = extend.ConstantVelocity(p.Layers, short.Needed), true
-		site.Notes = []profile.Note{extend.Note(p.Layers, facts.Datum.Value, short.Needed-facts.Datum.Value)}
+		from, _ := code.DatumOf(site)
+		if site.Layers, site.Notes, err = Extended(p, facts.Extend, from, short.Needed-from); err != nil {
+			return d, err
+		}
+		site.Extended = true
 		d, err = code.Decide(site)
 	}
 	if err != nil {
@@ -46,8 +71,11 @@ func Classify(p *profile.Profile, code *siteclass.Code, facts Facts) (siteclass.
 // profile extended as facts say where it is too short; nil if there is none.
 func Average30(p *profile.Profile, datum float64, facts Facts) *float64 {
 	layers := p.Layers
-	if facts.Extend != "" {
-		layers = extend.ConstantVelocity(layers, datum+30)
+	if last := layers[len(layers)-1]; last.Bottom < datum+30-vs30.Touching && facts.Extend != "" {
+		var err error
+		if layers, _, err = Extended(p, facts.Extend, datum, 30); err != nil {
+			return nil
+		}
 	}
 	v, err := vs30.Average(layers, datum, 30)
 	if err != nil {

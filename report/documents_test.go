@@ -14,8 +14,8 @@ var hostileTexts = []string{
 	"# not a heading #", "- not an item", "+ nor this", "* nor that", "1. no list", "2) no list", "> no quote", "===", "---",
 	"| a | b |\n|---|---|\n| c | d |", "***", "_ _ _", "```go", "~~~", "    code", "\ttab", "a\n\nb", "a  \nb\\\nc",
 	"**bold** *it* __b__ _i_ ~~gone~~ ~gone~", "`code` ``more` code``", "[text](http://a.example)", "![alt](x.png)",
-	"[ref][1]", "[1]: http://a.example", "[^1]: note", "[^1]", "[x] done", "[ ] open", "http://a_b_c.example/x_y", "https://a.example/*",
-	"www.a_.example", "me@a.example", "<me@a.example>", "<https://a.example>", "$x$ and $$y$$", `C:\dir\*`, `\`, `a\|b|c`, "!", "![",
+	"[ref][1]", "[1]: http://a.example", "[^1]: note", "[^1]", "^1", "!a^1]", "!!^1]", "[x] done", "[ ] open", "http://a_b_c.example/x_y", "https://a.example/*",
+	"www.a_.example", "me@a.example", "<me@a.example>", "<-@a>", "<3@a>b", "<https://a.example>", "$x$ and $$y$$", `C:\dir\*`, `\`, `a\|b|c`, "!", "![",
 	"](http://b.example)", "a*b*c", "snake_case_name", "* ", "*", "**", "a **b", "a** b", "<!-- x -->", "<![CDATA[", "]]>", "{{ x }}",
 	"\u202egnp.exe\u202c", "\u2066x\u2069", "a\u200eb\u200fc\u061cd", "bell\x07 nul\x00 del\x7f c1\u0085", "\u2028\u2029", "\xff\xfe", "\ufffe\U0001ffff",
 	`"quoted" 'text'`, "日本語 кириллица ½ ≤ ≥ ▸", "`", "a`", "`a", "```", "\\`", "~", "~5", "a~", "(~3)", ":--", "|", "-|-",
@@ -87,13 +87,18 @@ type shape struct {
 	next  func() string
 	depth int
 	notes int
+	tame  bool // only what keeps the spaces around its text, and text at all ends
 }
 
 func randomDocument(seed uint64, next func(*rand.Rand) string) *Document {
+	return (&shape{}).document(seed, next)
+}
+
+func (s *shape) document(seed uint64, next func(*rand.Rand) string) *Document {
 	// The texts have a generator of their own, so that the shape of the
 	// document does not hang on how often they draw.
 	texts := rand.New(rand.NewPCG(seed, 2))
-	s := &shape{rng: rand.New(rand.NewPCG(seed, 1)), next: func() string { return next(texts) }, notes: 3}
+	s.rng, s.next, s.notes = rand.New(rand.NewPCG(seed, 1)), func() string { return next(texts) }, 3
 	mentions := &Paragraph{}
 	for i := range s.notes {
 		mentions.Inline = append(mentions.Inline, Text("x"), FootnoteRef(i+1))
@@ -174,6 +179,9 @@ func (s *shape) inlines(most int) []Inline {
 	for i := range out {
 		out[i] = s.inline()
 	}
+	if s.tame {
+		out = append(append([]Inline{Text(s.next())}, out...), Text(s.next()))
+	}
 	return out
 }
 
@@ -183,24 +191,28 @@ func (s *shape) inline() Inline {
 	}
 	s.depth++
 	defer func() { s.depth-- }()
-	switch s.rng.IntN(14) {
-	case 0:
+	switch kind := s.rng.IntN(14); {
+	case s.tame && (kind == 3 || kind == 5 || kind >= 7):
+		return Text(s.next())
+	case s.tame && kind == 4:
+		return &Link{pathologicalURLs[0], s.inlines(3)}
+	case kind == 0:
 		return &Emphasis{s.inlines(3)}
-	case 1:
+	case kind == 1:
 		return &Strong{s.inlines(3)}
-	case 2:
+	case kind == 2:
 		return &Strike{s.inlines(3)}
-	case 3:
+	case kind == 3:
 		return Code(s.next())
-	case 4:
+	case kind == 4:
 		return &Link{pathologicalURLs[s.rng.IntN(len(pathologicalURLs))], s.inlines(3)}
-	case 5:
+	case kind == 5:
 		return FootnoteRef(1 + s.rng.IntN(s.notes))
-	case 6:
+	case kind == 6:
 		return LineBreak{}
-	case 7:
+	case kind == 7:
 		return Sub(s.next())
-	case 8:
+	case kind == 8:
 		return Sup(s.next())
 	}
 	return Text(s.next())

@@ -71,6 +71,15 @@ func Linkable(url string) bool {
 	return false
 }
 
+// linkText returns what a link shows: its text, behind its URL if that is
+// blank.
+func linkText(l *Link) []Inline {
+	if plain(l.Inline) == "" {
+		return append([]Inline{Text(l.URL)}, l.Inline...)
+	}
+	return l.Inline
+}
+
 // encodeURL returns url with the bytes percent-encoded that would end it
 // early in Markdown or have no place in a URL.
 func encodeURL(url string) string {

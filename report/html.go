@@ -149,7 +149,9 @@ func (p *html) block(b Block) {
 	case *Heading:
 		p.heading(min(max(b.Level, 1), 6), b.Inline)
 	case *Paragraph:
-		p.element("p", "", b.Inline)
+		if len(b.Inline) > 0 {
+			p.element("p", "", b.Inline)
+		}
 	case *List:
 		p.list(b)
 	case *Quote:
@@ -227,17 +229,17 @@ func (p *html) item(item ListItem, tight bool) {
 	default:
 		panic(unknown(item.Task))
 	}
-	for i, b := range item.Blocks {
-		para, ok := b.(*Paragraph)
-		if ok && i == 0 && (tight || item.Task != NoTask) {
+	blocks := item.Blocks
+	if len(blocks) > 0 && (tight || item.Task != NoTask) {
+		if para, ok := blocks[0].(*Paragraph); ok {
 			p.inlines(para.Inline)
-			continue
+			blocks = blocks[1:]
 		}
-		if i <= 1 {
-			p.b.WriteByte('\n')
-		}
-		p.block(b)
 	}
+	if len(blocks) > 0 {
+		p.b.WriteByte('\n')
+	}
+	p.blocks(blocks)
 	p.b.WriteString("</li>\n")
 }
 

@@ -66,10 +66,7 @@ func (p *html) link(l *Link) {
 	}
 	p.inLink = true
 	fmt.Fprintf(p.b, `<a href="%s">`, escapeXML(encodeURL(l.URL)))
-	if plain(l.Inline) == "" {
-		p.text(l.URL)
-	}
-	p.inlines(l.Inline)
+	p.inlines(linkText(l))
 	p.b.WriteString("</a>")
 	p.inLink = false
 	held := p.held

@@ -15,8 +15,10 @@ h4, h5, h6 { font-size: 1rem; }
 p, ul, ol, pre, blockquote, figure { margin: .8em 0; }
 p { orphans: 3; widows: 3; }
 li > p { margin: .4em 0; }
+li > ul, li > ol { margin: 0; }
 li.task { list-style: none; }
-li.task > input { margin: 0 .3em 0 -1.4em; }
+li.task > input { appearance: none; box-sizing: border-box; width: .85em; height: .85em; margin: 0 .35em 0 -1.4em; border: 1.5px solid #1a1a1a; vertical-align: -.05em; }
+li.task > input:checked { background: #1a1a1a; box-shadow: inset 0 0 0 1.5px #fff; print-color-adjust: exact; }
 a { color: #0072b2; text-underline-offset: .15em; }
 sub, sup { line-height: 0; font-size: .75em; }
 sup.ref a { text-decoration: none; padding: 0 .1em; }
@@ -27,14 +29,20 @@ hr { border: 0; border-top: 1px solid #b3b3b3; margin: 2em 0; }
 figure { text-align: center; }
 figure > svg, figure > img { max-width: 100%; height: auto; }
 figcaption { font-size: .9em; margin-top: .5em; text-align: left; }
-.formula { margin: 1em 0; font-size: 1.1em; overflow-x: auto; }
-math .word { font-style: italic; }
+.formula { margin: .8em 0; padding: .2em 0; font-size: 1.1em; overflow: auto hidden; }
+math { font-family: "STIX Two Math", "Latin Modern Math", "Cambria Math", math; }
+mi, mn, mo, mtext { font-family: "Liberation Serif", Tinos, "Times New Roman", Times, serif; }
+mi { font-style: italic; }
+.sum { font-size: 1.6em; padding: .06em 0; }
+.bar { padding-bottom: .18em; }
+mfrac > :first-child { padding-bottom: .12em; }
+mfrac > :last-child { padding-top: .12em; }
 
 table { border-collapse: collapse; font-variant-numeric: tabular-nums; }
 th, td { padding: .3em .7em; text-align: left; vertical-align: top; }
 caption { text-align: left; font-weight: bold; padding: 0 0 .4em; }
 .data { margin: 1.2em 0; overflow-x: auto; }
-.data > table { min-width: 60%; border-top: 1.5px solid #1a1a1a; border-bottom: 1.5px solid #1a1a1a; }
+.data > table { border-top: 1.5px solid #1a1a1a; border-bottom: 1.5px solid #1a1a1a; }
 .data caption { caption-side: top; font-size: .9em; }
 .data thead th { border-bottom: 1px solid #1a1a1a; vertical-align: bottom; }
 .data td { border-bottom: 1px solid #e4e4e4; }
@@ -42,8 +50,9 @@ caption { text-align: left; font-weight: bold; padding: 0 0 .4em; }
 .data .right { text-align: right; white-space: nowrap; }
 .data th.right { white-space: normal; }
 .data .centre { text-align: center; }
-.data .wide { width: 100%; }
-.data .marked > td { background: #e8e8e8; font-weight: bold; }
+.data .full { width: 100%; }
+.data .wide { width: 60%; }
+.data .marked > td { background: #e8e8e8; font-weight: bold; print-color-adjust: exact; }
 .data .total > td { border-top: 1px solid #1a1a1a; font-weight: bold; }
 .data .note { font-size: .85em; margin: .35em 0 0; color: #404040; }
 .compact { font-size: .8em; }
@@ -67,7 +76,8 @@ header { border-bottom: 1.5px solid #1a1a1a; margin-bottom: 1.5em; padding-botto
 .sign-off th, .sign-off td { border: 1px solid #808080; }
 .sign-off tbody > tr { height: 4.5em; }
 .sign-off tbody th { font-weight: normal; }
-.sign-off thead th:nth-child(n+5) { width: 20%; }
+.sign-off thead th:nth-child(2), .sign-off thead th:nth-child(n+5) { width: 17%; }
+.sign-off tbody th, .sign-off td:nth-child(4) { white-space: nowrap; }
 .sign-off td.seal { height: 9em; }
 .footnotes { margin-top: 3em; border-top: 1px solid #b3b3b3; font-size: .9em; }
 .footnotes :target, sup.ref a:target { outline: 2px solid #0072b2; }
@@ -80,6 +90,7 @@ header { border-bottom: 1.5px solid #1a1a1a; margin-bottom: 1.5em; padding-botto
   thead { display: table-header-group; }
   tr, figure, pre, .formula, .summary, .caution, .sign-off, .data { break-inside: avoid; }
   .data, .formula, pre { overflow: visible; }
+  pre { white-space: pre-wrap; overflow-wrap: anywhere; }
   .data.compact { break-inside: auto; }
   .page-break { break-after: page; }
 }

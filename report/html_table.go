@@ -2,6 +2,7 @@ package report
 
 import (
 	"fmt"
+	"slices"
 	"unicode/utf8"
 )
 
@@ -10,7 +11,11 @@ func (p *html) table(t *Table) {
 	if t.Compact {
 		class = "data compact"
 	}
-	fmt.Fprintf(p.b, "<div class=\"%s\">\n<table>\n", class)
+	width := ""
+	if slices.ContainsFunc(t.Columns, func(c TableColumn) bool { return c.Wide }) {
+		width = ` class="full"`
+	}
+	fmt.Fprintf(p.b, "<div class=\"%s\">\n<table%s>\n", class, width)
 	if len(t.Caption) > 0 {
 		p.element("caption", "", t.Caption)
 	}

@@ -27,16 +27,19 @@ func mustEscape(line []char, i int, at place, strike bool) bool {
 		return at == inLink || prev.r == '!' || prev.raw || !unitInBrackets(line, i)
 	case ']':
 		return at == inLink
+	case '^':
+		return at == inLink && i == 0
 	case '(':
 		return prev.raw && prev.r == ']'
 	case ':':
-		return prev.raw && prev.r == ']' || afterScheme(line, i)
+		return afterScheme(line, i)
 	case '.':
 		return afterWWW(line, i)
 	case '!':
-		return next.raw && next.r == '['
+		// Some readers see a footnote in !x^1] too.
+		return next.raw && next.r == '[' || i+2 < len(line) && line[i+2].r == '^'
 	case '<':
-		return !next.raw && (unicode.IsLetter(next.r) || strings.ContainsRune("/!?", next.r))
+		return !next.raw && (unicode.IsLetter(next.r) || strings.ContainsRune("/!?", next.r)) || beforeMail(line, i)
 	case '&':
 		return startsEntity(line, i)
 	}
@@ -110,6 +113,19 @@ func endsWith(line []char, i int, word string) bool {
 	return true
 }
 
+// beforeMail reports whether < stands before something like me@example.org.
+func beforeMail(line []char, i int) bool {
+	for _, c := range line[i+1:] {
+		switch c.r {
+		case '@':
+			return true
+		case ' ', '<', '>', hardBreak:
+			return false
+		}
+	}
+	return false
+}
+
 // startsEntity reports whether an ampersand begins something like &lt; or
 // &#60;.
 func startsEntity(line []char, i int) bool {
@@ -149,16 +165,17 @@ func hasStrike(line []char) bool {
 var (
 	blockStart = regexp.MustCompile(`^(#{1,6}( |$)|[-+*]( |$)|>|=+$|[-:|][-:| ]*$)`)
 	numbered   = regexp.MustCompile(`^([0-9]{1,9})([.)]( |$))`)
+	definition = regexp.MustCompile(`^(\[\^[0-9]+\]):`)
 )
 
 // escapeLineStart returns a line of a paragraph that does not look like the
 // start of another block: a heading, a list, a quotation, the line under a
-// heading or under the head of a table.
+// heading or under the head of a table, a footnote.
 func escapeLineStart(line string) string {
 	if blockStart.MatchString(line) {
 		return `\` + line
 	}
-	return numbered.ReplaceAllString(line, `$1\$2`)
+	return definition.ReplaceAllString(numbered.ReplaceAllString(line, `$1\$2`), `$1\:`)
 }
 
 var closing = regexp.MustCompile(`(^| )(#+)$`)

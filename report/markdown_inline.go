@@ -224,7 +224,7 @@ func (l *lexer) link(in *Link) {
 		return
 	}
 	inner := newLexer(inLink, l.footnotes)
-	inner.inlines(in.Inline)
+	inner.inlines(linkText(in))
 	before, tokens, behind := trimGaps(inner.out)
 	if before {
 		l.gap(space)
@@ -238,18 +238,13 @@ func (l *lexer) link(in *Link) {
 	}
 }
 
-// linkSource returns a link with tokens as its text, or its URL if there are
-// none.
+// linkSource returns a link with tokens as its text.
 func linkSource(in *Link, tokens []token) string {
 	url := encodeURL(in.URL)
-	if auto, ok := autolink(plain(in.Inline), in.URL, url); ok {
+	if auto, ok := autolink(source(tokens, inLink), in.URL, url); ok {
 		return auto
 	}
-	text := source(tokens, inLink)
-	if text == "" {
-		text = source(wordTokens(in.URL), inLink)
-	}
-	return "[" + text + "](" + escapeEntities(url) + ")"
+	return "[" + source(tokens, inLink) + "](" + escapeEntities(url) + ")"
 }
 
 // behind returns what stands behind the text of a link that is not made one:
@@ -265,16 +260,17 @@ func behind(l *Link) string {
 	}
 }
 
-// autolink returns a link that shows its own address: <https://…>.
-func autolink(text, url, encoded string) (string, bool) {
-	if text != "" && text != url || url != encoded || strings.Contains(url, "&") || url[0] == '#' {
+// autolink returns a link that shows its own address: <https://…>. source is
+// its text as Markdown.
+func autolink(source, url, encoded string) (string, bool) {
+	if source != escaped(url) || url != encoded || strings.Contains(url, "&") || url[0] == '#' {
 		return "", false
 	}
-	if len(url) > 7 && strings.EqualFold(url[:7], "mailto:") {
-		return "", false
-	}
-	return "<" + url + ">", true
+	return "<" + url + ">", !strings.HasPrefix(strings.ToLower(url), "mailto:")
 }
+
+// escaped returns text as Markdown in a link.
+func escaped(s string) string { return source(wordTokens(s), inLink) }
 
 func wordTokens(s string) []token {
 	l := &lexer{}
@@ -376,7 +372,7 @@ func (p *markdown) cell(inlines []Inline) string {
 }
 
 // alt returns the alternative text of a picture.
-func (p *markdown) alt(s string) string { return source(wordTokens(words(s)), inLink) }
+func (p *markdown) alt(s string) string { return escaped(words(s)) }
 
 // paragraph returns the lines of a paragraph, behind a task's box if there
 // is one.

@@ -42,15 +42,17 @@ func TestMarkdownKeepsHostileText(t *testing.T) {
 }
 
 func TestMarkdownKeepsRandomDocuments(t *testing.T) {
-	for seed := range uint64(4000) {
+	for seed := range uint64(500) {
 		checkMarkdown(t, randomDocument(seed, hostile), randomDocument(seed, benign), true)
 	}
 }
 
-// Between plain words with spaces around them every style can be written.
+// Around plain words with spaces around them every style can be written, if
+// no two begin or end at one place.
 func TestMarkdownKeepsStyles(t *testing.T) {
-	for seed := range uint64(2000) {
-		checkMarkdown(t, randomDocument(seed, spaced), randomDocument(seed, spaced), false)
+	for seed := range uint64(300) {
+		d := (&shape{tame: true}).document(seed, spaced)
+		checkMarkdown(t, d, d, false)
 	}
 }
 
@@ -66,21 +68,26 @@ func FuzzMarkdownText(f *testing.F) {
 			}
 			return "word"
 		}
-		checkMarkdown(t, everything(cycle([]string{a, b}, 0)), everything(cycle([]string{plainOf(a), plainOf(b)}, 0)), true)
-		checkMarkdown(t, close3(a, b), close3(plainOf(a), plainOf(b)), true)
+		checkMarkdown(t, touching(a, b), touching(plainOf(a), plainOf(b)), true)
 	})
 }
 
-// close3 returns paragraphs in which texts touch markup without a space.
-func close3(a, b string) *Document {
-	var blocks []Block
-	for _, mid := range []Inline{
-		&Emphasis{[]Inline{Text(b)}}, &Strong{[]Inline{Text(b)}}, &Strike{[]Inline{Text(b)}}, Code(b), FootnoteRef(1), LineBreak{},
-		&Link{"https://example.org", []Inline{Text(b)}}, Sub(b), Sup(b),
-	} {
-		blocks = append(blocks, &Paragraph{[]Inline{Text(a), mid, Text(a)}}, &Paragraph{[]Inline{mid, Text(a), mid}})
+// touching returns a document in which texts touch markup without a space.
+func touching(a, b string) *Document {
+	link := &Link{"https://example.org", []Inline{Text(b), &Emphasis{[]Inline{Text(a)}}}}
+	line := []Inline{
+		Text(a), &Emphasis{[]Inline{Text(b)}}, Text(a), &Strong{[]Inline{Text(b), LineBreak{}, Text(a)}}, Code(b), Text(a),
+		FootnoteRef(1), Text(b), &Strike{[]Inline{Text(a)}}, link, Text(a), Sub(b), Text(a), Sup(b),
 	}
-	return &Document{Blocks: blocks, Footnotes: []Footnote{{[]Block{&Paragraph{[]Inline{Text(a + b)}}}}}}
+	return &Document{
+		Blocks: []Block{
+			&Heading{2, line}, &Paragraph{[]Inline{Text(a), LineBreak{}, Text(b)}}, &CodeBlock{a, b},
+			&List{Items: []ListItem{{Blocks: []Block{&Paragraph{[]Inline{Text(b)}}, &Paragraph{line}}}}},
+			&Table{Columns: []TableColumn{{Header: line}, {Header: []Inline{Text(a)}, Align: AlignDecimal}}, Rows: []TableRow{{Cells: [][]Inline{{Text(a)}, {Code(b)}}}}},
+			&Image{a, a, b, nil, "png", 0, 0},
+		},
+		Footnotes: []Footnote{{[]Block{&Paragraph{[]Inline{Text(a + b)}}}}},
+	}
 }
 
 func TestMarkdownIsWrapped(t *testing.T) {
@@ -106,7 +113,7 @@ func TestMarkdownNeverWrapsCodeAndLinks(t *testing.T) {
 		Text("before "), Code(code), Text(" and "), &Link{"https://example.org", []Inline{Text(code)}}, Text(" after"),
 	}}}}
 	source := markdownOf(t, d)
-	for _, want := range []string{"\n`" + code + "` and\n", "\n[" + code + "](https://example.org)\n"} {
+	for _, want := range []string{"\n`" + code + "`\n", "\n[" + code + "](https://example.org)\n"} {
 		if !strings.Contains(source, want) {
 			t.Errorf("no %q in\n%s", want, source)
 		}

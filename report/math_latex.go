@@ -74,7 +74,7 @@ func latexItalic(s string) string {
 	if utf8.RuneCountInString(s) == 1 {
 		return s
 	}
-	return `\mathit{` + s + "}"
+	return `\mathit{` + strings.ReplaceAll(s, " ", `\ `) + "}"
 }
 
 func latexText(s string) string {

@@ -3,7 +3,6 @@ package report
 import (
 	"regexp"
 	"strings"
-	"unicode/utf8"
 )
 
 // mathML returns a displayed formula in MathML Core.
@@ -24,11 +23,11 @@ func mathNode(m Math) string {
 	case MathText:
 		return mathText(string(m))
 	case MathFrac:
-		return "<mfrac>" + mathNode(m.Num) + mathNode(m.Den) + "</mfrac>"
+		return "<mfrac>" + fullSize(m.Num) + fullSize(m.Den) + "</mfrac>"
 	case MathSub:
 		return "<msub>" + mathNode(m.Base) + mathNode(m.Sub) + "</msub>"
 	case MathOver:
-		return `<mover accent="true">` + mathNode(m.Base) + `<mo stretchy="true">‾</mo></mover>`
+		return `<mover accent="true">` + mathNode(m.Base) + `<mo class="bar" stretchy="true">‾</mo></mover>`
 	case MathSum:
 		return mathSum(m)
 	default:
@@ -36,13 +35,19 @@ func mathNode(m Math) string {
 	}
 }
 
-// mathIdent returns a variable. MathML sets one letter in italics by itself.
-func mathIdent(s string) string {
-	s = words(s)
-	if utf8.RuneCountInString(s) > 1 {
-		return `<mi class="word">` + escapeXML(s) + "</mi>"
+// fullSize returns a part of a fraction, at full size if there is more in it
+// than can be read small.
+func fullSize(m Math) string {
+	if row, ok := m.(MathRow); ok && len(row) > 1 {
+		return `<mstyle displaystyle="true" scriptlevel="0">` + mathNode(m) + "</mstyle>"
 	}
-	return "<mi>" + escapeXML(s) + "</mi>"
+	return mathNode(m)
+}
+
+// mathIdent returns a variable. The style sheet sets it in italics, a letter
+// or a word: mathematical letters would come from whatever font has them.
+func mathIdent(s string) string {
+	return `<mi mathvariant="normal">` + escapeXML(words(s)) + "</mi>"
 }
 
 var mathNumber = regexp.MustCompile(`^[0-9][0-9., \x{a0}\x{2009}\x{202f}]*$`)
@@ -64,7 +69,7 @@ func mathText(s string) string {
 }
 
 func mathSum(m MathSum) string {
-	const sign = `<mo movablelimits="false">∑</mo>`
+	const sign = `<mo class="sum" movablelimits="false">∑</mo>`
 	switch {
 	case m.From != nil && m.To != nil:
 		return "<munderover>" + sign + mathNode(m.From) + mathNode(m.To) + "</munderover>"

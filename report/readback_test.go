@@ -89,7 +89,7 @@ func (p *page) flush() {
 var inlineElements = map[string]bool{
 	"em": true, "strong": true, "s": true, "del": true, "a": true, "br": true, "sub": true, "sup": true,
 	"span": true, "input": true, "mi": true, "mo": true, "mn": true, "mtext": true, "mrow": true, "mfrac": true,
-	"msub": true, "mover": true, "munder": true, "munderover": true,
+	"msub": true, "mover": true, "munder": true, "munderover": true, "mstyle": true,
 }
 
 // readXML reads a well-formed document. Comments are refused: the printers
@@ -500,10 +500,7 @@ func (m *meant) link(l *Link, st style) {
 		m.open.add(behind(l), st)
 		return
 	}
-	m.inlines(l.Inline, st|styleLink)
-	if plain(l.Inline) == "" {
-		m.open.add(l.URL, st|styleLink)
-	}
+	m.inlines(linkText(l), st|styleLink)
 }
 
 // compareTexts reports where the text read back differs from what was meant.

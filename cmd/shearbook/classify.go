@@ -18,7 +18,7 @@ import (
 
 // classifyFlags are the flags of classify.
 type classifyFlags struct {
-	codes                            []string
+	codes, codeFiles                 []string
 	datum, foundation, extend, units string
 	format                           string
 }
@@ -30,10 +30,13 @@ func newClassify(s streams) *cobra.Command {
 		Short: "Say the site class of profiles, with the steps of the decision",
 		Long: `classify reads profiles, averages them as each code asks, and says the class
 with every comparison that led to it. - reads standard input. What velocities
-cannot settle is listed as not assessed: a notebook can state it.`,
+cannot settle is listed as not assessed: a notebook can state it. --code-file
+adds a table of a jurisdiction's own; ` + "`codes ID --format yaml`" + ` writes one to
+start from.`,
 		Example: `  shearbook classify line-1.csv --code asce-7-16
   shearbook classify *.csv --code ec8-2004,ntc-2018 --datum 2.5m
-  shearbook classify - --code nbcc-2015 --format json < line-1.csv`,
+  shearbook classify - --code nbcc-2015 --format json < line-1.csv
+  shearbook classify line-1.csv --code-file local.yaml`,
 		Args: arguments(1, -1, "at least one profile file"),
 		RunE: func(_ *cobra.Command, args []string) error { return classify(s, f, args) },
 	}
@@ -44,8 +47,9 @@ cannot settle is listed as not assessed: a notebook can state it.`,
 	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
 	fl.StringVar(&f.units, "units", "", "`units` the file does not state: \"m, m/s\"")
 	fl.StringVar(&f.format, "format", "text", "`text or json`")
+	codeFilesFlag(c, &f.codeFiles)
 	completeCodes(c)
-	completeWords(c, "extend", report.Extensions...)
+	completeWords(c, "extend", report.Extensions()...)
 	completeWords(c, "format", "text", "json")
 	return c
 }
@@ -106,15 +110,15 @@ type classified struct {
 
 // read checks the flags.
 func (f classifyFlags) read() (facts report.Facts, codes []*siteclass.Code, err error) {
-	if len(f.codes) == 0 {
+	if len(f.codes) == 0 && len(f.codeFiles) == 0 {
 		return facts, nil, misuse("add --code asce-7-16, or another of `shearbook codes`", "classify needs a code")
 	}
-	if err := checkCodes(f.codes); err != nil {
+	own, err := readCodeFiles(f.codeFiles)
+	if err != nil {
 		return facts, nil, err
 	}
-	for _, id := range f.codes {
-		code, _ := siteclass.Find(id) // checked above
-		codes = append(codes, code)
+	if codes, err = chooseCodes(f.codes, own); err != nil {
+		return facts, nil, err
 	}
 	if facts.Datum, err = depthFlag("datum", f.datum); err != nil {
 		return facts, nil, err

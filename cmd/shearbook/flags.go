@@ -10,24 +10,14 @@ import (
 	"shearbook/vs30/siteclass"
 )
 
-// checkCodes is a misuse that names the first code that is not known.
-func checkCodes(ids []string) error {
-	for _, id := range ids {
-		if _, err := siteclass.Find(id); err != nil {
-			return usageError{err, "`shearbook codes` lists them"}
-		}
-	}
-	return nil
-}
-
 // checkExtend is a misuse where the extension is not known.
 func checkExtend(word string) error {
-	for _, known := range report.Extensions {
+	for _, known := range report.Extensions() {
 		if word == known {
 			return nil
 		}
 	}
-	return misuse("known: "+strings.Join(report.Extensions, ", "), "extension %q is not known", word)
+	return misuse("known: "+strings.Join(report.Extensions(), ", "), "extension %q is not known", word)
 }
 
 // depthFlag reads a flag that is a depth below ground level.

@@ -23,6 +23,7 @@ import (
 type reportFlags struct {
 	out, paper, print, extend string
 	standard                  notebook.Standard // what the standard template is filled with
+	codeFiles                 []string
 	datum, foundation         string
 }
 
@@ -33,8 +34,9 @@ func newReport(s streams) *cobra.Command {
 		Short: "Write the report of a notebook, or of one profile file",
 		Long: `report evaluates a notebook and writes its report: report.md, report.html,
 report.pdf, results.json, and the figures as SVG. Without --out they go into
-a folder beside the notebook, named after it. Given a profile file and a code
-it does the same through the standard template.`,
+a folder beside the notebook, named after it. Given a profile file and a code,
+or a file with a jurisdiction's own table, it does the same through the
+standard template.`,
 		Example: `  shearbook report ferry-road/notebook.md
   shearbook report line-1.csv --code asce-7-16
   shearbook report line-1.csv --code ec8-2004 --units "ft, ft/s" --out report`,
@@ -55,15 +57,16 @@ it does the same through the standard template.`,
 	fl.StringVar(&f.standard.Project, "project", "", "`name`, for a profile file")
 	fl.StringVar(&f.standard.PreparedBy, "prepared-by", "", "`name`, for a profile file")
 	fl.StringVar(&f.standard.Date, "date", "", "`date`, for a profile file")
+	codeFilesFlag(c, &f.codeFiles)
 	completeWords(c, "paper", "A4", "Letter")
 	completeWords(c, "print-units", "SI", "US")
-	completeWords(c, "extend", report.Extensions...)
+	completeWords(c, "extend", report.Extensions()...)
 	completeCodes(c)
 	return c
 }
 
 // forProfileOnly are the flags that a notebook says itself.
-var forProfileOnly = []string{"code", "units", "datum", "foundation-depth", "project", "prepared-by", "date"}
+var forProfileOnly = []string{"code", "code-file", "units", "datum", "foundation-depth", "project", "prepared-by", "date"}
 
 // writeReport is the whole of `shearbook report`.
 func writeReport(s streams, c *cobra.Command, f reportFlags, source string) error {
@@ -149,8 +152,18 @@ func (f reportFlags) override(h *notebook.Header) error {
 func canonical(c *cobra.Command, base string) string {
 	text := "shearbook report " + base
 	for _, name := range append([]string{"extend", "paper", "print-units"}, forProfileOnly...) {
-		if fl := c.Flags().Lookup(name); fl.Changed {
-			value := strings.Trim(fl.Value.String(), "[]")
+		fl := c.Flags().Lookup(name)
+		if !fl.Changed {
+			continue
+		}
+		values := []string{strings.Trim(fl.Value.String(), "[]")}
+		if name == "code-file" {
+			values, _ = c.Flags().GetStringArray(name) // fails only for a flag of another type
+		}
+		for _, value := range values {
+			if name == "code-file" {
+				value = filepath.Base(value)
+			}
 			if strings.ContainsAny(value, " ,") {
 				value = `"` + value + `"`
 			}
@@ -165,7 +178,8 @@ type source struct {
 	name, base string // as the user named it, and without its folder
 	dir        string
 	data       []byte
-	root       *os.Root // its folder; nil for standard input
+	root       *os.Root          // its folder; nil for standard input
+	tables     map[string][]byte // of --code-file, by their names without their folders
 }
 
 // openSource reads the file that report was given, and opens its folder.
@@ -205,6 +219,9 @@ func (src *source) read(name string) ([]byte, error) {
 	if name == src.base && src.data != nil {
 		return src.data, nil
 	}
+	if data, ok := src.tables[name]; ok {
+		return data, nil
+	}
 	if src.root == nil {
 		return nil, fs.ErrNotExist
 	}
@@ -242,13 +259,19 @@ func (src *source) notebook(c *cobra.Command, f reportFlags) (*notebook.Notebook
 		}
 		return notebook.Parse(src.base, src.data)
 	}
-	if len(f.standard.Codes) == 0 {
+	if len(f.standard.Codes) == 0 && len(f.codeFiles) == 0 {
 		return nil, misuse("add --code asce-7-16, or another of `shearbook codes`", "a report of a profile file needs a code")
 	}
-	if err := checkCodes(f.standard.Codes); err != nil {
+	own, err := readCodeFiles(f.codeFiles)
+	if err != nil {
+		return nil, elsewhere{err}
+	}
+	if _, err := chooseCodes(f.standard.Codes, own); err != nil {
 		return nil, err
 	}
-	var err error
+	if f.standard.CodeFiles, err = src.keep(own); err != nil {
+		return nil, err
+	}
 	if f.standard.Datum, err = depthFlag("datum", f.datum); err != nil {
 		return nil, err
 	}
@@ -258,15 +281,39 @@ func (src *source) notebook(c *cobra.Command, f reportFlags) (*notebook.Notebook
 	return notebook.NewStandard(src.base, src.data, f.standard)
 }
 
+// keep lets read return the tables of --code-file under their names without
+// their folders, and returns these.
+func (src *source) keep(own []codeFile) ([]string, error) {
+	src.tables = map[string][]byte{}
+	var names []string
+	for _, f := range own {
+		if _, taken := src.tables[f.base]; taken || f.base == src.base {
+			return nil, misuse("rename one of them", "two files are called %s, and the report could not tell them apart", f.base)
+		}
+		src.tables[f.base] = f.data
+		names = append(names, f.base)
+	}
+	return names, nil
+}
+
+// elsewhere is an error about files that the user named with their folders.
+type elsewhere struct{ error }
+
+func (e elsewhere) Unwrap() error { return e.error }
+
 // relocate gives faults the path of the file as the user named it.
 func (src *source) relocate(err error) error {
 	var faults profile.Faults
-	if !errors.As(err, &faults) {
+	var named elsewhere
+	if errors.As(err, &named) || !errors.As(err, &faults) {
 		return err
 	}
 	moved := make(profile.Faults, len(faults))
 	for i, f := range faults {
 		switch {
+		case f.Place.File == notebook.StandardFile: // nothing the user wrote
+			f.Place = profile.Place{File: src.name}
+			f.Hint = strings.NewReplacer("`extend: constant-velocity`", "--extend constant-velocity", " to the front matter", "").Replace(f.Hint)
 		case f.Place.File == src.base:
 			f.Place.File = src.name
 		case f.Place.File != "" && src.dir != "" && src.dir != ".":

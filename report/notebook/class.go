@@ -114,28 +114,8 @@ func stepTable(s *site, d siteclass.Decision) *report.Table {
 	return t
 }
 
-// Comparison is a step as it is printed: "942.1 ft/s > 1,200 ft/s". A value
-// that rounds onto a bound it is not equal to is printed with more decimals.
-func Comparison(st siteclass.Step) string {
-	if st.Operator == "" {
-		return ""
-	}
-	value := fixed(st.Value, 1)
-	for n := 1; value == fixed(st.Bound, n) && math.Abs(st.Value-st.Bound) > 1e-9*math.Abs(st.Bound) && n < 9; n++ {
-		value = fixed(st.Value, n+1)
-	}
-	if st.Value == math.Trunc(st.Value) {
-		value = fixed(st.Value, 0)
-	}
-	unit := ""
-	if st.Unit != "" {
-		unit = " " + st.Unit
-	}
-	if st.Operator == siteclass.Dash.String() {
-		return value + unit + ", bound " + shortest(st.Bound, 3) + unit
-	}
-	return value + unit + " " + st.Operator + " " + shortest(st.Bound, 3) + unit
-}
+// Comparison is a step as it is printed: "942.1 ft/s > 1,200 ft/s".
+func Comparison(st siteclass.Step) string { return st.Comparison() }
 
 func yesNo(b bool) string {
 	if b {
@@ -225,7 +205,7 @@ func averageNotes(d siteclass.Decision) []profile.Note {
 	var notes []profile.Note
 	for _, n := range d.Notes {
 		switch n.ID {
-		case "extended", "below-depth-reached", "half-space", "reversal", "correlated", "datum-assumed":
+		case "extended", "below-depth-reached", "half-space", "reversal", "correlated", "datum-assumed", "datum-foundation", "datum-other":
 			notes = append(notes, n)
 		}
 	}

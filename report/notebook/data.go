@@ -81,6 +81,9 @@ func (ev *evaluation) digests(sites []*site) *report.Table {
 		t.Rows = append(t.Rows, r)
 	}
 	add(ev.nb.File, int64(len(ev.nb.Source)), digest(ev.nb.Source))
+	for _, t := range ev.own {
+		add(t.file, int64(len(t.data)), digest(t.data))
+	}
 	seen := map[string]bool{}
 	for _, s := range sites {
 		if r := s.profile.Reading; r != nil && !seen[r.File] {

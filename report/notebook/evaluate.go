@@ -12,6 +12,7 @@ import (
 	"shearbook/profile"
 	"shearbook/profile/open"
 	"shearbook/report"
+	"shearbook/vs30/siteclass"
 )
 
 // Options says what an evaluation may use of the world.
@@ -76,7 +77,9 @@ type evaluation struct {
 	system System
 	doc    *report.Document
 
-	sites   []*site // in the order of the front matter
+	own     []ownTable        // the notebook's own tables, in the order of the front matter
+	chosen  []*siteclass.Code // the codes of the front matter, in its order
+	sites   []*site           // in the order of the front matter
 	results []report.Result
 	named   map[string]Quantity // results that calc and average named
 

@@ -33,13 +33,12 @@ type Header struct {
 	Units  System // units: SI or US
 	Letter bool   // paper: A4 or Letter
 
-	Codes    []string         // code: one id or a list; the first is the code of the report
+	Codes    []CodeEntry      // code: one id, one file of a table, or a list; the first is the code of the report
 	Datum    profile.Optional // datum: m below ground level from which to average
 	Extend   string           // extend: "constant-velocity", or "" to refuse a profile that is too short
 	Profiles []ProfileEntry   // profiles
 	Ground   siteclass.Ground // ground
 
-	codePlace    profile.Place
 	profilePlace profile.Place
 }
 
@@ -66,9 +65,9 @@ func parseHeader(f *faultList, front string) Header {
 		Client: m.text("client"), PreparedBy: m.text("prepared by"), CheckedBy: m.text("checked by"),
 		Engineer: m.text("engineer"), Date: m.text("date"), Revision: m.text("revision"),
 		Location: m.text("location"),
-		Codes:    m.texts("code"), codePlace: m.at(m.get("code")),
-		Datum:  m.value("datum", profile.Length, "2.5 m"),
-		Extend: m.word("extend", report.Extensions),
+		Codes:    m.codeEntries("code"),
+		Datum:    m.value("datum", profile.Length, "2.5 m"),
+		Extend:   m.word("extend", report.Extensions()),
 	}
 	h.site(&m)
 	h.Letter = m.word("paper", []string{"A4", "Letter"}) == "Letter"

@@ -5,7 +5,6 @@ import (
 	"strings"
 
 	"shearbook/report"
-	"shearbook/vs30/siteclass"
 )
 
 var limitsWorking = Working{
@@ -64,10 +63,10 @@ func (ev *evaluation) siteNotes(s *site) []string {
 }
 
 // decidedCodes are the codes under which a site was classified, in the order
-// of siteclass.All.
+// of allCodes.
 func (ev *evaluation) decidedCodes(s *site) []string {
 	var ids []string
-	for _, code := range siteclass.All() {
+	for _, code := range ev.allCodes() {
 		if _, ok := s.decisions[code.ID]; ok {
 			ids = append(ids, code.ID)
 		}

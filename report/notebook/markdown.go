@@ -76,6 +76,7 @@ type converter struct {
 // convert returns the blocks of a notebook's body.
 func (ev *evaluation) convert(body []byte) []report.Block {
 	root := parseMarkdown(body)
+	ev.choices(root, body)
 	c := &converter{evaluation: ev, source: body, footnotes: map[int]*extast.Footnote{}, numbers: map[int]int{}}
 	for n := root.FirstChild(); n != nil; n = n.NextSibling() {
 		if list, ok := n.(*extast.FootnoteList); ok {

@@ -17,32 +17,15 @@ type site struct {
 	entry   ProfileEntry
 	profile *profile.Profile
 	datum   float64 // m below ground level from which averages without a code start
+	extend  string  // one of report.Extensions; "" refuses a profile that is too short
 
 	decisions map[string]siteclass.Decision // by code
 	refused   map[string]bool               // codes whose fault is told already
 }
 
 func (ev *evaluation) newSite(e ProfileEntry, p *profile.Profile) *site {
-	return &site{entry: e, profile: p, datum: ev.nb.Header.Datum.Value,
+	return &site{entry: e, profile: p, datum: ev.nb.Header.Datum.Value, extend: ev.nb.Header.Extend,
 		decisions: map[string]siteclass.Decision{}, refused: map[string]bool{}}
-}
-
-// findCodes checks the codes of the front matter.
-func (ev *evaluation) findCodes() {
-	for _, id := range ev.nb.Header.Codes {
-		if _, err := siteclass.Find(id); err != nil {
-			ev.add(ev.nb.Header.codePlace, "`shearbook codes` lists them", "%v", err)
-		}
-	}
-}
-
-// code returns the first code of the notebook, nil if it names none.
-func (ev *evaluation) code() *siteclass.Code {
-	if len(ev.nb.Header.Codes) == 0 {
-		return nil
-	}
-	code, _ := siteclass.Find(ev.nb.Header.Codes[0]) // findCodes has seen it
-	return code
 }
 
 // layersTo returns the layers of a site down to a thickness below a datum:
@@ -56,10 +39,14 @@ func (ev *evaluation) layersTo(s *site, from, thickness float64) (layers []profi
 		}
 		return layers, notes
 	}
-	if ev.nb.Header.Extend == "" {
+	if s.extend == "" {
 		return layers, nil
 	}
-	return extend.ConstantVelocity(layers, from+thickness), []profile.Note{extend.Note(layers, from, thickness)}
+	extended, notes, err := report.Extended(s.profile, s.extend, from, thickness)
+	if err != nil {
+		return layers, nil
+	}
+	return extended, notes
 }
 
 // average returns the time-averaged velocity over a thickness below a datum
@@ -85,6 +72,9 @@ func (ev *evaluation) belowReach(s *site, depth float64) profile.Note {
 // shortText says that a profile is too short, and by how much.
 func (ev *evaluation) shortText(s *site, err error) string {
 	var short *vs30.ShortError
+	if refusal := ev.refusal(s, err); refusal != "" {
+		return refusal
+	}
 	if errors.As(err, &short) {
 		return fmt.Sprintf("profile %q reaches %s below ground level, %s are needed", s.profile.Name,
 			metres(short.Reached).Print(ev.system), metres(short.Needed).Print(ev.system))
@@ -92,7 +82,22 @@ func (ev *evaluation) shortText(s *site, err error) string {
 	return err.Error()
 }
 
-const shortHint = "add `extend: constant-velocity` to the front matter if the lowest velocity may be taken to continue, or survey deeper"
+// refusal says why the relation that was to extend a profile does not hold;
+// "" where that is not what is wrong.
+func (ev *evaluation) refusal(s *site, err error) string {
+	var short *vs30.ShortError
+	if errors.As(err, &short) && s.extend != "" {
+		_, _, err = report.Extended(s.profile, s.extend, s.datum, short.Needed-s.datum)
+	}
+	var refused *extend.Refusal
+	if !errors.As(err, &refused) {
+		return ""
+	}
+	return fmt.Sprintf("profile %q cannot be extended by %s: %s", s.profile.Name, refused.Relation, refused.Text)
+}
+
+// shortHint is what to do about a profile that is too short.
+const shortHint = "add `extend: constant-velocity`, or another relation of the extend working, to the front matter if the ground below may be estimated so; or survey deeper"
 
 // decide classifies a site under a code, once. It adds a fault where there
 // is no answer.
@@ -110,18 +115,18 @@ func (ev *evaluation) decide(s *site, code *siteclass.Code, at profile.Place) (s
 		return d, false
 	}
 	s.decisions[code.ID] = d
-	ev.results = append(ev.results, report.NewResult(s.profile, d, report.Average30(s.profile, d.Datum, ev.facts())))
+	ev.results = append(ev.results, report.NewResult(s.profile, d, report.Average30(s.profile, d.Datum, ev.facts(s))))
 	return d, true
 }
 
 func (ev *evaluation) classify(s *site, code *siteclass.Code) (siteclass.Decision, error) {
-	return report.Classify(s.profile, code, ev.facts())
+	return report.Classify(s.profile, code, ev.facts(s))
 }
 
-// facts is what the front matter states of the site.
-func (ev *evaluation) facts() report.Facts {
+// facts is what the notebook states of a site.
+func (ev *evaluation) facts(s *site) report.Facts {
 	h := ev.nb.Header
-	return report.Facts{Datum: h.Datum, Foundation: h.Foundation, Ground: h.Ground, Extend: h.Extend}
+	return report.Facts{Datum: h.Datum, Foundation: h.Foundation, Ground: h.Ground, Extend: s.extend}
 }
 
 // Results is what an expression can say of a profile: {{ L1.vs30 }}.

@@ -2,6 +2,7 @@ package notebook
 
 import (
 	"errors"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -13,6 +14,7 @@ import (
 // Standard is what the standard template's front matter is filled with.
 type Standard struct {
 	Codes             []string
+	CodeFiles         []string         // files of tables of their own, as ReadFile knows them
 	Units             string           // that the file does not state
 	Datum, Foundation profile.Optional // m below ground level
 	Project           string
@@ -58,7 +60,11 @@ func (s Standard) frontMatter(file string, profiles []profile.Profile) string {
 			b.WriteString(f.key + ": " + quote(f.value) + "\n")
 		}
 	}
-	b.WriteString("code: [" + strings.Join(s.Codes, ", ") + "]\n")
+	codes := slices.Clone(s.Codes)
+	for _, file := range s.CodeFiles {
+		codes = append(codes, "{file: "+quote(file)+"}")
+	}
+	b.WriteString("code: [" + strings.Join(codes, ", ") + "]\n")
 	if s.Datum.Known {
 		b.WriteString("datum: " + metreText(s.Datum.Value) + "\n")
 	}

@@ -8,7 +8,6 @@ import (
 
 	"shearbook/profile"
 	"shearbook/report"
-	"shearbook/vs30/siteclass"
 )
 
 // Working is one kind of fenced block that is evaluated.
@@ -36,7 +35,10 @@ var workings = map[string]Working{
 	"survey":     surveyWorking,
 	"layers":     layersWorking,
 	"figure":     figureWorking,
+	"extend":     extendWorking,
 	"average":    averageWorking,
+	"spread":     spreadWorking,
+	"site":       siteWorking,
 	"statistics": statisticsWorking,
 	"class":      classWorking,
 	"conditions": conditionsWorking,
@@ -100,28 +102,6 @@ func (ev *evaluation) siteNames() []string {
 		names = append(names, s.profile.Name)
 	}
 	return names
-}
-
-// codes returns the codes that a working is about: those it names under key,
-// or else those of the front matter.
-func (ev *evaluation) codes(m *mapping, key string) []*siteclass.Code {
-	ids, place := m.texts(key), m.at(m.get(key))
-	if ids == nil {
-		ids, place = ev.nb.Header.Codes, m.at(nil)
-	}
-	if len(ids) == 0 {
-		m.add(place, "add `code: asce-7-16`, or another of `shearbook codes`, to the front matter", "%s needs a code", m.what)
-	}
-	var codes []*siteclass.Code
-	for _, id := range ids {
-		code, err := siteclass.Find(id)
-		if err != nil {
-			m.add(place, "`shearbook codes` lists them", "%v", err)
-			continue
-		}
-		codes = append(codes, code)
-	}
-	return codes
 }
 
 // each evaluates f for each site, under a heading of its own where there are

@@ -60,3 +60,20 @@ func Note(layers []profile.Layer, from, thickness float64) profile.Note {
 			"the average is too high where the ground is slower there",
 		last.Bottom, last.VsAt(last.Bottom), added, 100*added/thickness)}
 }
+
+// constantVelocity returns ConstantVelocity as a relation. It is the only one
+// that holds from any datum, over any depth and for any profile; where the
+// velocity falls at the bottom of the profile the estimate carries a doubt.
+func constantVelocity() *Relation {
+	return &Relation{
+		ID:   "constant-velocity",
+		Name: "constant velocity",
+		Source: "Boore (2004), Estimating Vs(30) (or NEHRP site classes) from shallow velocity models (depths < 30 m), " +
+			"BSSA 94(2):591–597, doi:10.1785/0120030105",
+		Cite:     "Boore 2004, BSSA 94(2):591–597, doi:10.1785/0120030105",
+		Region:   "any",
+		Limits:   "none",
+		Standing: OneSource,
+		estimate: func(_ *Relation, g *ground) (result, *Refusal) { return lastVelocity(g), nil },
+	}
+}

@@ -69,12 +69,12 @@ func (r *ruling) soilOver(c *Condition, class string) cover {
 
 // depthBelowDatum returns the depth in m below ground level down to which a
 // code's full averaging depth reaches.
-func (r *ruling) depthBelowDatum() float64 { return r.site.Datum.Value + r.code.Depth }
+func (r *ruling) depthBelowDatum() float64 { return r.from + r.code.Depth }
 
 // start returns the depth in m below ground level from which a bar counts
-// the soil: the foundation if it is known, or else the stated datum of a code
-// that measures from the foundation, or else ground level; the datum for a
-// bar that does not ask for the foundation.
+// the soil: the foundation if it is known, or else the datum of a code that
+// measures from the foundation, or else ground level; the datum for a bar
+// that does not ask for the foundation.
 func (r *ruling) start(c *Condition) float64 {
 	switch {
 	case c.FromFoundation && r.site.FoundationDepth.Known:
@@ -82,7 +82,7 @@ func (r *ruling) start(c *Condition) float64 {
 	case c.FromFoundation && r.code.Datum != DatumFoundation:
 		return 0
 	}
-	return r.site.Datum.Value
+	return r.from
 }
 
 // startOf names what start returns.

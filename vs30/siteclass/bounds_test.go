@@ -264,7 +264,7 @@ func TestNumbers(t *testing.T) {
 func TestTooShort(t *testing.T) {
 	c, _ := Find("asce-7-16")
 	_, err := c.Decide(siteOf(column(12, 200, 18, 400)...))
-	want := "asce-7-16 averages over 100 ft: the profile reaches 30 m (98.4252 ft) below ground level, 30.48 m (100 ft) are needed"
+	want := "asce-7-16 averages over 100 ft: the profile reaches 30 m (98.43 ft) below ground level, 30.48 m (100 ft) are needed"
 	if err == nil || err.Error() != want {
 		t.Errorf("30 m of profile: %v", err)
 	}

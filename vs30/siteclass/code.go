@@ -78,7 +78,7 @@ type Code struct {
 	Table      string  // "Table 20.3-1"
 	Source     string  // where the table was carried over from
 	Parameter  string  // "v̄s", as printed
-	Depth      float64 // m over which the velocity is averaged; the largest if the code varies it
+	Depth      float64 // m over which the velocity is averaged; the largest if the code varies it; 0 if it sets none
 	DepthText  string  // as the code words it: "100 ft", "30 m", "H, at most 30 m"
 	Datum      Datum
 	DatumNote  string       // what the code says of the datum beyond Datum; "" if nothing
@@ -93,9 +93,29 @@ type Code struct {
 	Short      string       // what the code says of a profile that ends above the depth, in our words
 	Correlated string       // what the code says of velocities that were not measured, in our words
 	Twin       Twin         // the same table printed in another unit
+	Rules      []Rule       // of a table that is no single column of velocities, in the order in which they are looked at
+	Terms      []Term       // figures that the code's own rule rests on
+	Own        *Own         // set where the table is a jurisdiction's own; nil for a published code
 
-	// decide replaces the ordinary rule where the code's own is not bands.
+	Routes    []Route   // from the data to a class, in the printed order; nil where there is only the velocity
+	Needs     int       // routes that the code asks for at least; 0 for one
+	Averaging Averaging // of N and su
+
+	Default      string // what the code takes where data are lacking, in our words; "" if it says nothing
+	DefaultClass string // the class it names for that; "" if it names none, or more than one
+	Several      string // what the code says of several profiles of one site, in our words; "" if nothing
+	WorstOf      bool   // the worst of several profiles of one site governs; see Governing
+
+	Adopts           string   // ID of the code whose table this one takes for its own; "" if it has one
+	Adoption         string   // how it takes it, in our words
+	AdoptionStanding Standing // of that
+	Superseded       string   // by what and when the code is replaced, in our words; "" if it is not known to be
+
+	// decide replaces the ordinary rule of the velocity route where the code's
+	// own is not bands.
 	decide func(*Code, Site) (Decision, error)
+
+	ready *prepared // what prepare found; nil if it was not called
 }
 
 // Twin is the print of the same velocity bounds in another unit. The two

@@ -52,7 +52,7 @@ type Condition struct {
 type Fact uint8
 
 // The facts. The first three are answered yes or no; the next four are
-// deposits; the last is taken from the profile.
+// deposits; stiff ground is taken from the profile.
 const (
 	Liquefiable Fact = iota
 	Sensitive
@@ -62,13 +62,25 @@ const (
 	SoftClay
 	ThickClay
 	StiffGround
+	Described // ground that the print describes in words, which no number of a site settles; never assessed here
 )
 
 var factWords = [...]string{"liquefiable soil", "sensitive clay", "collapsible soil", "peat",
-	"high-plasticity clay", "soft clay", "soft to medium clay", "stiff ground"}
+	"high-plasticity clay", "soft clay", "soft to medium clay", "stiff ground", "ground described in words"}
 
 // String returns the name of the fact, as a notebook's ground: has it.
 func (f Fact) String() string { return factWords[f] }
+
+// state returns what becomes of a condition that is so answered.
+func (a Answer) state() State {
+	switch a {
+	case Yes:
+		return Met
+	case No:
+		return NotMet
+	}
+	return NotAssessed
+}
 
 // answer returns what the ground says of a fact that is yes or no.
 func (g *Ground) answer(f Fact) (a Answer, ok bool) {
@@ -135,7 +147,7 @@ type ConditionResult struct {
 // thickness is known: the deposit was named after the code's own definition.
 func (c *Condition) test(g *Ground) Outcome {
 	if a, ok := g.answer(c.Fact); ok {
-		return Outcome{State: map[Answer]State{NotKnown: NotAssessed, No: NotMet, Yes: Met}[a]}
+		return Outcome{State: a.state()}
 	}
 	o := Outcome{State: Met}
 	d := g.deposit(c.Fact)

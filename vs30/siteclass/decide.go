@@ -12,21 +12,42 @@ import (
 // Decide puts a site into a class of the code.
 //
 // The order is the code's: ground that needs a special study, soft clay, a
-// class given by the depth of the stiff ground, the average velocity, and at
-// last the bar on rock classes under soil. The average is always there, even
-// where the ground alone settles the class.
+// class given by the depth of the stiff ground, the averages, and at last the
+// bar on rock classes under soil. The averages are always there, even where
+// the ground alone settles the class.
+//
+// Where the data allow several of the code's routes, the code's priority
+// decides; see Route. Site.Route chooses one whatever the priority.
 //
 // The error wraps a *vs30.ShortError where the layers end above the code's
-// depth; other errors say what about the site is not a number. The profile
-// must be one that profile.Validate accepts.
+// depth; other errors say what about the site is not a number, or why the
+// data allow no route. The profile must be one that profile.Validate accepts.
 func (c *Code) Decide(s Site) (Decision, error) {
 	if err := s.check(); err != nil {
 		return Decision{}, fmt.Errorf("%s: %w", c.ID, err)
 	}
-	if c.decide != nil {
+	if s.Route == "" && (len(c.Routes) == 0 || !s.tested()) && c.routes()[0].has(AverageVs) {
+		return c.byVelocity(s)
+	}
+	return c.byRoutes(s)
+}
+
+// byVelocity decides by the velocity, under the code's own rule where it has
+// one.
+func (c *Code) byVelocity(s Site) (Decision, error) {
+	switch {
+	case !s.timed():
+		return Decision{}, c.noVelocity()
+	case c.decide != nil:
 		return c.decide(c, s)
 	}
 	return decideByBands(c, s)
+}
+
+// noVelocity is the error of a profile without velocities under a code, or on
+// a route, that asks for them.
+func (c *Code) noVelocity() error {
+	return fmt.Errorf("%s: the profile states no velocity, and %s asks for one", c.ID, c.Table)
 }
 
 // decideByBands is the ordinary rule.
@@ -45,17 +66,24 @@ type ruling struct {
 	code   *Code
 	site   *Site
 	layers []profile.Layer
+	given  profile.Given // what at least one of the layers states
 
-	datum     float64 // m below ground level
+	from      float64 // m below ground level: the datum of the site
+	datum     float64 // m below ground level: where the present average starts
 	thickness float64 // m averaged
-	velocity  float64 // average, in the code's unit
+	velocity  float64 // average, in the code's unit; 0 on a route without it
 	over      string  // what velocity is: "v̄s over 100 ft"
+	gauges    []gauge // the averages of a route without velocity
 
 	// after turns the class that the velocity column gives into the one that
 	// comes of it: once the rock classes are barred, the one below.
 	after func(class string) string
-	parts []part // of the code that were used
-	d     Decision
+	// byOther gives the class of an average, in the code's unit, where the
+	// velocity column does not; nil where it does.
+	byOther    func(v float64) string
+	unassessed []string // beside the conditions
+	parts      []part   // of the code that were used
+	d          Decision
 }
 
 // part is a piece of the code that a decision used.
@@ -66,36 +94,22 @@ type part struct {
 
 // begin takes the datum and what the caller noted of the layers.
 func begin(c *Code, s Site) *ruling {
-	r := &ruling{code: c, site: &s, layers: s.layers(),
-		d: Decision{Code: c, Route: "velocity", Notes: slices.Clone(s.Notes)}}
-	r.after = func(class string) string { return class }
-	r.takeDatum()
+	r := &ruling{code: c, site: &s, layers: s.layers(), after: itself,
+		d: Decision{Code: c, Route: velocityRoute.Name, Notes: slices.Clone(s.Notes), Steps: make([]Step, 0, 2*len(c.Bands))}}
+	for i := range r.layers {
+		r.given |= r.layers[i].Given
+	}
+	from, note := c.DatumOf(s)
+	r.from, r.datum, r.d.Datum = from, from, from
+	if note.ID != "" {
+		r.d.Notes = append(r.d.Notes, note)
+	}
 	return r
 }
 
-// takeDatum takes the depth from which to average: as stated, or else ground
-// level, noted where the code does not say so itself.
-func (r *ruling) takeDatum() {
-	s, c := r.site, r.code
-	r.datum = s.Datum.Value
-	switch {
-	case s.Datum.Known && c.Datum == DatumGround && s.Datum.Value != 0:
-		r.note("datum-other", "the average starts %s below ground level, as stated; the code measures from the ground surface",
-			quantity(s.Datum.Value, c.Length))
-	case s.Datum.Known || c.Datum == DatumGround:
-	case c.Datum == DatumUnstated:
-		r.note("datum-assumed", "the code does not say where its depth is measured from; the average starts at ground level")
-	case s.FoundationDepth.Known && s.FoundationDepth.Value != 0:
-		r.note("datum-assumed", "the code measures from the underside of the foundation, stated %s below ground level; "+
-			"no datum is stated and the average starts at ground level", quantity(s.FoundationDepth.Value, c.Length))
-	default:
-		r.note("datum-assumed", "the code measures from the underside of the foundation; "+
-			"its depth is not stated and the average starts at ground level")
-	}
-	r.d.Datum = r.datum
-}
+func itself(class string) string { return class }
 
-// averageOver averages over thickness m below the datum.
+// averageOver averages the velocity over thickness m below the datum.
 func (r *ruling) averageOver(thickness float64) error {
 	v, err := vs30.Average(r.layers, r.datum, thickness)
 	if short, ok := err.(*vs30.ShortError); ok {
@@ -116,6 +130,10 @@ func (r *ruling) averageOver(thickness float64) error {
 func (r *ruling) take(v, thickness float64, depth string) {
 	r.d.Velocity, r.d.Thickness, r.d.Datum = v, thickness, r.datum
 	r.velocity, r.thickness = v/r.code.Unit.Factor, thickness
+	if r.code.ready != nil && depth == r.code.DepthText {
+		r.over = r.code.ready.over
+		return
+	}
 	r.over = r.code.Parameter + " over " + depth
 }
 
@@ -124,7 +142,12 @@ func (r *ruling) bottom() float64 { return r.datum + r.thickness }
 
 // note adds a note to the decision.
 func (r *ruling) note(id, format string, args ...any) {
-	r.d.Notes = append(r.d.Notes, profile.Note{ID: id, Text: fmt.Sprintf(format, args...)})
+	r.say(id, fmt.Sprintf(format, args...))
+}
+
+// say adds a note to the decision in so many words.
+func (r *ruling) say(id, text string) {
+	r.d.Notes = append(r.d.Notes, profile.Note{ID: id, Text: text})
 }
 
 // noted reports whether the decision has a note of that ID.
@@ -137,23 +160,57 @@ func (r *ruling) use(s Standing, format string, args ...any) {
 	r.parts = append(r.parts, part{fmt.Sprintf(format, args...), s})
 }
 
+// rest records that the decision rests on a part of the code named in so many
+// words.
+func (r *ruling) rest(s Standing, name string) {
+	r.parts = append(r.parts, part{name, s})
+}
+
 // settled reports whether the class is found.
 func (r *ruling) settled() bool { return r.d.Class != "" }
 
-// speed writes a velocity of the code's unit.
-func (r *ruling) speed(v float64) string { return withUnit(v, r.code.Unit) }
+// speed writes a velocity of the code's unit, with digits enough to tell it
+// from every bound that it is not.
+func (r *ruling) speed(v float64) string {
+	return r.code.write(AverageVs, v) + " " + r.code.Unit.Name
+}
 
-// length writes a length in m in the code's unit.
-func (r *ruling) length(m float64) string { return quantity(m, r.code.Length) }
+// write writes a value of a column with four significant digits, or as many
+// more as it takes to tell it from every bound that it is not.
+func (c *Code) write(m Measure, v float64) string {
+	text := short(v)
+	for _, b := range c.boundsIn(m) {
+		if other := numberBeside(v, b); !equal(v, b) && len(other) > len(text) {
+			text = other
+		}
+	}
+	return text
+}
 
-// classAt returns the class that an average, in the code's unit, would give
-// this site.
+// length writes a length in m, with the code's unit beside it where that is
+// another.
+func (r *ruling) length(m float64) string { return inUnit(m, r.code.Length) }
+
+// classAt returns the class that an average velocity, in the code's unit,
+// would give this site.
 func (r *ruling) classAt(v float64) string {
+	if r.byOther != nil {
+		return r.byOther(v)
+	}
 	i := r.code.Lookup(v)
 	if i < 0 {
 		return r.code.Outside
 	}
 	return r.after(r.code.Bands[i].Class)
+}
+
+// byAverages returns the class that the averages alone give, and those averages in
+// words.
+func (r *ruling) byAverages() (class, averages string) {
+	if len(r.gauges) == 0 {
+		return r.classAt(r.velocity), r.speed(r.velocity)
+	}
+	return r.softestGauge(-1, 0), r.gaugeText()
 }
 
 // shortError is a profile that ends above a code's depth, in the code's

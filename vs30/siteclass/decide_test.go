@@ -123,7 +123,7 @@ func TestBoundaryNotes(t *testing.T) {
 // 361.98 m/s = 1,187.6 ft/s, C by the metric print and D by the print in feet.
 func TestUnitPrint(t *testing.T) {
 	d := decide(t, "asce-7-16", siteOf(column(6, 220, math.Inf(1), 430)...))
-	want := "361.983 m/s is 1,187.61 ft/s: class D by this table's bounds in ft/s, class C by the print in m/s (1997 NEHRP provisions, FEMA 302); the code's own unit decides"
+	want := "362 m/s is 1,188 ft/s: class D by this table's bounds in ft/s, class C by the print in m/s (1997 NEHRP provisions, FEMA 302); the code's own unit decides"
 	if got := noteOf(d, "unit-print"); d.Class != "D" || got != want {
 		t.Errorf("class %s, %q", d.Class, got)
 	}
@@ -235,9 +235,19 @@ func TestDatum(t *testing.T) {
 			t.Errorf("%s from 0 m: notes %v", c.ID, zero.Notes)
 		}
 	}
-	d := decide(t, "tbdy-2018", at(unknown, profile.Known(2)))
-	if got := noteOf(d, "datum-assumed"); d.Datum != 0 || !strings.Contains(got, "stated 2 m below ground level") {
-		t.Errorf("foundation at 2 m and no datum: starts at %v, %q", d.Datum, got)
+	for _, c := range All() {
+		d := decide(t, c.ID, at(unknown, profile.Known(2)))
+		if c.Datum == DatumFoundation {
+			if got := noteOf(d, "datum-foundation"); d.Datum != 2 || !strings.HasSuffix(got, "the stated depth of the foundation, 2 m") {
+				t.Errorf("%s, foundation at 2 m and no datum: starts at %v, %q", c.ID, d.Datum, got)
+			}
+		} else if d.Datum != 0 {
+			t.Errorf("%s does not measure from the foundation, yet starts at %v", c.ID, d.Datum)
+		}
+		both := decide(t, c.ID, at(profile.Known(1), profile.Known(2)))
+		if both.Datum != 1 || noteOf(both, "datum-foundation") != "" {
+			t.Errorf("%s, a stated datum of 1 m goes before the foundation: starts at %v, notes %v", c.ID, both.Datum, both.Notes)
+		}
 	}
 }
 
@@ -286,9 +296,9 @@ func TestBasis(t *testing.T) {
 // 1,153.85 → 1,500.00, 887.57 ft/s.
 func TestCorrelatedClasses(t *testing.T) {
 	for want, layers := range map[string][]profile.Layer{
-		"1,111.11 ft/s is class CD; 1.3·v̄s of 1,444.44 ft/s is class CD; v̄s/1.3 of 854.701 ft/s is class D": feet(10, 600, 30, 900, 60, 1500),
-		"908.106 ft/s is class D; 1.3·v̄s of 1,180.54 ft/s is class CD; v̄s/1.3 of 698.543 ft/s is class DE":  feet(20, 550, 30, 850, 50, 1300),
-		"1,153.85 ft/s is class CD; 1.3·v̄s of 1,500 ft/s is class C; v̄s/1.3 of 887.574 ft/s is class D":     feet(60, 1000, 40, 1500),
+		"1,111 ft/s is class CD; 1.3·v̄s of 1,444 ft/s is class CD; v̄s/1.3 of 854.7 ft/s is class D": feet(10, 600, 30, 900, 60, 1500),
+		"908.1 ft/s is class D; 1.3·v̄s of 1,181 ft/s is class CD; v̄s/1.3 of 698.5 ft/s is class DE": feet(20, 550, 30, 850, 50, 1300),
+		"1,154 ft/s is class CD; 1.3·v̄s of 1,500 ft/s is class C; v̄s/1.3 of 887.6 ft/s is class D":  feet(60, 1000, 40, 1500),
 	} {
 		site := siteOf(layers...)
 		site.Profile.Survey.Basis = profile.Correlated
@@ -330,10 +340,10 @@ func TestExtension(t *testing.T) {
 	}
 	stated := extend(55)
 	stated.Profile.Survey.DepthReached = 45 * profile.Foot
-	if got := noteOf(decide(t, "asce-7-22", stated), "extension-rule"); !strings.Contains(got, "reach 45 ft") || !strings.Contains(got, "default classes") {
+	if got := noteOf(decide(t, "asce-7-22", stated), "extension-rule"); !strings.Contains(got, "reach 13.72 m (45 ft)") || !strings.Contains(got, "default classes") {
 		t.Errorf("a survey that reached 45 ft: %q", got)
 	}
-	if got := noteOf(decide(t, "asce-7-16", extend(55)), "extension-rule"); !strings.Contains(got, "ends 55 ft below ground level") {
+	if got := noteOf(decide(t, "asce-7-16", extend(55)), "extension-rule"); !strings.Contains(got, "ends 16.76 m (55 ft) below ground level") {
 		t.Errorf("asce-7-16: %q", got)
 	}
 	s := siteOf(column(10, 200, 21, 400)...)
@@ -354,7 +364,7 @@ func TestNotesOnLayers(t *testing.T) {
 	if got := noteOf(d, "reversal"); got != "the velocity falls with depth: from 300 to 200 m/s at 5 m, from 250 to 240 m/s at 20 m" {
 		t.Errorf("reversal: %q", got)
 	}
-	if got := noteOf(d, "below-depth-reached"); got != "the survey reached 25 m below ground level; the average uses the profile down to 30 m" {
+	if got := noteOf(d, "below-depth-reached"); got != "the survey reached 25 m below ground level; the average uses the profile below that" {
 		t.Errorf("below-depth-reached: %q", got)
 	}
 	for _, n := range d.Notes {
@@ -366,7 +376,7 @@ func TestNotesOnLayers(t *testing.T) {
 		t.Errorf("no half-space, yet %q", got)
 	}
 	d = decide(t, "nbcc-2015", siteOf(column(12, 300, math.Inf(1), 500)...))
-	if got := noteOf(d, "half-space"); got != "the lowest 18 m of the average, from 12 m below ground level, are the half-space, 500 m/s" {
+	if got := noteOf(d, "half-space"); got != "from 12 m below ground level on, the ground averaged is the half-space, 500 m/s" {
 		t.Errorf("half-space: %q", got)
 	}
 	d = decide(t, "nbcc-2015", siteOf(column(30, 300, math.Inf(1), 200)...))
@@ -410,7 +420,7 @@ func TestSteps(t *testing.T) {
 		t.Error(diff)
 	}
 	line := decide(t, "asce-7-16", uniform(640*profile.Foot)).Steps[0].String()
-	if line != "v̄s over 100 ft, class A: 640 > 5,000 ft/s: no (Table 20.3-1)" {
+	if line != "v̄s over 100 ft, class A: 640 ft/s > 5,000 ft/s: no (Table 20.3-1)" {
 		t.Errorf("a step prints %q", line)
 	}
 }

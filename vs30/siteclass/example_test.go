@@ -66,17 +66,17 @@ func ExampleCode_Decide_asce7_16() {
 	show("asce-7-16", siteclass.Site{Profile: p, Ground: quiet})
 	// Output:
 	// class D, v̄s 1183.9 ft/s over 30.48 m
-	//   peat, total thickness: 0 > 10 ft: no (20.3.1 item 2)
-	//   high-plasticity clay, total thickness: 0 > 25 ft: no (20.3.1 item 3)
-	//   soft to medium clay, total thickness: 0 > 120 ft: no (20.3.1 item 4)
-	//   soft clay, total thickness: 0 > 10 ft: no (20.3.2)
-	//   v̄s over 100 ft, class A: 1,183.87 > 5,000 ft/s: no (Table 20.3-1)
-	//   v̄s over 100 ft, class B, lower end: 1,183.87 – 2,500 ft/s: no (Table 20.3-1)
-	//   v̄s over 100 ft, class C, lower end: 1,183.87 – 1,200 ft/s: no (Table 20.3-1)
-	//   v̄s over 100 ft, class D, lower end: 1,183.87 – 600 ft/s: yes (Table 20.3-1)
-	//   v̄s over 100 ft, class D, upper end: 1,183.87 – 1,200 ft/s: yes (Table 20.3-1)
+	//   peat, total thickness: 0 ft > 10 ft: no (20.3.1 item 2)
+	//   high-plasticity clay, total thickness: 0 ft > 25 ft: no (20.3.1 item 3)
+	//   soft to medium clay, total thickness: 0 ft > 120 ft: no (20.3.1 item 4)
+	//   soft clay, total thickness: 0 ft > 10 ft: no (20.3.2)
+	//   v̄s over 100 ft, class A: 1,183.9 ft/s > 5,000 ft/s: no (Table 20.3-1)
+	//   v̄s over 100 ft, class B, lower end: 1,183.9 ft/s, bound 2,500 ft/s: no (Table 20.3-1)
+	//   v̄s over 100 ft, class C, lower end: 1,183.9 ft/s, bound 1,200 ft/s: no (Table 20.3-1)
+	//   v̄s over 100 ft, class D, lower end: 1,183.9 ft/s, bound 600 ft/s: yes (Table 20.3-1)
+	//   v̄s over 100 ft, class D, upper end: 1,183.9 ft/s, bound 1,200 ft/s: yes (Table 20.3-1)
 	// C beyond 1200 ft/s, +1.4 %
-	// unit-print: 360.842 m/s is 1,183.87 ft/s: class D by this table's bounds in ft/s, class C by the print in m/s (1997 NEHRP provisions, FEMA 302); the code's own unit decides
+	// unit-print: 360.8 m/s is 1,184 ft/s: class D by this table's bounds in ft/s, class C by the print in m/s (1997 NEHRP provisions, FEMA 302); the code's own unit decides
 	// checked
 }
 
@@ -86,13 +86,13 @@ func ExampleCode_Decide_asce7_22() {
 	show("asce-7-22", siteclass.Site{Profile: sandOnRock()})
 	// Output:
 	// class C, v̄s 1515.1 ft/s over 30.48 m
-	//   v̄s over 100 ft, class A: 1,515.1 > 5,000 ft/s: no (Table 20.2-1)
-	//   v̄s over 100 ft, class B: 1,515.1 > 3,000 ft/s: no (Table 20.2-1)
-	//   v̄s over 100 ft, class BC: 1,515.1 > 2,100 ft/s: no (Table 20.2-1)
-	//   v̄s over 100 ft, class C: 1,515.1 > 1,450 ft/s: yes (Table 20.2-1)
-	//   v̄s over 100 ft, class C: 1,515.1 ≤ 2,100 ft/s: yes (Table 20.2-1)
+	//   v̄s over 100 ft, class A: 1,515.1 ft/s > 5,000 ft/s: no (Table 20.2-1)
+	//   v̄s over 100 ft, class B: 1,515.1 ft/s > 3,000 ft/s: no (Table 20.2-1)
+	//   v̄s over 100 ft, class BC: 1,515.1 ft/s > 2,100 ft/s: no (Table 20.2-1)
+	//   v̄s over 100 ft, class C: 1,515.1 ft/s > 1,450 ft/s: yes (Table 20.2-1)
+	//   v̄s over 100 ft, class C: 1,515.1 ft/s ≤ 2,100 ft/s: yes (Table 20.2-1)
 	// CD beyond 1450 ft/s, -4.3 %
-	// half-space: the lowest 67.1916 ft of the average, from 32.8084 ft below ground level, are the half-space, 3,116.8 ft/s
+	// half-space: from 10 m below ground level on, the ground averaged is the half-space, 950 m/s
 	// standing: from memory: class C of Table 20.2-1
 	// from memory
 }
@@ -103,13 +103,13 @@ func ExampleCode_Decide_ec8_2004() {
 	show("ec8-2004", siteclass.Site{Profile: sandOnRock(), Datum: profile.Known(0), Ground: quiet})
 	// Output:
 	// class E, vs,30 458.0 m/s over 30.00 m
-	//   soft clay, total thickness: 0 ≥ 10 m: no (Table 3.1, 3.1.2(4)P)
-	//   velocity of the stiff ground: 950 > 800 m/s: yes (Table 3.1)
-	//   thickness above the stiff ground (about), lower end: 10 – 5 m: yes (Table 3.1)
-	//   thickness above the stiff ground (about), upper end: 10 – 20 m: yes (Table 3.1)
-	//   average velocity above the stiff ground, upper end: 225 – 360 m/s: yes (Table 3.1)
-	// half-space: the lowest 20 m of the average, from 10 m below ground level, are the half-space, 950 m/s
-	// override: class E whatever the average (Table 3.1); by the average alone, 458.036 m/s, the class would be B
+	//   soft clay, total thickness: 0 m ≥ 10 m: no (Table 3.1, 3.1.2(4)P)
+	//   velocity of the stiff ground: 950 m/s > 800 m/s: yes (Table 3.1)
+	//   thickness above the stiff ground (about), lower end: 10 m, bound 5 m: yes (Table 3.1)
+	//   thickness above the stiff ground (about), upper end: 10 m, bound 20 m: yes (Table 3.1)
+	//   average velocity above the stiff ground, upper end: 225 m/s, bound 360 m/s: yes (Table 3.1)
+	// half-space: from 10 m below ground level on, the ground averaged is the half-space, 950 m/s
+	// override: class E whatever the average (Table 3.1); by the average alone, 458 m/s, the class would be B
 	// checked
 }
 
@@ -123,18 +123,18 @@ func ExampleCode_Decide_nbcc2015() {
 	show("nbcc-2015", siteclass.Site{Profile: p, Datum: profile.Known(0), FoundationDepth: profile.Known(1.5)})
 	// Output:
 	// class D, V̄s30 310.0 m/s over 3.50 m
-	//   V̄s30 over 30 m, class A: 1,070.14 > 1,500 m/s: no (Table 4.1.8.4.-A)
-	//   V̄s30 over 30 m, class B: 1,070.14 > 760 m/s: yes (Table 4.1.8.4.-A)
-	//   V̄s30 over 30 m, class B: 1,070.14 ≤ 1,500 m/s: yes (Table 4.1.8.4.-A)
-	//   material softer than 760 m/s below the foundation, 1.5 m deep, class B: 3.5 > 3 m: yes (4.1.8.4.)
-	//   V̄s30 over the 3.5 m of softer material, class A: 310 > 1,500 m/s: no (Table 4.1.8.4.-A)
-	//   V̄s30 over the 3.5 m of softer material, class B: 310 > 760 m/s: no (Table 4.1.8.4.-A)
-	//   V̄s30 over the 3.5 m of softer material, class C: 310 > 360 m/s: no (Table 4.1.8.4.-A)
-	//   V̄s30 over the 3.5 m of softer material, class D: 310 > 180 m/s: yes (Table 4.1.8.4.-A)
-	//   V̄s30 over the 3.5 m of softer material, class D: 310 < 360 m/s: yes (Table 4.1.8.4.-A)
+	//   V̄s30 over 30 m, class A: 1,070.1 m/s > 1,500 m/s: no (Table 4.1.8.4.-A)
+	//   V̄s30 over 30 m, class B: 1,070.1 m/s > 760 m/s: yes (Table 4.1.8.4.-A)
+	//   V̄s30 over 30 m, class B: 1,070.1 m/s ≤ 1,500 m/s: yes (Table 4.1.8.4.-A)
+	//   material softer than 760 m/s below the foundation, 1.5 m deep, class B: 3.5 m > 3 m: yes (4.1.8.4.)
+	//   V̄s30 over the 3.5 m of softer material, class A: 310 m/s > 1,500 m/s: no (Table 4.1.8.4.-A)
+	//   V̄s30 over the 3.5 m of softer material, class B: 310 m/s > 760 m/s: no (Table 4.1.8.4.-A)
+	//   V̄s30 over the 3.5 m of softer material, class C: 310 m/s > 360 m/s: no (Table 4.1.8.4.-A)
+	//   V̄s30 over the 3.5 m of softer material, class D: 310 m/s > 180 m/s: yes (Table 4.1.8.4.-A)
+	//   V̄s30 over the 3.5 m of softer material, class D: 310 m/s < 360 m/s: yes (Table 4.1.8.4.-A)
 	// C beyond 360 m/s, +16.1 %
-	// half-space: the lowest 25 m of the average, from 5 m below ground level, are the half-space, 2,100 m/s
-	// rock-barred: class B, by V̄s30 over 30 m of 1,070.14 m/s, is barred: more than 3 m of softer material between the rock and the underside of the footing or mat bars classes A and B (4.1.8.4.); the class comes from the average over the 3.5 m of softer material, 310 m/s
+	// half-space: from 5 m below ground level on, the ground averaged is the half-space, 2,100 m/s
+	// rock-barred: class B, by V̄s30 over 30 m of 1,070 m/s, is barred: more than 3 m of softer material between the rock and the underside of the footing or mat bars classes A and B (4.1.8.4.); the class comes from the average over the 3.5 m of softer material, 310 m/s
 	// checked
 }
 
@@ -143,14 +143,14 @@ func ExampleCode_Decide_ntc2018() {
 	show("ntc-2018", siteclass.Site{Profile: sandOnRock(), Datum: profile.Known(0)})
 	// Output:
 	// class E, VS,eq 225.0 m/s over 10.00 m
-	//   VS of the slowest rock, class A: 950 > 800 m/s: yes (Tab. 3.2.II)
-	//   poorer material above the rock: 10 > 3 m: yes (Tab. 3.2.II)
-	//   VS,eq over H, 10 m, class A: 225 > 800 m/s: no (Tab. 3.2.II)
-	//   VS,eq over H, 10 m, class B, lower end: 225 – 360 m/s: no (Tab. 3.2.II)
-	//   VS,eq over H, 10 m, class C, lower end: 225 – 180 m/s: yes (Tab. 3.2.II)
-	//   VS,eq over H, 10 m, class C, upper end: 225 – 360 m/s: yes (Tab. 3.2.II)
-	//   velocity of the stiff ground: 950 ≥ 800 m/s: yes (3.2.2, Tab. 3.2.II)
-	//   thickness above the stiff ground: 10 ≤ 30 m: yes (3.2.2, Tab. 3.2.II)
+	//   VS of the slowest rock, class A: 950 m/s > 800 m/s: yes (Tab. 3.2.II)
+	//   poorer material above the rock: 10 m > 3 m: yes (Tab. 3.2.II)
+	//   VS,eq over H, 10 m, class A: 225 m/s > 800 m/s: no (Tab. 3.2.II)
+	//   VS,eq over H, 10 m, class B, lower end: 225 m/s, bound 360 m/s: no (Tab. 3.2.II)
+	//   VS,eq over H, 10 m, class C, lower end: 225 m/s, bound 180 m/s: yes (Tab. 3.2.II)
+	//   VS,eq over H, 10 m, class C, upper end: 225 m/s, bound 360 m/s: yes (Tab. 3.2.II)
+	//   velocity of the stiff ground: 950 m/s ≥ 800 m/s: yes (3.2.2, Tab. 3.2.II)
+	//   thickness above the stiff ground: 10 m ≤ 30 m: yes (3.2.2, Tab. 3.2.II)
 	// outside A–E beyond 100 m/s, -55.6 %
 	// standing: one source: more than 3 m of poorer material at the surface bars category A (Tab. 3.2.II); class C of Tab. 3.2.II
 	// one source
@@ -164,15 +164,15 @@ func ExampleCode_Decide_tbdy2018() {
 	show("tbdy-2018", siteclass.Site{Profile: sandOnRock(), Datum: profile.Known(2), Ground: ground})
 	// Output:
 	// class ZE, (VS)30 531.1 m/s over 30.00 m
-	//   peat, total thickness: 0 > 3 m: no (Table 16.1, ZF item 2)
-	//   high-plasticity clay, total thickness: 0 > 8 m: no (Table 16.1, ZF item 3)
-	//   soft to medium clay, total thickness: 0 > 35 m: no (Table 16.1, ZF item 4)
-	//   soft clay, total thickness: 4 > 3 m: yes (Table 16.1, ZE)
+	//   peat, total thickness: 0 m > 3 m: no (Table 16.1, ZF item 2)
+	//   high-plasticity clay, total thickness: 0 m > 8 m: no (Table 16.1, ZF item 3)
+	//   soft to medium clay, total thickness: 0 m > 35 m: no (Table 16.1, ZF item 4)
+	//   soft clay, total thickness: 4 m > 3 m: yes (Table 16.1, ZE)
 	//   soft clay, plasticity index: 35 > 20: yes (Table 16.1, ZE)
-	//   soft clay, water content: 55 > 40 %: yes (Table 16.1, ZE)
-	// half-space: the lowest 22 m of the average, from 10 m below ground level, are the half-space, 950 m/s
+	//   soft clay, water content: 55 % > 40 %: yes (Table 16.1, ZE)
+	// half-space: from 10 m below ground level on, the ground averaged is the half-space, 950 m/s
 	// deposit-assumed: soft clay: no value is stated for undrained strength < 25 kPa; the limit is taken to be met
-	// override: class ZE whatever the average (Table 16.1, ZE); by the average alone, 531.056 m/s, the class would be ZC
+	// override: class ZE whatever the average (Table 16.1, ZE); by the average alone, 531.1 m/s, the class would be ZC
 	// checked
 }
 

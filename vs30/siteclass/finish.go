@@ -10,19 +10,57 @@ import (
 
 // finish adds what can only be said at the end and returns the decision.
 func (r *ruling) finish() Decision {
+	open := 0
+	for i := range r.d.Conditions {
+		if r.d.Conditions[i].State == NotAssessed {
+			open++
+		}
+	}
+	if open > 0 {
+		r.d.Unassessed = make([]string, 0, open)
+	}
 	for i := range r.d.Conditions {
 		if c := &r.d.Conditions[i]; c.State == NotAssessed {
 			r.d.Unassessed = append(r.d.Unassessed, c.Condition.Text)
 		}
 	}
+	r.d.Unassessed = append(r.d.Unassessed, r.unassessed...)
+	if r.d.Row == "" {
+		r.d.Row = r.d.Class
+	}
+	r.averages()
+	r.adopted()
 	r.weigh()
+	r.own()
 	return r.d
 }
 
-// near adds how near the average is to another class. It is called where the
-// class hangs on the average.
+// averages lists the average of a velocity route; those of other routes are
+// listed where they are taken.
+func (r *ruling) averages() {
+	if r.velocity > 0 && len(r.d.Averages) == 0 {
+		r.d.Averages = []Average{{Of: AverageVs, Symbol: r.code.Parameter, Value: r.velocity,
+			Unit: r.code.Unit.Name, Thickness: r.thickness, Class: r.code.ClassOf(r.d.Velocity)}}
+	}
+}
+
+// adopted notes whose table it is, and by what the code is replaced.
+func (r *ruling) adopted() {
+	if c := r.code; c.Adopts != "" {
+		r.say("adopted", c.Adoption)
+		r.rest(c.AdoptionStanding, "whose table "+c.Edition+" takes")
+	}
+	if r.code.Superseded != "" {
+		r.say("superseded", r.code.Superseded)
+	}
+}
+
+// near adds how near the average velocity is to another class. It is called
+// where the class hangs on it.
 func (r *ruling) near() {
-	r.d.Margin = r.margin()
+	m := marginSearch{unit: r.code.Unit.Name, own: r.classAt(r.velocity)}
+	m.look(r.velocity, r.code.bounds(), r.classAt)
+	r.d.Margin = m.margin
 	r.rounding()
 	r.twinPrint()
 	r.indicative()
@@ -32,39 +70,45 @@ func (r *ruling) near() {
 // up.
 const beside = 1e-6
 
-// margin returns the distance to the nearest bound beyond which the class is
-// another, the softer side first; nil if there is none.
-func (r *ruling) margin() *Margin {
-	v := r.velocity
-	var nearest *Margin
-	consider := func(bound, beyond float64) {
-		class := r.classAt(beyond)
-		if class == r.d.Class {
-			return
+// marginSearch looks for the bound nearest to a value beyond which the class is
+// another, the softer side first.
+type marginSearch struct {
+	unit   string
+	own    string
+	margin *Margin // nil if there is none
+}
+
+// look goes through the bounds of a column, from stiff to soft, for a value
+// above 0.
+func (n *marginSearch) look(v float64, bounds []float64, classAt func(float64) string) {
+	for _, b := range slices.Backward(bounds) {
+		same := equal(v, b)
+		if v > b || same {
+			n.consider(v, b, classAt(b*(1-beside)))
 		}
-		percent := 100 * (bound - snap(v, bound)) / v
-		if nearest == nil || math.Abs(percent) < math.Abs(nearest.Percent) {
-			nearest = &Margin{ToClass: class, Bound: bound, Unit: r.code.Unit.Name, Percent: percent}
-		}
-	}
-	for _, b := range slices.Backward(r.code.bounds()) {
-		if v > b || equal(v, b) {
-			consider(b, b*(1-beside))
-		}
-		if v < b || equal(v, b) {
-			consider(b, b*(1+beside))
+		if v < b || same {
+			n.consider(v, b, classAt(b*(1+beside)))
 		}
 	}
-	return nearest
+}
+
+// consider takes a bound where it is nearer than any before it, and leads to
+// another class.
+func (n *marginSearch) consider(v, bound float64, class string) {
+	percent := 100 * (bound - snap(v, bound)) / v
+	if class == n.own || n.margin != nil && math.Abs(percent) >= math.Abs(n.margin.Percent) {
+		return
+	}
+	n.margin = &Margin{ToClass: class, Bound: bound, Unit: n.unit, Percent: percent}
 }
 
 // rounding notes where the average rounded to a whole unit is in another
 // class.
 func (r *ruling) rounding() {
-	whole := math.Round(r.velocity)
-	if class := r.classAt(whole); class != r.d.Class {
+	whole, own := math.Round(r.velocity), r.classAt(r.velocity)
+	if class := r.classAt(whole); class != own {
 		r.note("rounding", "rounded to %s the average would be class %s; the unrounded %s is class %s",
-			r.speed(whole), class, numberBeside(r.velocity, whole)+" "+r.code.Unit.Name, r.d.Class)
+			withUnit(whole, r.code.Unit), class, numberBeside(r.velocity, whole)+" "+r.code.Unit.Name, own)
 	}
 }
 
@@ -80,8 +124,21 @@ func (r *ruling) twinPrint() {
 		return
 	}
 	r.note("unit-print", "%s is %s: class %s by this table's bounds in %s, class %s by the print in %s (%s); the code's own unit decides",
-		quantity(r.d.Velocity, t.Unit), r.speed(r.velocity), r.code.Bands[own].Class, r.code.Unit.Name,
+		t.write(r.d.Velocity), r.speed(r.velocity), r.code.Bands[own].Class, r.code.Unit.Name,
 		r.code.Bands[twin].Class, t.Unit.Name, t.Source)
+}
+
+// write writes a velocity in m/s in the unit of the twin, with digits enough
+// to tell it from every bound that it is not.
+func (t *Twin) write(v float64) string {
+	v /= t.Unit.Factor
+	text := short(v)
+	for _, b := range t.Bounds {
+		if other := numberBeside(v, b); !equal(v, b) && len(other) > len(text) {
+			text = other
+		}
+	}
+	return text + " " + t.Unit.Name
 }
 
 // indicative notes where the average lies within bounds that the table shows
@@ -99,31 +156,38 @@ func (r *ruling) indicative() {
 // part that is not checked.
 func (r *ruling) weigh() {
 	r.d.Standing = Checked
-	weak := map[Standing][]string{}
-	for _, p := range r.parts {
-		r.d.Standing = max(r.d.Standing, p.standing)
-		if p.standing != Checked && !slices.Contains(weak[p.standing], p.name) {
-			weak[p.standing] = append(weak[p.standing], p.name)
-		}
+	for i := range r.parts {
+		r.d.Standing = max(r.d.Standing, r.parts[i].standing)
 	}
-	for s := FromMemory; s > Checked; s-- {
-		if names := weak[s]; len(names) > 0 {
-			r.note("standing", "%s: %s", s, strings.Join(names, "; "))
+	for s := r.d.Standing; s > Checked; s-- {
+		if text := r.restingOn(s); text != "" {
+			r.say("standing", s.String()+": "+text)
 		}
 	}
 }
 
-// override notes that a condition settled the class, and what the average
+// restingOn lists the parts of a standing, each once.
+func (r *ruling) restingOn(s Standing) string {
+	var names []string
+	for i := range r.parts {
+		if p := &r.parts[i]; p.standing == s && !slices.Contains(names, p.name) {
+			names = append(names, p.name)
+		}
+	}
+	return strings.Join(names, "; ")
+}
+
+// override notes that a condition settled the class, and what the averages
 // alone would have given.
 func (r *ruling) override(c *Condition) {
-	alone := r.classAt(r.velocity)
+	alone, averages := r.byAverages()
 	switch {
 	case c.Kind == Special:
-		r.note("special-study", "class %s calls for a site-specific study (%s); by the average alone, %s, the class would be %s",
-			c.Class, c.Clause, r.speed(r.velocity), alone)
+		r.say("special-study", "class "+c.Class+" calls for a site-specific study ("+c.Clause+"); by the average alone, "+
+			averages+", the class would be "+alone)
 	case alone != c.Class:
-		r.note("override", "class %s whatever the average (%s); by the average alone, %s, the class would be %s",
-			c.Class, c.Clause, r.speed(r.velocity), alone)
+		r.say("override", "class "+c.Class+" whatever the average ("+c.Clause+"); by the average alone, "+
+			averages+", the class would be "+alone)
 	}
 }
 

@@ -118,10 +118,13 @@ func snap(v, bound float64) float64 {
 // between thousands.
 func number(v float64) string { return digits(v, 6) }
 
-// numberBeside writes v with as many digits as it takes, from six to twelve,
+// short writes a value for a note, with at most four significant digits.
+func short(v float64) string { return digits(v, 4) }
+
+// numberBeside writes v with as many digits as it takes, from four to twelve,
 // to look different from other.
 func numberBeside(v, other float64) string {
-	for n := 6; n < 12; n++ {
+	for n := 4; n < 12; n++ {
 		if s := digits(v, n); s != digits(other, n) {
 			return s
 		}
@@ -139,7 +142,13 @@ func digits(v float64, n int) string {
 	if a := math.Abs(v); a >= 1 {
 		whole = int(math.Log10(a)) + 1
 	}
-	s := strconv.FormatFloat(v, 'f', max(0, n-whole), 64)
+	return decimals(v, max(0, n-whole))
+}
+
+// decimals writes a value with at most n decimals and commas between
+// thousands.
+func decimals(v float64, n int) string {
+	s := strconv.FormatFloat(v, 'f', n, 64)
 	if strings.Contains(s, ".") {
 		s = strings.TrimRight(strings.TrimRight(s, "0"), ".")
 	}
@@ -172,7 +181,20 @@ func quantity(si float64, u profile.Unit) string { return withUnit(si/u.Factor, 
 // withUnit writes a value with the name of its unit.
 func withUnit(v float64, u profile.Unit) string {
 	if u.Name == "" {
-		return number(v)
+		return short(v)
 	}
-	return number(v) + " " + u.Name
+	return short(v) + " " + u.Name
+}
+
+// metres writes a length in m. What a note says of the profile alone, it says
+// in m and m/s whatever the code, so that two codes say the same.
+func metres(m float64) string { return short(m) + " m" }
+
+// inUnit writes a length in m and, where the code's unit is another, in that
+// beside it: "30.48 m (100 ft)".
+func inUnit(m float64, u profile.Unit) string {
+	if u.Factor == 1 {
+		return metres(m)
+	}
+	return metres(m) + " (" + quantity(m, u) + ")"
 }

@@ -16,6 +16,8 @@ type Site struct {
 	FoundationDepth profile.Optional // m below ground level of the underside of the foundation
 	Extended        bool             // Layers go on below the profile
 	Ground          Ground
+	Route           string         // name of the code's route to go; "" for the code's own priority
+	Blow            Blow           // kind of the layers' blow counts; where not stated, what their heading in the file says
 	Notes           []profile.Note // about Layers, carried into the decision
 }
 
@@ -59,6 +61,31 @@ func (s *Site) layers() []profile.Layer {
 	return s.Layers
 }
 
+// timed reports whether the layers state velocities. Those of a profile
+// without velocities are 0 throughout.
+func (s *Site) timed() bool {
+	layers := s.layers()
+	for i := range layers {
+		if layers[i].Vs != 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// tested reports whether any of the layers states a blow count, a strength or
+// refusal.
+func (s *Site) tested() bool {
+	layers := s.layers()
+	for i := range layers {
+		l := &layers[i]
+		if l.Refusal || l.Given&(profile.GivenN|profile.GivenSu) != 0 {
+			return true
+		}
+	}
+	return false
+}
+
 // check returns an error where the site cannot be decided on: no layers, or a
 // depth or property that is not a number from 0 up.
 func (s *Site) check() error {
@@ -70,6 +97,9 @@ func (s *Site) check() error {
 	}
 	if err := known("foundation depth", s.FoundationDepth); err != nil {
 		return err
+	}
+	if s.Ground == (Ground{}) {
+		return nil
 	}
 	for f := Peat; f <= ThickClay; f++ {
 		for p := Thickness; p <= Strength; p++ {

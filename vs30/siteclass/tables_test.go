@@ -18,9 +18,6 @@ import (
 // published sources anew. The tests below hold one against the other, and
 // see to it that a change of any cell of the Go table is found.
 
-// builders makes each code afresh, so that a test may change it.
-var builders = []func() *Code{asce7_16, asce7_22, ec8_2004, nbcc2015, ntc2018, tbdy2018}
-
 // transcription is the second entry: the cells of its tables by heading.
 type transcription map[string][][]string
 
@@ -77,6 +74,7 @@ func transcribe(c *Code) transcription {
 			out["Limits"] = append(out["Limits"], append(row, l.Unit.Name, words(l.About, "about", false, "")))
 		}
 	}
+	transcribeRoutes(c, out)
 	if c.Twin.Unit.Name != "" || len(c.Twin.Bounds) > 0 {
 		bounds := append(c.bounds(), make([]float64, len(c.Twin.Bounds))...) // never too few
 		for i, twin := range c.Twin.Bounds {
@@ -84,6 +82,46 @@ func transcribe(c *Code) transcription {
 		}
 	}
 	return out
+}
+
+// transcribeRoutes adds the tables of the routes and averages, and the items
+// that few codes have, where there are any.
+func transcribeRoutes(c *Code, out transcription) {
+	row := func(table, name, value string) {
+		if value != "" && value != "0" {
+			out[table] = append(out[table], []string{name, value})
+		}
+	}
+	row("Items", "routes needed", plain(float64(c.Needs)))
+	row("Items", "default class", c.DefaultClass)
+	row("Items", "several profiles", words(c.WorstOf, "the worst governs", false, ""))
+	row("Items", "adopts", c.Adopts)
+	row("Items", "adoption standing", known0(c.AdoptionStanding, c.AdoptionStanding.String()))
+	for _, r := range c.Routes {
+		var measures []string
+		for _, m := range r.Measures {
+			measures = append(measures, m.String())
+		}
+		out["Routes"] = append(out["Routes"], []string{r.Name, strings.Join(measures, " "), plain(float64(r.Rank)), r.Clause, r.Standing.String()})
+	}
+	a := c.Averaging
+	for _, v := range [][2]string{{"N", a.N}, {"Nch", a.Nch}, {"su", a.Su}, {"blow count", known0(a.Blow, a.Blow.String())},
+		{"N cap", plain(a.NCap)}, {"su cap", plain(a.SuCap)},
+		{"cohesive PI", strings.Trim(strings.Join(cells(a.Cohesive), " "), " ")},
+		{"cohesionless PI", strings.Trim(strings.Join(cells(a.Cohesionless), " "), " ")},
+		{"formula", words(a.Unstated, "not printed", false, "")},
+		{"clause", a.Clause}, {"standing", known0(a.Standing, a.Standing.String())}} {
+		row("Averages", v[0], v[1])
+	}
+}
+
+// known0 returns the text, "" for the zero value.
+func known0[T comparable](v T, text string) string {
+	var zero T
+	if v == zero {
+		return ""
+	}
+	return text
 }
 
 func plain(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) }
@@ -184,7 +222,8 @@ type leaf struct {
 // that follow from others.
 var prose = map[string]bool{"Title": true, "Edition": true, "Region": true, "Table": true, "Source": true,
 	"Parameter": true, "DepthText": true, "DatumNote": true, "Notes": true, "Short": true, "Correlated": true,
-	"Name": true, "Also": true, "Text": true, "decide": true, "Dimension": true, "Factor": true}
+	"Default": true, "Several": true, "Adoption": true, "Superseded": true, "ready": true,
+	"Name": true, "Also": true, "Text": true, "decide": true, "Own": true, "Dimension": true, "Factor": true}
 
 func leaves(v reflect.Value, path string) []leaf {
 	switch v.Kind() {
@@ -193,7 +232,7 @@ func leaves(v reflect.Value, path string) []leaf {
 		for i := range v.NumField() {
 			name := v.Type().Field(i).Name
 			switch {
-			case prose[name] && !isUnitName(v, name):
+			case prose[name] && !isNamed(v, name):
 			case path == "" && (name == "ID" || name == "Clause"): // of the code itself
 			default:
 				out = append(out, leaves(v.Field(i), path+"."+name)...)
@@ -210,9 +249,10 @@ func leaves(v reflect.Value, path string) []leaf {
 	return []leaf{{path, v}}
 }
 
-// isUnitName reports whether the field is the name of a unit, which is a cell.
-func isUnitName(v reflect.Value, name string) bool {
-	return name == "Name" && v.Type() == reflect.TypeFor[profile.Unit]()
+// isNamed reports whether the field is the name of a unit or a route, which
+// is a cell.
+func isNamed(v reflect.Value, name string) bool {
+	return name == "Name" && (v.Type() == reflect.TypeFor[profile.Unit]() || v.Type() == reflect.TypeFor[Route]())
 }
 
 // change makes the cell another one of its kind.
@@ -222,12 +262,15 @@ func (l leaf) change() {
 		reflect.TypeFor[Operator](): uint64(len(operatorSigns)), reflect.TypeFor[Standing](): uint64(len(standingWords)),
 		reflect.TypeFor[Datum](): uint64(len(datumWords)), reflect.TypeFor[Kind](): uint64(len(kindWords)),
 		reflect.TypeFor[Fact](): uint64(len(factWords)), reflect.TypeFor[Property](): uint64(len(propertyWords)),
+		reflect.TypeFor[Measure](): uint64(len(measureWords)), reflect.TypeFor[Blow](): uint64(len(blowWords)),
 	}
 	switch v.Kind() {
 	case reflect.Float64:
 		v.SetFloat(v.Float() + 1)
 	case reflect.String:
 		v.SetString(v.String() + "x")
+	case reflect.Int:
+		v.SetInt(v.Int() + 1)
 	case reflect.Bool:
 		v.SetBool(!v.Bool())
 	case reflect.Uint8:

@@ -75,18 +75,18 @@ func (r *ruling) basis() {
 func (r *ruling) noteBasis(correlated, mixed bool) {
 	switch {
 	case correlated && mixed:
-		r.note("correlated", "some of the velocities are correlated from other tests, not measured; %s", r.code.Correlated)
+		r.say("correlated", "some of the velocities are correlated from other tests, not measured; "+r.code.Correlated)
 	case correlated:
-		r.note("correlated", "the velocities are correlated from other tests, not measured; %s", r.code.Correlated)
+		r.say("correlated", "the velocities are correlated from other tests, not measured; "+r.code.Correlated)
 	case mixed:
-		r.note("mixed-basis", "the velocities averaged are not all known in the same way")
+		r.say("mixed-basis", "the velocities averaged are not all known in the same way")
 	}
 }
 
 // extension notes what the code says of a profile carried on below its end.
 func (r *ruling) extension() {
 	if r.extended() && r.code.Short != "" {
-		r.note("extension-rule", "the profile ends %s below ground level; %s", r.length(r.ownEnd()), r.code.Short)
+		r.say("extension-rule", "the profile ends "+r.length(r.ownEnd())+" below ground level; "+r.code.Short)
 	}
 }
 
@@ -95,8 +95,7 @@ func (r *ruling) extension() {
 func (r *ruling) belowReach() {
 	reached := r.survey().DepthReached
 	if used := min(r.bottom(), r.ownEnd()); reached > 0 && used-reached > vs30.Touching {
-		r.note("below-depth-reached", "the survey reached %s below ground level; the average uses the profile down to %s",
-			r.length(reached), r.length(used))
+		r.say("below-depth-reached", "the survey reached "+metres(reached)+" below ground level; the average uses the profile below that")
 	}
 }
 
@@ -104,8 +103,7 @@ func (r *ruling) belowReach() {
 func (r *ruling) halfSpace() {
 	last := &r.layers[len(r.layers)-1]
 	if used := r.bottom() - max(last.Top, r.datum); last.HalfSpace() && used > vs30.Touching && !r.extended() {
-		r.note("half-space", "the lowest %s of the average, from %s below ground level, are the half-space, %s",
-			r.length(used), r.length(max(last.Top, r.datum)), quantity(last.Vs, r.code.Unit))
+		r.say("half-space", "from "+metres(last.Top)+" below ground level on, the ground averaged is the half-space, "+short(last.Vs)+" m/s")
 	}
 }
 
@@ -118,8 +116,7 @@ func (r *ruling) reversals() {
 	const most = 3
 	var falls []string
 	for _, f := range found[:min(most, len(found))] {
-		falls = append(falls, fmt.Sprintf("from %s to %s at %s", number(f.Above/r.code.Unit.Factor),
-			quantity(f.Below, r.code.Unit), r.length(f.Depth)))
+		falls = append(falls, fmt.Sprintf("from %s to %s m/s at %s", numberBeside(f.Above, f.Below), numberBeside(f.Below, f.Above), metres(f.Depth)))
 	}
 	text := "the velocity falls with depth: " + strings.Join(falls, ", ")
 	if more := len(found) - most; more > 0 {

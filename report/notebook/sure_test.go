@@ -1,0 +1,113 @@
+package notebook
+
+import (
+	"strings"
+	"testing"
+
+	"shearbook/report"
+)
+
+// markdown returns a report as Markdown.
+func markdown(t *testing.T, r *Report) string {
+	t.Helper()
+	var b strings.Builder
+	if err := report.Markdown(&b, r.Document, report.MarkdownOptions{}); err != nil {
+		t.Fatal(err)
+	}
+	return b.String()
+}
+
+// cellsOf returns the cells of the first table row that begins with a cell.
+func cellsOf(t *testing.T, r *Report, first string) []string {
+	t.Helper()
+	for b := range r.Document.All() {
+		table, ok := b.(*report.Table)
+		if !ok {
+			continue
+		}
+		for _, row := range table.Rows {
+			if report.PlainText(row.Cells[0]) == first {
+				var cells []string
+				for _, c := range row.Cells {
+					cells = append(cells, report.PlainText(c))
+				}
+				return cells
+			}
+		}
+	}
+	t.Fatalf("no row begins with %q in\n%s", first, markdown(t, r))
+	return nil
+}
+
+func TestExtendWorkingChoosesForTheWholeNotebook(t *testing.T) {
+	// short.csv is 22 m of 250 m/s. Boore (2004, BSSA 94:591, table 2, 22 m):
+	// log Vs30 = 0.026900 + 1.0044·2.397940 = 2.435391, so 272.515 m/s; σ = 0.024087
+	// in log10, ×2.302585 = 0.055.
+	before := "---\ncode: ec8-2004\nprofiles:\n  S: {file: short.csv}\n---\n{{ S.vs30 }}\n\n```extend\nof: S\nby: boore-2004\n```\n\n```class\n```\n"
+	r := mustEvaluate(t, before)
+	if got := prose(t, r); got != "272.5 m/s" {
+		t.Errorf("average before the working %q, want 272.5 m/s", got)
+	}
+	row := cellsOf(t, r, "Boore (2004)")
+	if row[1] != "272.5" || row[2] != "0.055" || row[3] != "C" {
+		t.Errorf("row %q", row)
+	}
+	if row := cellsOf(t, r, "constant velocity"); row[1] != "250.0" {
+		t.Errorf("constant velocity %q, want 250.0", row)
+	}
+	if r.Results[0].Basis != "extended" {
+		t.Errorf("basis %q, want extended", r.Results[0].Basis)
+	}
+	if v := r.Results[0].VelocitySI; v < 272.514 || v > 272.517 {
+		t.Errorf("the decision uses %v, want 272.515", v)
+	}
+	if !strings.Contains(markdown(t, r), "10.1785/0120030105") {
+		t.Error("the report does not name the relation's paper")
+	}
+}
+
+func TestRefusedRelationSaysWhy(t *testing.T) {
+	_, err := evaluate(t, "---\ncode: ec8-2004\nextend: asce-7-22\nprofiles:\n  S: {file: short.csv}\n---\n```class\n```\n")
+	if err == nil || !strings.Contains(err.Error(), `profile "S" cannot be extended by asce-7-22`) {
+		t.Errorf("got %v", err)
+	}
+}
+
+func TestChanceOfEachClass(t *testing.T) {
+	folder["u350.csv"] = "bottom (m),vs (m/s)\n40,350\n"
+	// Median 350 m/s and σ = 0.10 against 360: Φ(ln(360/350)/0.1) = 0.610917
+	// (gonum v0.17.0 distuv.Normal), so D 61.1 % and C 38.9 %.
+	r := mustEvaluate(t, "---\ncode: nbcc-2015\nprofiles:\n  U: {file: u350.csv}\n---\n```spread\naverage sigma: 0.10\nfigure: no\n```\n")
+	for class, want := range map[string]string{"D": "61.1", "C": "38.9"} {
+		if got := cellsOf(t, r, class)[3]; got != want {
+			t.Errorf("chance of %s is %q, want %s", class, got, want)
+		}
+	}
+	if !strings.Contains(markdown(t, r), "102.9 % of what it is") { // 360/350
+		t.Error("the factor to class C is not told")
+	}
+}
+
+func TestNoSigmaIsAssumed(t *testing.T) {
+	r := mustEvaluate(t, "---\ncode: nbcc-2015\nprofiles:\n  U: {file: k7.csv, method: MASW}\n---\n```spread\n```\n")
+	text := markdown(t, r)
+	if !strings.Contains(text, "none is assumed") || !strings.Contains(text, "average sigma: 0.15") {
+		t.Errorf("the published range is not offered:\n%s", text)
+	}
+}
+
+func TestProfilesTogether(t *testing.T) {
+	folder["three.csv"] = "profile,bottom (m),vs (m/s)\nA,40,300\nB,40,330\nC,40,270\n"
+	// By hand: (300·330·270)^(1/3) = 298.9966, sample σ of ln 0.100377,
+	// harmonic mean 3/(1/300+1/330+1/270) = 297.99.
+	r := mustEvaluate(t, "---\ncode: nbcc-2015\nprofiles:\n  A: {file: three.csv, profile: A}\n  B: {file: three.csv, profile: B}\n  C: {file: three.csv, profile: C}\n---\n```site\nfigure: no\n```\n")
+	if row := cellsOf(t, r, "Geometric mean of all"); row[2] != "299.0" || row[3] != "0.100" {
+		t.Errorf("geometric mean %q", row)
+	}
+	if row := cellsOf(t, r, "Average of the averages (for comparison)"); row[2] != "300.0" {
+		t.Errorf("average of averages %q", row)
+	}
+	if row := cellsOf(t, r, "Average of the mean slowness (for comparison)"); row[2] != "298.0" {
+		t.Errorf("average of the mean slowness %q", row)
+	}
+}
