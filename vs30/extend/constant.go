@@ -3,7 +3,8 @@
 // measured: nothing here is applied unless the user asks for it, and each
 // comes with the note that must stand beside its result.
 //
-// One file holds one relation.
+// One file holds one relation; All lists them. A relation that does not hold
+// for a profile refuses and says why.
 package extend
 
 import (

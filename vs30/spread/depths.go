@@ -103,5 +103,5 @@ func cutsOf(lines []Line, from, to, step float64) []float64 {
 		}
 	}
 	slices.Sort(cuts)
-	return slices.CompactFunc(cuts, func(a, b float64) bool { return b-a <= vs30.Touching })
+	return slices.CompactFunc(cuts, func(a, b float64) bool { return math.Abs(b-a) <= vs30.Touching })
 }

@@ -22,6 +22,7 @@ func models(t testing.TB) map[string]*Model {
 		"full":        {Layers: ap2, Thickness: 30, Sigmas: all(7, 0.2), Correlation: Correlation{Rule: Full}},
 		"Toro":        {Layers: ap2, Thickness: 30, Sigmas: all(7, 0.37), Correlation: c},
 		"boundaries":  {Layers: ap2, Thickness: 30, Sigmas: all(7, 0.1), Boundaries: all(7, 0.4)},
+		"boundary":    {Layers: pairs(15, 200, 25, 300), Thickness: 30, Sigmas: all(2, 0.1), Boundaries: all(2, 1.5)},
 		"datum":       {Layers: ap2, From: 3, Thickness: 30, Sigmas: all(7, 0.15), Correlation: c, Boundaries: all(7, 0.2)},
 		"gradient": {Layers: []profile.Layer{{Bottom: 8, Vs: 120, VsBottom: 260}, {Top: 8, Bottom: 40, Vs: 300, VsBottom: 500}},
 			Thickness: 30, Sigmas: []float64{0.1, 0.3}, Correlation: Correlation{Interlayer, class(t, "USGS C")}},
@@ -30,8 +31,9 @@ func models(t testing.TB) map[string]*Model {
 
 // The mean and the variance of the travel time are exact by formula: the
 // sample has them within four standard errors (√(m₄ − σ⁴)/(2σ√n) of σ). Its
-// median and its quantiles lie within four standard errors and 0.3 % of those
-// of the matched lognormal, which is not exact.
+// median and its quantiles lie within four standard errors and 0.5 % of those
+// of the matched lognormal, 2 % where layers have sigmas above 0.2: that one is
+// not exact.
 func TestDrawnAgainstFormula(t *testing.T) {
 	for name, m := range models(t) {
 		p, s := propagate(t, m), draw(t, m, Options{})
@@ -49,11 +51,14 @@ func TestDrawnAgainstFormula(t *testing.T) {
 		near(t, name+" deviation of time", deviation, wantDeviation,
 			4*math.Sqrt(fourth-math.Pow(deviation, 4))/(2*deviation*math.Sqrt(n)))
 
-		band := q.Band()
-		for _, c := range []struct{ p, want float64 }{{0.05, band.P5}, {0.16, band.P16}, {0.5, band.Median}, {0.84, band.P84}, {0.95, band.P95}} {
-			near(t, name+" quantile", s.Quantile(c.p), c.want, 4*s.QuantileError(c.p)+0.003*c.want)
+		band, loose := q.Band(), 0.005
+		if slices.Max(m.Sigmas) > 0.2 {
+			loose = 0.02
 		}
-		near(t, name+" sigma", s.SigmaLn, q.SigmaLn, 4*s.SigmaLn/math.Sqrt(2*n)+0.01*q.SigmaLn)
+		for _, c := range []struct{ p, want float64 }{{0.05, band.P5}, {0.16, band.P16}, {0.5, band.Median}, {0.84, band.P84}, {0.95, band.P95}} {
+			near(t, name+" quantile", s.Quantile(c.p), c.want, 4*s.QuantileError(c.p)+loose*c.want)
+		}
+		near(t, name+" sigma", s.SigmaLn, q.SigmaLn, 4*s.SigmaLn/math.Sqrt(2*n)+5*loose*q.SigmaLn)
 	}
 }
 
@@ -70,6 +75,15 @@ func TestDrawnAgainstFirstOrder(t *testing.T) {
 		near(t, name+" sigma", s.SigmaLn, p.SigmaLn, 4*p.SigmaLn/math.Sqrt(2e5)+1e-3*p.SigmaLn)
 		near(t, name+" median", s.Median, p.Velocity, 4*s.MedianError+1e-3*p.Velocity)
 	}
+}
+
+// Boundaries alone, between layers with gradients.
+func TestDrawnBoundaries(t *testing.T) {
+	layers := []profile.Layer{{Bottom: 8, Vs: 120, VsBottom: 260}, {Top: 8, Bottom: 18, Vs: 360, VsBottom: 700}, {Top: 18, Bottom: 40, Vs: 400}}
+	m := &Model{Layers: layers, Thickness: 30, Sigmas: all(3, 0), Boundaries: all(3, 0.2)}
+	p, s := propagate(t, m), draw(t, m, Options{})
+	near(t, "sigma", s.SigmaLn, p.SigmaLn, 4*p.SigmaLn/math.Sqrt(2e5)+2e-3*p.SigmaLn)
+	near(t, "median", s.Median, p.Velocity, 4*s.MedianError+1e-4*p.Velocity)
 }
 
 // The stated sampling errors are those of repeated drawing: over 200 seeds
@@ -176,7 +190,7 @@ func TestLayeringIndependent(t *testing.T) {
 	m := &Model{Layers: pairs(40, 250), Thickness: 30, Sigmas: all(1, sigma), Layering: ToroLayering()}
 	s := draw(t, m, Options{})
 	rng, sum := seeded(8), 0.0
-	const n, step = 20000, 0.05
+	const n, step = 5000, 0.05
 	for range n {
 		top, square := 0.0, 0.0
 		for z := 0.0; z < 30-step/2; z += step {

@@ -29,10 +29,10 @@ var powers = func() (t [steps]float64) {
 	return t
 }()
 
-// exp returns eˣ for |x| < 700 with a relative error below 1e-13, in a third of
-// the time of math.Exp, which would be most of the time of drawing. With x =
-// (k/64)·ln 2 + r and |r| ≤ ln 2/128, eˣ is 2^(k/64) times five terms of the
-// series of eʳ.
+// exp returns eˣ for |x| < 700 with a relative error below 1e-13 where |x| is
+// below 40, in less than half the time of math.Exp, which would be most of the
+// time of drawing. With x = (k/64)·ln 2 + r and |r| ≤ ln 2/128, eˣ is 2^(k/64)
+// times five terms of the series of eʳ.
 func exp(x float64) float64 {
 	const (
 		rounder = 3 << 51 // a sum with it has no digits behind the point

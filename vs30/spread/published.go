@@ -6,8 +6,9 @@ import (
 )
 
 // Range is the sigma of ln V that surveys of a kind are published to have.
-// It is that of an average over some 30 m and not of a layer, and it is an
-// offer to the user: nothing here takes it up.
+// It is that of an average over some 30 m and not of a layer: given to every
+// layer under the rule Full it is that of the average again. It is an offer to
+// the user, and nothing here takes it up.
 type Range struct {
 	Low, High float64 // sigma of ln V; the same where one value is given
 	Method    string  // the kind of survey, in our words

@@ -66,9 +66,9 @@ def model_answer(model):
     by_v, by_z = slopes(h, v)
     x = by_v * s
     variance = x @ r @ x + np.sum((by_z * dz) ** 2)
-    # Two million random times without boundaries that get stuck.
+    # Random times; no boundary is kept from crossing another.
     rng = np.random.default_rng(7)
-    n = 200_000
+    n = 50_000
     z = rng.multivariate_normal(np.zeros(len(h)), r, n, method="eigh")
     d = rng.normal(size=(n, len(dz))) * dz
     moved = h + np.hstack([d, np.zeros((n, 1))]) - np.hstack([np.zeros((n, 1)), d])
