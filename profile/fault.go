@@ -1,7 +1,10 @@
 package profile
 
 import (
+	"errors"
 	"fmt"
+	"io/fs"
+	"os"
 	"strings"
 )
 
@@ -64,4 +67,18 @@ func (fs Faults) Err() error {
 // Faultf is a fault at a place, its text made from format and args.
 func Faultf(at Place, hint, format string, args ...any) Fault {
 	return Fault{Place: at, Text: fmt.Sprintf(format, args...), Hint: hint}
+}
+
+// FileError returns a file error without the path, for messages that name it
+// already.
+func FileError(err error) error {
+	var path *fs.PathError
+	var link *os.LinkError
+	switch {
+	case errors.As(err, &path):
+		return path.Err
+	case errors.As(err, &link):
+		return link.Err
+	}
+	return err
 }

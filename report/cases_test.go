@@ -158,7 +158,7 @@ func signOff() *SignOff {
 }
 
 func picturesCase() *Document {
-	// The PNG is one grey pixel, written by image/png of Go 1.26.
+	// Of the PNG there is its signature alone: no printer looks inside.
 	return &Document{Blocks: []Block{
 		&Figure{"velocity-L1", []Inline{Text("Velocity against depth, "), Code("L1"), Text(".")}, "A line that falls from 180 m/s to 400 m/s [30 m].", samplePicture()},
 		&Figure{Name: "größe (1)", Alt: "", Picture: &Picture{Width: 1, Height: 1}},

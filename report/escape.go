@@ -41,9 +41,9 @@ func hidden(r rune) bool {
 }
 
 // oneLine returns s as Visible does, with newlines and tabs as spaces.
-func oneLine(s string) string {
-	return strings.NewReplacer("\n", " ", "\t", " ").Replace(Visible(s))
-}
+func oneLine(s string) string { return spaces.Replace(Visible(s)) }
+
+var spaces = strings.NewReplacer("\n", " ", "\t", " ")
 
 // words returns s as oneLine does, with one space between words and none
 // around them.

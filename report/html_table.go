@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"slices"
+	"strings"
 	"unicode/utf8"
 )
 
@@ -107,8 +108,8 @@ func splitDecimal(inlines []Inline) (before, behind []Inline, ok bool) {
 		if !isText {
 			return nil, nil, false
 		}
-		s := words(string(text))
-		if s == "" || s == "▸" {
+		s := strings.TrimLeft(oneLine(string(text)), " ")
+		if s == "" || s == markedRow {
 			continue
 		}
 		point, ok := decimalPoint(s)

@@ -162,15 +162,18 @@ func prefixed(lines []string, first, rest string) []string {
 	return out
 }
 
-// list returns the lines of a list. An empty item holds a space, written so
-// that it is seen: some readers end the list behind one that holds nothing.
+// seenSpace is a space that is not white space to Markdown.
+const seenSpace = "&#32;"
+
+// list returns the lines of a list. An empty item holds a space: some readers
+// end the list behind one that holds nothing, or show the box of a task.
 func (p *markdown) list(l *List, width int, other bool) []string {
 	var lines []string
 	for i, item := range l.Items {
 		marker := marker(l, i, other)
 		part := p.item(item, l.Tight, width-len(marker))
 		if len(part) == 0 {
-			part = []string{"&#32;"}
+			part = []string{seenSpace}
 		}
 		part = prefixed(part, marker, strings.Repeat(" ", len(marker)))
 		if l.Tight {

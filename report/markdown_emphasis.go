@@ -2,16 +2,28 @@ package report
 
 import "unicode"
 
-// keepSound returns tokens without the delimiters that CommonMark would read
+// reading is a way in which readers of Markdown find delimiters.
+type reading struct {
+	punct   func(rune) bool // what is punctuation besides that of ASCII
+	through bool            // a star sees through ~~ to what stands behind
+}
+
+// readings are those of CommonMark up to 0.30 and from 0.31, and that of
+// cmark-gfm 0.29.
+func readings() []reading {
+	symbols := func(r rune) bool { return unicode.IsPunct(r) || unicode.IsSymbol(r) }
+	return []reading{{unicode.IsPunct, false}, {symbols, false}, {unicode.IsPunct, true}}
+}
+
+// keepSound returns tokens without the delimiters that some reading takes
 // otherwise than they are meant. It reads them as CommonMark does
 // (CommonMark 0.31.2, "Emphasis and strong emphasis", and the appendix "A
-// parsing strategy"), with both of the sets of punctuation that its editions
-// have known, and takes out what fails until the rest is right.
+// parsing strategy"), and takes out what fails until the rest is right.
 func keepSound(tokens []token, inLink bool) []token {
 	for range 4 {
-		bad := misread(tokens, inLink, unicode.IsPunct)
-		for pair := range misread(tokens, inLink, isPunctOrSymbol) {
-			bad[pair] = true
+		bad := map[int]bool{}
+		for _, how := range readings() {
+			misread(tokens, inLink, how, bad)
 		}
 		if len(bad) == 0 {
 			return tokens
@@ -20,8 +32,6 @@ func keepSound(tokens []token, inLink bool) []token {
 	}
 	return without(tokens, func(int) bool { return true })
 }
-
-func isPunctOrSymbol(r rune) bool { return unicode.IsPunct(r) || unicode.IsSymbol(r) }
 
 // without returns tokens without the delimiters of the pairs for which drop
 // is true.
@@ -44,7 +54,7 @@ type run struct {
 	first, last       int   // tokens
 	owners            []int // for each character, the pair it belongs to
 	canOpen, canClose bool
-	gone              bool
+	place             int // among the runs
 	left, right       int // characters not yet used lie in owners[left:right]
 }
 
@@ -57,63 +67,82 @@ type span struct {
 	mark     string
 }
 
-// misread returns the pairs of delimiters that CommonMark reads otherwise
-// than they are meant: those left over, or else all, if what is emphasised
-// is not what should be.
-func misread(tokens []token, inLink bool, punct func(rune) bool) map[int]bool {
-	runs := delimiterRuns(tokens, inLink, punct)
+// misread adds to bad the pairs of delimiters that are read otherwise than
+// they are meant: those left over, or else all, if what is emphasised is not
+// what should be.
+func misread(tokens []token, inLink bool, how reading, bad map[int]bool) {
+	runs := delimiterRuns(tokens, inLink, how)
 	spans := match(runs)
-	bad := map[int]bool{}
+	sound := true
 	for _, r := range runs {
 		for _, pair := range r.owners[r.left:r.right] {
-			bad[pair] = true
+			bad[pair], sound = true, false
 		}
 	}
-	if len(bad) == 0 && !sameStyles(tokens, spans) {
-		for _, t := range tokens {
-			if isDelimiter(t) {
-				bad[t.pair] = true
-			}
+	if !sound || sameStyles(tokens, spans) {
+		return
+	}
+	for _, t := range tokens {
+		if isDelimiter(t) {
+			bad[t.pair] = true
 		}
 	}
-	return bad
 }
 
 // delimiterRuns returns the delimiter runs of tokens. Text in a link stands
 // between brackets, other text between spaces.
-func delimiterRuns(tokens []token, inLink bool, punct func(rune) bool) []*run {
+func delimiterRuns(tokens []token, inLink bool, how reading) []*run {
 	var runs []*run
 	edge := ' '
 	if inLink {
 		edge = '['
 	}
-	prev := edge
+	prev, prevOfStar := edge, edge
 	for i := 0; i < len(tokens); i++ {
-		t := tokens[i]
-		if !isDelimiter(t) {
-			prev = visibleEnd(t)
+		if !isDelimiter(tokens[i]) {
+			prev = visibleEnd(tokens[i])
+			prevOfStar = prev
 			continue
 		}
-		r := &run{char: t.text[0], first: i}
-		for ; i < len(tokens) && isDelimiter(tokens[i]) && tokens[i].text[0] == r.char; i++ {
-			for range tokens[i].text {
-				r.owners = append(r.owners, tokens[i].pair)
-			}
+		r := &run{char: tokens[i].text[0], first: i}
+		i = r.take(tokens)
+		next := nextOf(tokens, i+1, edge, how.through && r.char == '*')
+		if r.char == '*' {
+			prev, prevOfStar = prevOfStar, '*'
 		}
-		i--
-		r.last, r.right = i, len(r.owners)
-		next := edge
-		if i+1 < len(tokens) {
-			next = visibleStart(tokens[i+1])
-		}
-		r.canOpen, r.canClose = flanking(prev, next, punct)
+		r.canOpen, r.canClose = flanking(prev, next, how.punct)
 		if r.char == '~' && (prev == '~' || next == '~' || len(r.owners) != 2) {
 			r.canOpen, r.canClose = false, false
 		}
+		if prev = rune(r.char); !how.through {
+			prevOfStar = prev
+		}
 		runs = append(runs, r)
-		prev = rune(r.char)
 	}
 	return runs
+}
+
+// take gives a run the delimiters from its first on, and returns the last.
+func (r *run) take(tokens []token) int {
+	i := r.first
+	for ; i < len(tokens) && isDelimiter(tokens[i]) && tokens[i].text[0] == r.char; i++ {
+		for range tokens[i].text {
+			r.owners = append(r.owners, tokens[i].pair)
+		}
+	}
+	r.last, r.right = i-1, len(r.owners)
+	return r.last
+}
+
+// nextOf returns the character that a delimiter sees behind it.
+func nextOf(tokens []token, i int, edge rune, through bool) rune {
+	for through && i < len(tokens) && isDelimiter(tokens[i]) && tokens[i].text[0] == '~' {
+		i++
+	}
+	if i < len(tokens) {
+		return visibleStart(tokens[i])
+	}
+	return edge
 }
 
 // visibleEnd and visibleStart return the characters that a delimiter sees.
@@ -150,27 +179,28 @@ func flanking(prev, next rune, punct func(rune) bool) (left, right bool) {
 // match pairs the delimiters of runs and returns what they emphasise.
 func match(runs []*run) []span {
 	var spans []span
-	bottom := map[[3]int]int{} // below which no opener is left for a kind of closer
-	for c := 0; c < len(runs); {
-		closer := runs[c]
-		if !closer.canClose || closer.gone || closer.length() == 0 {
-			c++
-			continue
+	var openers []*run         // that may still find their closer
+	bottom := map[[3]int]int{} // the place of a closer that found none: nor will others of its kind, below it
+	for c, r := range runs {
+		r.place = c
+		for r.canClose && r.length() > 0 {
+			kind := closerKind(r)
+			o := len(openers) - 1
+			for o >= 0 && openers[o].place >= bottom[kind] && !pairs(openers[o], r) {
+				o--
+			}
+			if o < 0 || openers[o].place < bottom[kind] {
+				bottom[kind] = c
+				break
+			}
+			spans = append(spans, join(openers[o], r))
+			openers = openers[:o+1]
+			if openers[o].length() == 0 {
+				openers = openers[:o]
+			}
 		}
-		kind := closerKind(closer)
-		o := c - 1
-		for o >= bottom[kind] && !pairs(runs[o], closer) {
-			o--
-		}
-		if o < bottom[kind] {
-			bottom[kind] = c
-			closer.gone = !closer.canOpen
-			c++
-			continue
-		}
-		spans = append(spans, join(runs[o], closer))
-		for _, between := range runs[o+1 : c] {
-			between.gone = true
+		if r.canOpen && r.length() > 0 {
+			openers = append(openers, r)
 		}
 	}
 	return spans
@@ -187,7 +217,7 @@ func closerKind(r *run) [3]int {
 // pairs reports whether opener and closer may belong together: the rule of
 // three, and for text struck through the same length.
 func pairs(opener, closer *run) bool {
-	if opener.gone || !opener.canOpen || opener.length() == 0 || opener.char != closer.char {
+	if opener.char != closer.char {
 		return false
 	}
 	if opener.char == '~' {

@@ -378,6 +378,9 @@ func (p *markdown) alt(s string) string { return escaped(words(s)) }
 // is one.
 func (p *markdown) paragraph(box string, inlines []Inline, width int) []string {
 	tokens := p.lex(inlines, inProse)
+	if box != "" && len(tokens) == 0 {
+		return []string{box + " " + seenSpace}
+	}
 	if box != "" {
 		tokens = append([]token{{kind: tokenRaw, text: box}, space}, tokens...)
 	}

@@ -215,3 +215,21 @@ func TestColumns(t *testing.T) {
 		}
 	}
 }
+
+// Found with cmark-gfm 0.29.0.gfm.6, to which a star behind ~~ stands behind
+// the letter before them, and with goldmark 1.8.7, which sees a footnote in
+// !x^1] and a mail address in <-@a>.
+func TestMarkdownAvoidsWhatReadersTakeDifferently(t *testing.T) {
+	for want, line := range map[string][]Inline{
+		"x~~b~~^c":                    {&Emphasis{[]Inline{Text("x"), &Strike{say("b")}, &Strong{say("^c")}}}},
+		"*x~~b~~ **c** d*":            {&Emphasis{[]Inline{Text("x"), &Strike{say("b")}, Text(" "), &Strong{say("c")}, Text(" d")}}},
+		`\!x^1]`:                      say("!x^1]"),
+		`\<-@a>`:                      say("<-@a>"),
+		"[\\^1](https://example.org)": {&Link{"https://example.org", say("^1")}},
+		"&#92;\\\na":                  {Text(`\`), LineBreak{}, Text("a")},
+	} {
+		if got := markdownOf(t, &Document{Blocks: []Block{&Paragraph{line}}}); got != want+"\n" {
+			t.Errorf("got %q, want %q", got, want+"\n")
+		}
+	}
+}

@@ -9,6 +9,7 @@ import (
 
 	"github.com/spf13/cobra"
 
+	"shearbook/profile"
 	"shearbook/report"
 	"shearbook/templates"
 )
@@ -43,29 +44,19 @@ func startSite(dir string) error {
 		if _, err := os.Lstat(filepath.Join(dir, f.name)); err == nil {
 			return hinted{fmt.Errorf("%s holds a site already: %s", dir, f.name), "choose another folder, or work on that one"}
 		} else if !errors.Is(err, fs.ErrNotExist) {
-			return hinted{fmt.Errorf("%s cannot be used: %w", dir, plain(err)), "choose another folder"}
+			return hinted{fmt.Errorf("%s cannot be used: %w", dir, profile.FileError(err)), "choose another folder"}
 		}
 	}
 	if err := os.MkdirAll(dir, 0o777); err != nil {
-		return hinted{fmt.Errorf("%s cannot be made: %w", dir, plain(err)), "choose another folder"}
+		return hinted{fmt.Errorf("%s cannot be made: %w", dir, profile.FileError(err)), "choose another folder"}
 	}
-	for _, f := range files {
+	for i, f := range files {
 		if err := os.WriteFile(filepath.Join(dir, f.name), []byte(f.text), 0o666); err != nil {
-			return fmt.Errorf("%s cannot be written: %w", filepath.Join(dir, f.name), plain(err))
+			for _, written := range files[:i+1] {
+				_ = os.Remove(filepath.Join(dir, written.name)) // leave nothing half-made; the first error counts
+			}
+			return fmt.Errorf("%s cannot be written: %w", filepath.Join(dir, f.name), profile.FileError(err))
 		}
 	}
 	return nil
-}
-
-// plain is a file error without the path, which the message names already.
-func plain(err error) error {
-	var pe *fs.PathError
-	var le *os.LinkError
-	switch {
-	case errors.As(err, &pe):
-		return pe.Err
-	case errors.As(err, &le):
-		return le.Err
-	}
-	return err
 }

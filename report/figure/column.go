@@ -39,6 +39,8 @@ type label struct {
 type entry struct {
 	style draw.LineStyle
 	dot   bool
+	core  draw.LineStyle // a line inside the line
+	band  bool           // a piece of the band and no line
 	lines []string
 }
 
@@ -75,7 +77,7 @@ func (c *column) widen(indent vg.Length, lines []string) {
 func (f *velocity) newKey(room vg.Length) []entry {
 	var key []entry
 	add := func(style draw.LineStyle, dot bool, text string, lines int) {
-		key = append(key, entry{style, dot, plain.wrap(text, room, lines)})
+		key = append(key, entry{style: style, dot: dot, lines: plain.wrap(text, room, lines)})
 	}
 	n := len(f.lines)
 	shown := n
@@ -106,6 +108,11 @@ func (f *velocity) newKey(room vg.Length) []entry {
 	}
 	if extension {
 		add(common.extension, false, "extended below the depth reached", textLines)
+	}
+	if len(f.band) > 0 {
+		key = append(key,
+			entry{style: medianLine, core: medianCore, lines: plain.wrap("median", room, textLines)},
+			entry{band: true, lines: plain.wrap(bandText, room, textLines)})
 	}
 	return key
 }
@@ -219,16 +226,22 @@ func (c *column) drawLabel(s *sheet, p *plane, l label, top vg.Length) {
 // drawEntry draws an entry of the key below and to the right of x, top.
 func (c *column) drawEntry(s *sheet, x, top vg.Length, e entry) {
 	base := top - plain.size*0.9
+	middle := base + plain.size*capHeight/2
 	if e.style.Width > 0 {
-		middle := base + plain.size*capHeight/2
 		end := x + sampleLen
 		if e.dot {
 			end -= 4
 		}
 		s.StrokeLine2(e.style, x, middle, end, middle)
+		if e.core.Width > 0 {
+			s.StrokeLine2(e.core, x, middle, end, middle)
+		}
 		if e.dot {
 			s.dot(e.style.Color.(ink), vg.Point{X: end, Y: middle})
 		}
+	}
+	if e.band {
+		s.bandSample(x, middle)
 	}
 	for _, text := range e.lines {
 		s.write(plain, x+sampleText, base, draw.XLeft, text)

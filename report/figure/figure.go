@@ -1,7 +1,8 @@
 // Package figure draws the report's figures as report.Pictures: velocity
-// against depth, one average against the bounds of several codes, and the
-// travel time of each layer. It takes plain data in SI and knows no code
-// and no site; what the numbers mean is its caller's to say.
+// against depth, one average against the bounds of several codes, the travel
+// time of each layer, how likely each average is, and what each layer has to
+// do with it. It takes plain data in SI and knows no code and no site; what
+// the numbers mean is its caller's to say.
 //
 // The drawing is done with the vector graphics of gonum.org/v1/plot, whose
 // canvas is here one that records marks. Its axes are not used: package plot

@@ -18,12 +18,17 @@ type VelocityOptions struct {
 	Datum     float64 // m below ground level from which the velocity is averaged
 	Thickness float64 // m over which it is averaged; 0 marks no averaging depth
 	Classes   Classes // the bounds to show behind; none if zero
+
+	// Band is what the profiles together say of the velocity at each depth, from
+	// the top down; none if nil. It lies behind them, its median before them.
+	Band []BandPoint
 }
 
 // Velocity draws shear-wave velocity against depth for one or several
 // profiles. Depth grows downward. Over the frame stand the letters of the
 // classes, beside it the depths that matter and the key. The error names
-// the layer, the bound or the depth that cannot be drawn.
+// the layer, the bound, the depth or the point of the band that cannot be
+// drawn.
 func Velocity(lines []Line, o VelocityOptions) (*report.Picture, error) {
 	if err := o.check(lines); err != nil {
 		return nil, fmt.Errorf("velocity figure: %w", err)
@@ -56,6 +61,9 @@ func (o *VelocityOptions) check(lines []Line) error {
 	if o.Depth > 0 && o.Depth < shallowest {
 		return fmt.Errorf("a depth axis of %v m cannot be drawn", o.Depth)
 	}
+	if err := checkBand(o.Band); err != nil {
+		return err
+	}
 	return o.Classes.check()
 }
 
@@ -68,6 +76,7 @@ type velocity struct {
 	x, y          *axis
 	bottom        float64 // m, where the depth axis ends
 	steps         []steps
+	band          [][]bandStep // its parts without a gap
 	column        column
 	letters       []placed // over the frame
 	letterRows    int
@@ -97,6 +106,7 @@ func (f *velocity) fitDepth() {
 	for i := range f.lines {
 		f.steps = append(f.steps, f.lines[i].steps(f.bottom))
 	}
+	f.band = bandRuns(f.Band, f.bottom)
 }
 
 // lowest returns the greatest depth in m that the figure must show. A ground
@@ -112,6 +122,9 @@ func (f *velocity) lowest() float64 {
 		case last.Top > 0:
 			z = max(z, 1.1*last.Top)
 		}
+	}
+	if n := len(f.Band); n > 0 {
+		z = max(z, f.Band[n-1].Depth)
 	}
 	if z == 0 {
 		return 30
@@ -142,6 +155,11 @@ func (f *velocity) fitVelocity() {
 			if p.finite() && p.Depth <= f.bottom {
 				v = max(v, p.Velocity)
 			}
+		}
+	}
+	for _, run := range f.band {
+		for _, st := range run {
+			v = max(v, st.High)
 		}
 	}
 	end := 1.08 * v
@@ -202,6 +220,7 @@ func (f *velocity) draw() *report.Picture {
 	s := newSheet(f.width, f.height)
 	p := f.frame()
 	p.Canvas.Canvas = s.Canvas.Canvas
+	s.drawBand(p, f.band)
 	f.drawBounds(&s, p)
 	f.drawDepths(&s, p)
 	s.outline(frameLine, p.Rectangle)
@@ -210,6 +229,7 @@ func (f *velocity) draw() *report.Picture {
 	for i := range f.lines {
 		s.drawLine(p, &f.lines[i], f.steps[i], lookOf(i, len(f.lines)))
 	}
+	s.drawMedian(p, f.band)
 	f.column.draw(&s, p)
 	return s.picture
 }

@@ -12,6 +12,7 @@ import (
 	"path/filepath"
 	"strings"
 
+	"shearbook/profile"
 	"shearbook/report"
 	"shearbook/report/pdf"
 )
@@ -74,20 +75,20 @@ func Write(dir string, files []File) (err error) {
 	}
 	parent := filepath.Dir(dir)
 	if err := os.MkdirAll(parent, 0o777); err != nil {
-		return fmt.Errorf("%s cannot be made: %w", parent, plain(err))
+		return fmt.Errorf("%s cannot be made: %w", parent, profile.FileError(err))
 	}
 	fresh, err := os.MkdirTemp(parent, "."+filepath.Base(dir)+"-*")
 	if err != nil {
-		return fmt.Errorf("%s cannot be written in: %w", parent, plain(err))
+		return fmt.Errorf("%s cannot be written in: %w", parent, profile.FileError(err))
 	}
 	defer os.RemoveAll(fresh)
 	for _, f := range files {
 		if err := writeFile(fresh, f); err != nil {
-			return fmt.Errorf("%s cannot be written: %w", filepath.Join(dir, filepath.FromSlash(f.Name)), plain(err))
+			return fmt.Errorf("%s cannot be written: %w", filepath.Join(dir, filepath.FromSlash(f.Name)), profile.FileError(err))
 		}
 	}
 	if err := os.Chmod(fresh, 0o755); err != nil {
-		return fmt.Errorf("%s cannot be made readable: %w", dir, plain(err))
+		return fmt.Errorf("%s cannot be made readable: %w", dir, profile.FileError(err))
 	}
 	return swap(fresh, dir)
 }
@@ -108,7 +109,7 @@ func replaceable(dir string) error {
 		return nil
 	}
 	if err != nil {
-		return fmt.Errorf("%s cannot be used as the folder of a report: %w", dir, plain(err))
+		return fmt.Errorf("%s cannot be used as the folder of a report: %w", dir, profile.FileError(err))
 	}
 	for _, e := range entries {
 		switch e.Name() {
@@ -138,22 +139,9 @@ func swap(fresh, dir string) error {
 
 func moved(err error, dir string) error {
 	if err != nil {
-		return fmt.Errorf("%s cannot be put in place: %w", dir, plain(err))
+		return fmt.Errorf("%s cannot be put in place: %w", dir, profile.FileError(err))
 	}
 	return nil
-}
-
-// plain is a file error without the path, which the message names already.
-func plain(err error) error {
-	var pe *fs.PathError
-	var le *os.LinkError
-	switch {
-	case errors.As(err, &pe):
-		return pe.Err
-	case errors.As(err, &le):
-		return le.Err
-	}
-	return err
 }
 
 // NameFor returns the folder of a report that is written beside its source:

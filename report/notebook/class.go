@@ -20,6 +20,12 @@ var classWorking = Working{
 }
 
 func evaluateClass(ev *evaluation, c call) []report.Block {
+	return ev.eachDecision(c, ev.classBlocks)
+}
+
+// eachDecision evaluates a working that puts blocks for each site under each
+// code into the report.
+func (ev *evaluation) eachDecision(c call, blocksOf func(*site, siteclass.Decision) []report.Block) []report.Block {
 	m := ev.keys(c)
 	sites := ev.of(&m)
 	codes := ev.codes(&m, "code")
@@ -28,7 +34,7 @@ func evaluateClass(ev *evaluation, c call) []report.Block {
 		var blocks []report.Block
 		for _, code := range codes {
 			if d, ok := ev.decide(s, code, s.entry.place); ok {
-				blocks = append(blocks, ev.classBlocks(s, d)...)
+				blocks = append(blocks, blocksOf(s, d)...)
 			}
 		}
 		return blocks
@@ -156,19 +162,7 @@ var conditionsWorking = Working{
 }
 
 func evaluateConditions(ev *evaluation, c call) []report.Block {
-	m := ev.keys(c)
-	sites := ev.of(&m)
-	codes := ev.codes(&m, "code")
-	m.rest()
-	return ev.each(sites, func(s *site) []report.Block {
-		var blocks []report.Block
-		for _, code := range codes {
-			if d, ok := ev.decide(s, code, s.entry.place); ok {
-				blocks = append(blocks, ev.conditionTable(s, d))
-			}
-		}
-		return blocks
-	})
+	return ev.eachDecision(c, func(s *site, d siteclass.Decision) []report.Block { return one(ev.conditionTable(s, d)) })
 }
 
 // conditionTable is what became of each condition of the code.

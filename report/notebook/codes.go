@@ -88,7 +88,7 @@ func (ev *evaluation) findCodes() {
 func (ev *evaluation) readTable(e CodeEntry) *siteclass.Code {
 	data, err := ev.opt.ReadFile(e.File)
 	if err != nil {
-		ev.add(e.place, "name a file in the notebook's folder", "code: %s cannot be read: %v", e.File, plainFileError(err))
+		ev.add(e.place, "name a file in the notebook's folder", "code: %s cannot be read: %v", e.File, profile.FileError(err))
 		return nil
 	}
 	code, err := codefile.Read(e.File, data)

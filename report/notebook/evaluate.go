@@ -4,7 +4,6 @@ import (
 	"crypto/sha256"
 	"encoding/hex"
 	"errors"
-	"io/fs"
 	"path"
 	"strconv"
 	"strings"
@@ -107,7 +106,7 @@ func (ev *evaluation) load() {
 func (ev *evaluation) read(e ProfileEntry) []profile.Profile {
 	data, err := ev.opt.ReadFile(e.File)
 	if err != nil {
-		ev.add(e.place, "name a file in the notebook's folder", "profile %q: %s cannot be read: %v", e.Key, e.File, plainFileError(err))
+		ev.add(e.place, "name a file in the notebook's folder", "profile %q: %s cannot be read: %v", e.Key, e.File, profile.FileError(err))
 		return nil
 	}
 	profiles, err := open.Bytes(e.File, data, open.Options{Units: e.Units})
@@ -188,16 +187,6 @@ func overlay(s *profile.Survey, over profile.Survey) {
 	if over.WaterTable.Known {
 		s.WaterTable = over.WaterTable
 	}
-}
-
-// plainFileError is a file error without the path, which the message names
-// already.
-func plainFileError(err error) error {
-	var pe *fs.PathError
-	if errors.As(err, &pe) {
-		return pe.Err
-	}
-	return err
 }
 
 // refs returns footnote references for notes; a note that was mentioned

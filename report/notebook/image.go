@@ -10,6 +10,7 @@ import (
 
 	"github.com/yuin/goldmark/ast"
 
+	"shearbook/profile"
 	"shearbook/report"
 )
 
@@ -29,7 +30,7 @@ func (c *converter) image(n *ast.Image) []report.Block {
 	}
 	data, err := c.opt.ReadFile(name)
 	if err != nil {
-		c.add(at, "name a PNG or JPEG file in the notebook's folder", "image %q cannot be read: %v", name, plainFileError(err))
+		c.add(at, "name a PNG or JPEG file in the notebook's folder", "image %q cannot be read: %v", name, profile.FileError(err))
 		return nil
 	}
 	config, format, err := image.DecodeConfig(bytes.NewReader(data))

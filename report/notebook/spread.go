@@ -340,7 +340,7 @@ func (ev *evaluation) flipBlocks(s *site, layers []profile.Layer, thickness floa
 		blocks = append(blocks, t)
 	}
 	if k.figures && len(shares) > 0 {
-		blocks = append(blocks, ev.flipFigure(s, layers, shares, softer, stiffer, k.at)...)
+		blocks = append(blocks, ev.flipFigure(s, shares, softer, stiffer, k.at)...)
 	}
 	return blocks
 }
