@@ -38,7 +38,7 @@ func readCodeFiles(names []string) ([]codeFile, error) {
 		f := codeFile{name: name, base: filepath.Base(name)}
 		var err error
 		if f.data, err = readRegular(name, codefile.MaxSize); err != nil {
-			return nil, hinted{fmt.Errorf("%s cannot be read: %w", name, plain(err)), "check the name"}
+			return nil, hinted{fmt.Errorf("%s cannot be read: %w", name, profile.FileError(err)), "check the name"}
 		}
 		if f.code, err = codefile.Read(name, f.data); err != nil {
 			if faults, err = join(faults, err); err != nil {

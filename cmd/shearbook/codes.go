@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 
 	"github.com/spf13/cobra"
@@ -42,12 +43,13 @@ decide otherwise.
   {"schema": 1, "confirmation": "…licensed engineer…", "codes": [{
     "id", "title", "edition", "region", "clause", "table", "parameter",
     "depth", "depth_m", "datum", "unit", "strength_unit", "standing",
-    "own_rule", "classes": [{"class", "name", "vs", "n", "su", "also",
-    "standing"}]}]}
+    "own_rule", "classes": [{"class", "name", "vs", "n", "su", "rules",
+    "also", "standing"}]}]}
 
 depth is as the code words it, depth_m in metres. vs, n and su are ranges as
 a table file has them: "> 1200", ">= 600, <= 1200", "600 to 1200", or "" where
-the row has none; vs is in unit, su in strength_unit, n in blows per 0.3 m.
+the row has none; vs is in unit, su in strength_unit, n in blows per 0.3 m;
+rules are in words, of a class that no column gives.
 own_rule is true where the code does not decide by these rows alone. Fields
 may be added; schema grows when one changes its meaning or goes away.`,
 		Example: `  shearbook codes
@@ -160,8 +162,11 @@ func (s streams) describe(c *siteclass.Code) string {
 	line("clause", c.Clause+", "+c.Table)
 	line("parameter", c.Parameter+", over "+c.DepthText)
 	line("datum", strings.TrimSuffix(c.Datum.String()+"; "+c.DatumNote, "; "))
+	line("routes", routesText(c))
 	line("standing", c.Standing.String())
 	line("source", c.Source)
+	line("adopts", c.Adoption)
+	line("superseded", c.Superseded)
 
 	t := notebook.ClassTable(c)
 	g := grid{indent: "  ", wraps: 1, rows: [][]string{}}
@@ -174,6 +179,8 @@ func (s streams) describe(c *siteclass.Code) string {
 		g.rows = append(g.rows, cells(r.Cells))
 	}
 	b.WriteString("\n" + g.String())
+	writeList(&b, "rules beside the columns, the first that holds decides", rulesText(c))
+	writeList(&b, "figures that these rules rest on", termsText(c))
 	if len(c.Conditions) > 0 {
 		b.WriteString("\n  conditions beside the average\n")
 		for _, cond := range c.Conditions {
@@ -181,6 +188,55 @@ func (s streams) describe(c *siteclass.Code) string {
 			fmt.Fprintf(&b, "    - %s\n", wrap(text, width-6, "      "))
 		}
 	}
+	writeList(&b, "where data are lacking", present(c.Default, c.Short))
 	writeList(&b, "what the print leaves open", c.Notes)
 	return b.String()
+}
+
+// routesText says by which averages a code gives the class, the ranks in
+// their order; "" where there is only the velocity.
+func routesText(c *siteclass.Code) string {
+	text, last := "", 0
+	for _, r := range slices.SortedStableFunc(slices.Values(c.Routes), func(a, b siteclass.Route) int { return a.Rank - b.Rank }) {
+		switch {
+		case text == "":
+		case r.Rank == last:
+			text += ", or "
+		default:
+			text += "; failing that "
+		}
+		text, last = text+r.Name, r.Rank
+	}
+	return text
+}
+
+// rulesText are the rules that are no columns, in their order.
+func rulesText(c *siteclass.Code) []string {
+	var texts []string
+	for _, r := range c.Rules {
+		clause := r.Clause
+		if clause == "" {
+			clause = c.Table
+		}
+		text := fmt.Sprintf("%s: %s (%s; %s)", r.Class, r, clause, r.Standing)
+		if r.Indicative {
+			text += ", shown and not deciding"
+		}
+		texts = append(texts, text)
+	}
+	return texts
+}
+
+// termsText are the figures that a code's own rule rests on.
+func termsText(c *siteclass.Code) []string {
+	var texts []string
+	for _, t := range c.Terms {
+		texts = append(texts, fmt.Sprintf("%s (%s; %s)", t.Text, t.Clause, t.Standing))
+	}
+	return texts
+}
+
+// present leaves out what is not said.
+func present(texts ...string) []string {
+	return slices.DeleteFunc(texts, func(text string) bool { return text == "" })
 }

@@ -39,13 +39,14 @@ type codeEntry struct {
 }
 
 type classEntry struct {
-	Class    string `json:"class"`
-	Name     string `json:"name"`
-	Vs       string `json:"vs"`
-	N        string `json:"n"`
-	Su       string `json:"su"`
-	Also     string `json:"also"`
-	Standing string `json:"standing"`
+	Class    string   `json:"class"`
+	Name     string   `json:"name"`
+	Vs       string   `json:"vs"`
+	N        string   `json:"n"`
+	Su       string   `json:"su"`
+	Rules    []string `json:"rules"`
+	Also     string   `json:"also"`
+	Standing string   `json:"standing"`
 }
 
 // writeCodes writes codes as indented JSON with a final newline.
@@ -70,7 +71,7 @@ func newCodeEntry(c *siteclass.Code) codeEntry {
 	for _, b := range c.Bands {
 		e.Classes = append(e.Classes, classEntry{
 			Class: b.Class, Name: b.Name, Vs: codefile.Range(b.Vs), N: codefile.Range(b.N), Su: codefile.Range(b.Su),
-			Also: b.Also, Standing: b.Standing.String(),
+			Rules: append([]string{}, c.RulesOf(b.Class)...), Also: b.Also, Standing: b.Standing.String(),
 		})
 	}
 	return e

@@ -53,6 +53,7 @@ func headDifferences(a, b *siteclass.Code) []difference {
 		{"datum", a.Datum.String(), b.Datum.String()},
 		{"unit of Vs", a.Unit.Name, b.Unit.Name},
 		{"unit of su", orNothing(a.SuUnit.Name), orNothing(b.SuUnit.Name)},
+		{"routes", orNothing(routesText(a)), orNothing(routesText(b))},
 		{"softer than all", orNothing(a.Outside), orNothing(b.Outside)},
 	})
 }

@@ -194,12 +194,12 @@ func openSource(in io.Reader, name string) (*source, error) {
 	src := &source{name: name, base: filepath.Base(name), dir: filepath.Dir(name)}
 	root, err := os.OpenRoot(src.dir)
 	if err != nil {
-		return nil, hinted{fmt.Errorf("%s cannot be read: %w", name, plain(err)), "check the name"}
+		return nil, hinted{fmt.Errorf("%s cannot be read: %w", name, profile.FileError(err)), "check the name"}
 	}
 	src.root = root
 	if src.data, err = src.read(src.base); err != nil {
 		src.close()
-		return nil, hinted{fmt.Errorf("%s cannot be read: %w", name, plain(err)), "check the name"}
+		return nil, hinted{fmt.Errorf("%s cannot be read: %w", name, profile.FileError(err)), "check the name"}
 	}
 	return src, nil
 }

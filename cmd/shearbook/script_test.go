@@ -62,12 +62,20 @@ func makeFile(ts *testscript.TestScript, neg bool, args []string) {
 		"crlfbom":   func() []byte { return []byte("\ufefftop (m),bottom (m),vs (m/s)\r\n0,5,200\r\n5,,400\r\n\r\n\r\n") },
 		"onelayer":  func() []byte { return []byte("thickness (m),vs (m/s)\n30,300\n") },
 		"emptyfile": func() []byte { return nil },
+		"codefile":  func() []byte { return exampleTable(ts) },
 	}
 	kind, ok := kinds[args[0]]
 	if !ok {
 		ts.Fatalf("no kind %q", args[0])
 	}
 	ts.Check(os.WriteFile(ts.MkAbs(args[1]), kind(), 0o666))
+}
+
+// exampleTable is the documented example of a jurisdiction's own table.
+func exampleTable(ts *testscript.TestScript) []byte {
+	data, err := os.ReadFile(filepath.Join("..", "..", "testdata", "codefile", "example.yaml"))
+	ts.Check(err)
+	return data
 }
 
 // manyRows is 10⁷ rows of one profile: more than a file of layers may have.

@@ -31,10 +31,18 @@ type mapping struct {
 	known  []string
 }
 
+// maxYAML is the longest front matter or working that is read, in bytes: the
+// reader takes time that grows with the square of intricate input.
+const maxYAML = 64 << 10
+
 // parseMapping reads YAML text that starts after offset lines of the file.
 func parseMapping(f *faultList, what, text string, offset int) mapping {
 	m := mapping{faultList: f, what: what, offset: offset}
 	if strings.TrimSpace(text) == "" {
+		return m
+	}
+	if len(text) > maxYAML {
+		f.add(m.at(nil), "keep data in files of their own", "%s is longer than %d KiB", what, maxYAML>>10)
 		return m
 	}
 	var root yaml.Node

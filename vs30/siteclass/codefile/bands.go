@@ -16,9 +16,8 @@ const maxDepth = 1000
 
 // units reads the depth and the units of the columns.
 func (r *reader) units(top *mapping, c *siteclass.Code) {
-	c.Unit = top.unit("unit", profile.Velocity, profile.Unit{})
-	if c.Unit.Name == "" && top.get("unit") == nil {
-		r.add(top.place(), "add a line such as `unit: m/s`", "the table does not state the %q of its velocities", "unit")
+	if top.must("unit", "unit: m/s") != "" {
+		c.Unit = top.unit("unit", profile.Velocity, profile.Unit{})
 	}
 	c.SuUnit = top.unit("strength unit", profile.Stress, profile.Unit{})
 	c.Depth, c.Length = top.depth()
@@ -154,23 +153,41 @@ func (r *reader) check(c *siteclass.Code, nodes []*yaml.Node) {
 		}
 		seen[class] = true
 	}
-	for _, column := range []struct {
-		key     string
-		of      func(*siteclass.Band) siteclass.Range
-		outside bool
-	}{
-		{"vs", func(b *siteclass.Band) siteclass.Range { return b.Vs }, c.Outside != ""},
-		{"n", func(b *siteclass.Band) siteclass.Range { return b.N }, false},
-		{"su", func(b *siteclass.Band) siteclass.Range { return b.Su }, false},
-	} {
-		l := ladder{reader: r, column: column.key, outside: column.outside}
-		for i := range c.Bands {
-			if b := &c.Bands[i]; !b.Indicative && !column.of(b).Empty() {
-				l.rungs = append(l.rungs, rung{b.Class, column.of(b), r.at(value(nodes[i], column.key))})
-			}
-		}
-		l.check()
+	for _, m := range []siteclass.Measure{siteclass.AverageVs, siteclass.AverageN, siteclass.AverageSu} {
+		r.ladder(m, c, nodes).check()
 	}
+}
+
+// columnKeys are the keys of the columns.
+var columnKeys = map[siteclass.Measure]string{siteclass.AverageVs: "vs", siteclass.AverageN: "n", siteclass.AverageSu: "su"}
+
+// ladder returns the column of a measure. Below its softest class a velocity
+// is what `outside` says; N and strength are of the row below, if there is
+// one.
+func (r *reader) ladder(m siteclass.Measure, c *siteclass.Code, nodes []*yaml.Node) *ladder {
+	l := &ladder{reader: r, column: columnKeys[m]}
+	for i := range c.Bands {
+		b := &c.Bands[i]
+		if cell := columnOf(b, m); !b.Indicative && !cell.Empty() {
+			l.rungs = append(l.rungs, rung{b.Class, cell, r.at(value(nodes[i], l.column))})
+			l.outside = i+1 < len(c.Bands)
+		}
+	}
+	if m == siteclass.AverageVs {
+		l.outside = c.Outside != ""
+	}
+	return l
+}
+
+// columnOf returns the range of a class that a measure is held against.
+func columnOf(b *siteclass.Band, m siteclass.Measure) siteclass.Range {
+	switch m {
+	case siteclass.AverageVs:
+		return b.Vs
+	case siteclass.AverageN, siteclass.AverageNch:
+		return b.N
+	}
+	return b.Su
 }
 
 // value returns the value of a key of a mapping, which must have it.

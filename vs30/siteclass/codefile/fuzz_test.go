@@ -18,6 +18,9 @@ func FuzzRead(f *testing.F) {
 	if data, err := os.ReadFile(exampleFile); err == nil {
 		f.Add(data)
 	}
+	for _, c := range faultCases() {
+		f.Add([]byte(c.text()))
+	}
 	for _, c := range siteclass.All() {
 		if text, err := text(c); err == nil {
 			f.Add(text)

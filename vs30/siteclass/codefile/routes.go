@@ -75,7 +75,7 @@ func (m *mapping) measures() []siteclass.Measure {
 			of = append(of, measures[i])
 		}
 	}
-	if m.get("of") == nil {
+	if n := m.get("of"); n == nil || n.Kind == yaml.SequenceNode && len(n.Content) == 0 {
 		m.add(m.place(), "add `of: velocity`; known: "+strings.Join(known, ", "), "%s does not say what it is %q", m.what, "of")
 	}
 	if len(of) > 1 && slices.Contains(of, siteclass.AverageVs) {
@@ -104,9 +104,7 @@ func (m *mapping) number(key string, most int) int {
 func (r *reader) averaging(top *mapping, c *siteclass.Code) {
 	n := top.get("averaging")
 	if n == nil {
-		if slices.ContainsFunc(c.Routes, func(u siteclass.Route) bool {
-			return !slices.Equal(u.Measures, []siteclass.Measure{siteclass.AverageVs})
-		}) {
+		if slices.ContainsFunc(c.Routes, byTests) {
 			r.add(r.at(top.get("routes")), "add `averaging: {clause: 7.2}`; the example explains its keys", "the table has a route by N or su and does not state their %q", "averaging")
 		}
 		return
@@ -130,6 +128,11 @@ func (r *reader) averaging(top *mapping, c *siteclass.Code) {
 		m.add(m.at(m.get("su cap")), "add a line such as `strength unit: kPa`", "averaging caps the strength, and the table does not state the %q", "strength unit")
 	}
 	m.rest()
+}
+
+// byTests reports whether a route averages N or su.
+func byTests(u siteclass.Route) bool {
+	return slices.ContainsFunc(u.Measures, func(m siteclass.Measure) bool { return m != siteclass.AverageVs })
 }
 
 // Whether the print has the formula of the averages of N and su.
@@ -199,23 +202,16 @@ func routeNode(nodes []*yaml.Node, i int) *yaml.Node {
 // hasColumn reports whether a class is given by the column of a measure.
 func hasColumn(c *siteclass.Code, m siteclass.Measure) bool {
 	return slices.ContainsFunc(c.Bands, func(b siteclass.Band) bool {
-		r := b.Vs
-		switch m {
-		case siteclass.AverageN, siteclass.AverageNch:
-			r = b.N
-		case siteclass.AverageSu:
-			r = b.Su
-		}
-		return !b.Indicative && !r.Empty()
+		return !b.Indicative && !columnOf(&b, m).Empty()
 	})
 }
 
-// routeList writes a route; place is its place in the list, from 1.
-func routeList(u *siteclass.Route, place int, c *siteclass.Code) list {
+// routeList writes a route.
+func routeList(u *siteclass.Route, c *siteclass.Code) list {
 	l := newList()
 	l.texts("of", words(u.Measures), true)
 	l.text("name", u.Name, defaultName(u.Measures))
-	l.text("rank", strconv.Itoa(u.Rank), strconv.Itoa(place))
+	l.number("rank", float64(u.Rank))
 	l.text("clause", u.Clause, c.Clause)
 	l.text("standing", u.Standing.String(), c.Standing.String())
 	return l
@@ -228,8 +224,8 @@ func averagingList(a *siteclass.Averaging, c *siteclass.Code) list {
 	l.text("Nch", a.Nch, "")
 	l.text("su", a.Su, "")
 	l.text("blow count", a.Blow.String(), siteclass.BlowUnstated.String())
-	l.text("N cap", plainNumber(a.NCap), "0")
-	l.text("su cap", plainNumber(a.SuCap), "0")
+	l.number("N cap", a.NCap)
+	l.number("su cap", a.SuCap)
 	l.cell("cohesive", cell{Range: a.Cohesive})
 	l.cell("cohesionless", cell{Range: a.Cohesionless})
 	if a.Unstated {

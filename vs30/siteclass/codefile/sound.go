@@ -14,9 +14,7 @@ func (m *mapping) sound(k *siteclass.Condition, c *siteclass.Code) {
 		m.soundBar(k, c)
 		return
 	}
-	if k.Class == "" && m.get("class") == nil {
-		m.add(m.place(), "add `class: F`, the class it leads to", "%s does not state %q", m.what, "class")
-	} else if k.Class != "" {
+	if m.must("class", "class: F") != "" {
 		m.isClass("class", k.Class, c)
 	}
 	for _, key := range []string{"bars", "counted from", "then"} {
@@ -25,9 +23,7 @@ func (m *mapping) sound(k *siteclass.Condition, c *siteclass.Code) {
 	switch k.Fact {
 	case siteclass.Liquefiable, siteclass.Sensitive, siteclass.Collapsible:
 	case siteclass.Described:
-		if m.get("text") == nil {
-			m.add(m.place(), "add `text:` with the description", "%s does not say what ground", m.what)
-		}
+		m.must("text", "text: sand of uniform grains below the water table")
 	case siteclass.StiffGround:
 		m.add(m.at(m.get("fact")), "a condition on stiff ground bars classes: `kind: "+siteclass.Barred.String()+"`",
 			"%s is of kind %s, which needs a rule that a table cannot say", m.what, k.Kind)

@@ -19,9 +19,9 @@ func (r *reader) twin(top *mapping, c *siteclass.Code) {
 	if m.node == nil {
 		return
 	}
-	t := siteclass.Twin{Unit: m.unit("unit", profile.Velocity, profile.Unit{}), Source: m.text("source")}
-	if m.get("unit") == nil {
-		r.add(m.place(), "add `unit: ft/s`", "twin does not state its %q", "unit")
+	t := siteclass.Twin{Source: m.text("source")}
+	if m.must("unit", "unit: ft/s") != "" {
+		t.Unit = m.unit("unit", profile.Velocity, profile.Unit{})
 	}
 	for _, item := range m.items("bounds", 2*MaxBands) {
 		v, err := parseNumber(item.Value)

@@ -3,7 +3,6 @@ package codefile
 import (
 	"fmt"
 	"io"
-	"strconv"
 
 	"go.yaml.in/yaml/v4"
 
@@ -82,6 +81,13 @@ func (l list) yes(key string, value bool) {
 	}
 }
 
+// number adds a key with a plain number, and none for 0.
+func (l list) number(key string, v float64) {
+	if v != 0 {
+		l.set(key, &yaml.Node{Kind: yaml.ScalarNode, Value: plainNumber(v)})
+	}
+}
+
 // cell adds a range, in quotes.
 func (l list) cell(key string, c cell) {
 	if !c.Empty() {
@@ -141,13 +147,11 @@ func document(c *siteclass.Code) *yaml.Node {
 	if len(c.Routes) > 0 {
 		routes := &yaml.Node{Kind: yaml.SequenceNode, Tag: "!!seq"}
 		for i := range c.Routes {
-			routes.Content = append(routes.Content, routeList(&c.Routes[i], i+1, c).node)
+			routes.Content = append(routes.Content, routeList(&c.Routes[i], c).node)
 		}
 		l.set("routes", routes)
 	}
-	if c.Needs > 0 {
-		l.text("routes needed", strconv.Itoa(c.Needs), "")
-	}
+	l.number("routes needed", float64(c.Needs))
 	if c.Averaging != (siteclass.Averaging{}) {
 		l.set("averaging", averagingList(&c.Averaging, c).node)
 	}
