@@ -57,6 +57,9 @@ func oneLayer(p *Profile) (Note, bool) {
 }
 
 func unitSuspect(p *Profile) (Note, bool) {
+	if p.NoVelocity {
+		return Note{}, false
+	}
 	slowest, fastest := &p.Layers[0], &p.Layers[0]
 	for i := range p.Layers {
 		l := &p.Layers[i]

@@ -18,6 +18,11 @@ type Profile struct {
 	Position Position
 	Reading  *Reading // the profile in its file's own words; nil if it was not read from a file
 	Notes    []Note   // what is doubtful about it without being wrong
+
+	// NoVelocity says that the profile states no velocity at all: Vs is 0 in
+	// every layer, and the layers are there for their N and su. Nothing can be
+	// averaged over travel time in it.
+	NoVelocity bool
 }
 
 // Layer is one layer of a profile. Its shear-wave velocity is constant, or
@@ -25,7 +30,7 @@ type Profile struct {
 type Layer struct {
 	Top      float64 // m below ground level, ≥ 0
 	Bottom   float64 // m below ground level, > Top; +Inf for a half-space
-	Vs       float64 // m/s, > 0; at the top of a gradient layer
+	Vs       float64 // m/s, > 0; at the top of a gradient layer; 0 where Profile.NoVelocity
 	VsBottom float64 // m/s, > 0 at the bottom of a gradient layer; 0 where Vs is constant
 
 	// The optional quantities below mean something only where Has says so.

@@ -30,12 +30,13 @@ const (
 	PI
 	WaterContent
 	RefusalWord
+	Depth // of a reading, inside the layer that it becomes
 )
 
 var quantityNames = [...]string{
 	"unknown", "profile", "top", "bottom", "thickness", "Vs", "Vs at bottom",
 	"lower Vs", "upper Vs", "Vp", "density", "sigma of ln Vs", "basis", "soil",
-	"N", "su", "plasticity index", "water content", "refusal",
+	"N", "su", "plasticity index", "water content", "refusal", "depth",
 }
 
 // String returns the name of the quantity as messages and tables use it.
@@ -63,7 +64,7 @@ func (d Dimension) String() string { return dimensionNames[d] }
 // Dimension returns the dimension of the quantity.
 func (q Quantity) Dimension() Dimension {
 	switch q {
-	case Top, Bottom, Thickness:
+	case Top, Bottom, Thickness, Depth:
 		return Length
 	case Vs, VsBottom, VsLower, VsUpper, Vp:
 		return Velocity
@@ -98,6 +99,7 @@ var (
 	FootPerSecond   = Unit{"ft/s", Velocity, Foot}
 	Kilopascal      = Unit{"kPa", Stress, 1}
 	PoundPerSquareF = Unit{"psf", Stress, psf}
+	KipPerSquareF   = Unit{"ksf", Stress, 1000 * psf}
 )
 
 // The factors below follow from the international foot and pound (0.45359237
@@ -127,7 +129,7 @@ var units = []struct {
 	{Kilopascal, "kpa|kn/m2|kn/m²|kn/m^2"},
 	{Unit{"MPa", Stress, 1000}, "mpa|mn/m2"},
 	{PoundPerSquareF, "psf|lb/ft2|lb/ft²|lb/ft^2"},
-	{Unit{"ksf", Stress, 1000 * psf}, "ksf"},
+	{KipPerSquareF, "ksf"},
 	{Unit{"%", Percent, 1}, "%|percent|pct"},
 	{Unit{"blows/0.3 m", Blows, 1}, "blows/0.3 m|blows/0.3m|blows/ft|blows/foot|blows/300 mm|blows/300mm|blows/30 cm|blows/30cm|blows|bpf"},
 }

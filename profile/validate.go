@@ -44,9 +44,10 @@ const (
 // Validate returns everything that makes p unfit to be averaged: layers that
 // do not run from ground level downward without gap or overlap, thicknesses
 // and velocities that are not positive and finite, a half-space that is not
-// last or has a velocity gradient, Vp/Vs below MinVpVs, and optional
-// quantities outside their range. Each fault stands at the velocity of its
-// layer. A profile without faults is what the rest of the program assumes.
+// last or has a velocity gradient, Vp/Vs below MinVpVs, velocities where
+// NoVelocity says that there are none, and optional quantities outside their
+// range. Each fault stands at the velocity of its layer. A profile without
+// faults is what the rest of the program assumes.
 func Validate(p *Profile) Faults {
 	v := validator{p: p}
 	if len(p.Layers) == 0 {
@@ -136,6 +137,10 @@ func metres(x float64) string { return fmt.Sprintf("%.9g m", x) }
 // velocities looks at Vs and Vp of layer i.
 func (v *validator) velocities(i int) {
 	l := &v.p.Layers[i]
+	if v.p.NoVelocity {
+		v.noVelocity(l, i)
+		return
+	}
 	ok := v.velocity(l, i, "Vs", l.Vs)
 	if l.VsBottom != 0 {
 		ok = v.velocity(l, i, "Vs at the bottom", l.VsBottom) && ok
@@ -149,6 +154,14 @@ func (v *validator) velocities(i int) {
 	if r := l.vpVs(); r < MinVpVs*(1-vpVsRounding) {
 		v.at(l, "check which column is Vp, and the units of both",
 			"Vp/Vs = %.5g of layer %d is below 1.1547, which no solid can have", r, i+1)
+	}
+}
+
+// noVelocity looks for velocities where the profile states that there are
+// none.
+func (v *validator) noVelocity(l *Layer, i int) {
+	if l.Vs != 0 || l.VsBottom != 0 || l.Has(GivenVp) {
+		v.at(l, "", "layer %d states a velocity in a profile without velocities", i+1)
 	}
 }
 

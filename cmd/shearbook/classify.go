@@ -162,12 +162,13 @@ func tooShort(p *profile.Profile, code *siteclass.Code, err error) profile.Fault
 			at.Line, at.Column = int(p.Layers[n-1].Line), int(p.Layers[n-1].Column)
 		}
 	}
-	text := err.Error()
+	text, hint := err.Error(), ""
 	var short *vs30.ShortError
 	if errors.As(err, &short) {
 		text = fmt.Sprintf("profile %q reaches %.4g m below ground level; %s needs %.4g m", p.Name, short.Reached, code.ID, short.Needed)
+		hint = "add --extend constant-velocity if the lowest velocity may be taken to continue, or survey deeper"
 	}
-	return profile.Faultf(at, "add --extend constant-velocity if the lowest velocity may be taken to continue, or survey deeper", "%s", text)
+	return profile.Faultf(at, hint, "%s", text)
 }
 
 // writeDecision lays one answer out for the terminal.
@@ -188,7 +189,7 @@ func (s streams) writeDecision(b *strings.Builder, c classified) {
 	}
 	line("reached", lengths(c.profile.DepthReached())+"; velocities "+d.Basis)
 	if d.Margin != nil {
-		line("next", fmt.Sprintf("class %s at %.4g %s: the average would be %s", d.Margin.ToClass, d.Margin.Bound, d.Margin.Unit, notebook.MarginText(d.Margin)))
+		line("next", fmt.Sprintf("class %s at %.4g %s: %s would be %s", d.Margin.ToClass, d.Margin.Bound, d.Margin.Unit, notebook.MarginOf(d.Margin), notebook.MarginText(d.Margin)))
 	}
 	line("standing", d.Standing.String())
 	b.WriteString("  steps\n")

@@ -139,19 +139,21 @@ func allCodes(own []codeFile) []*siteclass.Code {
 	return all
 }
 
-// listCodes is one line a code.
+// listCodes is two lines a code: what it is, and how it classifies.
 func listCodes(all []*siteclass.Code) string {
-	g := grid{wraps: 1, rows: [][]string{{"ID", "Edition", "Parameter", "Depth", "Standing"}}}
+	var b strings.Builder
 	for _, c := range all {
-		g.rows = append(g.rows, []string{c.ID, c.Edition, c.Parameter, c.DepthText, c.Standing.String()})
+		indent := strings.Repeat(" ", 15)
+		fmt.Fprintf(&b, "%s%s\n", pad(c.ID, len(indent)), wrap(c.Edition+"; "+c.Clause+", "+c.Table, width-len(indent), indent))
+		fmt.Fprintf(&b, "%s%s\n", indent, wrap(c.Parameter+" over "+c.DepthText+"; datum: "+c.Datum.String()+"; standing: "+c.Standing.String(), width-len(indent), indent))
 	}
-	return g.String()
+	return b.String()
 }
 
 // describe is one code with its table.
 func (s streams) describe(c *siteclass.Code) string {
 	var b strings.Builder
-	fmt.Fprintf(&b, "%s\n", s.bold(wrap(c.ID+": "+c.Edition, width, "  ")))
+	fmt.Fprintf(&b, "%s\n", s.bold(wrap(c.ID+": "+c.Edition, width-2, "  ")))
 	line := func(label, text string) {
 		if text != "" {
 			fmt.Fprintf(&b, "  %s%s\n", pad(label, 11), wrap(text, width-13, strings.Repeat(" ", 13)))

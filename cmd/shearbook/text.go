@@ -10,8 +10,9 @@ import (
 // width is the width of the terminal in columns that output is laid out for.
 const width = 80
 
-// wrap breaks text into lines of at most n columns, all but the first behind
-// indent. A word that is longer stands on a line of its own.
+// wrap breaks text into lines of at most n columns. All but the first come
+// behind indent, which does not count. A word that is longer stands on a line
+// of its own.
 func wrap(text string, n int, indent string) string {
 	var b strings.Builder
 	column := 0
@@ -21,7 +22,7 @@ func wrap(text string, n int, indent string) string {
 		case i == 0:
 		case column+1+length > n:
 			b.WriteString("\n" + indent)
-			column = columns(indent)
+			column = 0
 		default:
 			b.WriteByte(' ')
 			column++

@@ -133,10 +133,22 @@ func yesNo(b bool) string {
 // marginSentence says how far the average is from another class.
 func (ev *evaluation) marginSentence(d siteclass.Decision) *report.Paragraph {
 	if d.Margin == nil {
-		return para("The class does not hang on a bound of the average velocity.")
+		return para("The class does not hang on one bound.")
 	}
 	return para("The nearest bound at which the class changes is " + shortest(d.Margin.Bound, 3) + " " + d.Margin.Unit +
-		", to class " + d.Margin.ToClass + ": the average would have to be " + MarginText(d.Margin) + ".")
+		", to class " + d.Margin.ToClass + ": " + MarginOf(d.Margin) + " would have to be " + MarginText(d.Margin) + ".")
+}
+
+// MarginOf says what would have to change: the average, or what a code
+// compares instead.
+func MarginOf(m *siteclass.Margin) string {
+	switch m.Unit {
+	case profile.MetrePerSecond.Name, profile.FootPerSecond.Name:
+		return "the average"
+	case "s":
+		return "the period"
+	}
+	return "the value compared"
 }
 
 // MarginText says by how much the average would have to change:

@@ -111,7 +111,11 @@ func (ev *evaluation) decide(s *site, code *siteclass.Code, at profile.Place) (s
 	d, err := ev.classify(s, code)
 	if err != nil {
 		s.refused[code.ID] = true
-		ev.add(at, shortHint, "%s: %s", code.ID, ev.shortText(s, err))
+		hint := ""
+		if errors.As(err, new(*vs30.ShortError)) {
+			hint = shortHint
+		}
+		ev.add(at, hint, "%s: %s", code.ID, ev.shortText(s, err))
 		return d, false
 	}
 	s.decisions[code.ID] = d

@@ -136,9 +136,9 @@ func count(n int, single, many string) string {
 
 func marginField(d siteclass.Decision) string {
 	if d.Margin == nil {
-		return "does not hang on the average"
+		return "does not hang on one bound"
 	}
-	return d.Margin.ToClass + ", if the average were " + MarginText(d.Margin) + " (bound " +
+	return d.Margin.ToClass + ", if "+MarginOf(d.Margin)+" were " + MarginText(d.Margin) + " (bound " +
 		shortest(d.Margin.Bound, 3) + " " + d.Margin.Unit + ")"
 }
 

@@ -101,7 +101,9 @@ func (m *mapping) at(n *yaml.Node) profile.Place {
 // get returns the value of a key, nil if the mapping has none, and marks the
 // key as known.
 func (m *mapping) get(key string) *yaml.Node {
-	m.known = append(m.known, key)
+	if !slices.Contains(m.known, key) {
+		m.known = append(m.known, key)
+	}
 	if m.node == nil {
 		return nil
 	}

@@ -1,6 +1,11 @@
 package siteclass
 
-import "shearbook/profile"
+import (
+	"slices"
+	"strings"
+
+	"shearbook/profile"
+)
 
 // asce7_22 returns ASCE/SEI 7-22, chapter 20, which is also the site
 // classification of the 2020 NEHRP provisions (FEMA P-2082).
@@ -69,11 +74,12 @@ func asce7_22() *Code {
 				Bars:   []string{"A", "B"}, FromFoundation: true},
 		},
 
+		Default: "the envelope of the spectra of C, CD and D at each period, unless the authority or the ground says DE, E or F (11.4.2.1, from memory)",
+
 		Notes: []string{
 			"the table gives velocities only; penetration and strength count through a correlation for velocity and 20.3",
 			"the upper bound of each class is printed as its own, so no value is in two classes or in none",
 			"without a measured profile the classes of v̄s, 1.3·v̄s and v̄s/1.3 are all looked at and the most critical governs at each period (20.3; one source)",
-			"where data are lacking the default is the envelope of C, CD and D at each period, unless the authority or the ground says DE, E or F (11.4.2.1, from memory)",
 			"class A asks for measured velocities; what is taken for rock that was not measured is not settled here",
 			"data that end between 50 and 100 ft may be carried down by the last velocity where no softer layer is to be expected; above 50 ft the default classes apply (20.3, from memory)",
 			"which class follows where A or B is barred is not printed",
@@ -92,8 +98,9 @@ func decideASCE7_22(c *Code, s Site) (Decision, error) {
 	}
 	r.shallowData()
 	r.ground()
+	byTable := !r.settled()
 	r.table()
-	r.spread()
+	r.spread(byTable)
 	return r.finish(), nil
 }
 
@@ -115,14 +122,29 @@ func (r *ruling) shallowData() {
 	r.use(FromMemory, "the rule for data that end above 100 ft (20.3)")
 }
 
-// spread notes the classes of v̄s, 1.3·v̄s and v̄s/1.3 where the velocities are
-// correlated.
-func (r *ruling) spread() {
+// spread lists the classes of 1.3·v̄s, v̄s and v̄s/1.3 where the velocities are
+// correlated: the code then takes the most critical of their spectra at each
+// period, which is not that of one class (20.3, one source).
+func (r *ruling) spread(byTable bool) {
 	const factor = 1.3
 	if !r.noted("correlated") {
 		return
 	}
-	fast, slow := r.velocity*factor, r.velocity/factor
-	r.note("correlated-classes", "v̄s of %s is class %s; 1.3·v̄s of %s is class %s; v̄s/1.3 of %s is class %s; the decision is for v̄s alone",
-		r.speed(r.velocity), r.classAt(r.velocity), r.speed(fast), r.classAt(fast), r.speed(slow), r.classAt(slow))
+	v, fast, slow := r.velocity, r.velocity*factor, r.velocity/factor
+	var all []string
+	for _, class := range [...]string{r.classAt(fast), r.classAt(v), r.classAt(slow)} {
+		if !slices.Contains(all, class) {
+			all = append(all, class)
+		}
+	}
+	what := "one class throughout"
+	if len(all) > 1 {
+		what = "the governing spectrum is the envelope of those of " + strings.Join(all, ", ") + ", the most critical at each period, and that of no single class"
+		if byTable {
+			r.d.Classes = all
+		}
+	}
+	r.note("correlated-classes", "v̄s of %s is class %s; 1.3·v̄s of %s is class %s; v̄s/1.3 of %s is class %s: %s (20.3)",
+		r.speed(v), r.classAt(v), r.speed(fast), r.classAt(fast), r.speed(slow), r.classAt(slow), what)
+	r.rest(OneSource, "the classes of correlated velocities (20.3)")
 }

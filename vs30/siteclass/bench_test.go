@@ -19,7 +19,7 @@ func twenty() []profile.Layer {
 // TestNumericCoreDoesNotAllocate: average and row of the table together.
 func TestNumericCoreDoesNotAllocate(t *testing.T) {
 	layers := twenty()
-	for _, c := range All() {
+	for _, c := range columned() {
 		row := -2
 		allocs := testing.AllocsPerRun(100, func() {
 			v, err := vs30.Average(layers, 0, c.Depth)
@@ -36,7 +36,7 @@ func TestNumericCoreDoesNotAllocate(t *testing.T) {
 
 func BenchmarkAverageAndLookup(b *testing.B) {
 	layers := twenty()
-	for _, c := range All() {
+	for _, c := range columned() {
 		b.Run(c.ID, func(b *testing.B) {
 			b.ReportAllocs()
 			for b.Loop() {
@@ -50,7 +50,7 @@ func BenchmarkAverageAndLookup(b *testing.B) {
 }
 
 func BenchmarkLookup(b *testing.B) {
-	for _, c := range All() {
+	for _, c := range columned() {
 		b.Run(c.ID, func(b *testing.B) {
 			b.ReportAllocs()
 			for b.Loop() {
@@ -64,7 +64,7 @@ func BenchmarkLookup(b *testing.B) {
 
 func BenchmarkDecide(b *testing.B) {
 	site := siteOf(twenty()...)
-	for _, c := range All() {
+	for _, c := range timed() {
 		b.Run(c.ID, func(b *testing.B) {
 			b.ReportAllocs()
 			for b.Loop() {

@@ -37,14 +37,12 @@ func (c *Code) byRoutes(s Site) (Decision, error) {
 // by goes one route.
 func (c *Code) by(route *Route, s Site) (Decision, error) {
 	switch {
-	case route.has(AverageVs):
-		d, err := c.byVelocity(s)
-		if err == nil && d.Route == velocityRoute.Name {
-			d.Route = route.Name
-		}
-		return d, err
+	case route.has(AverageVs) && !s.timed():
+		return Decision{}, c.noVelocity()
 	case route.decide != nil:
 		return route.decide(c, s)
+	case route.has(AverageVs):
+		return c.byVelocity(s)
 	case !s.tested():
 		return Decision{}, errors.New("the profile states neither N nor su")
 	}
@@ -52,22 +50,28 @@ func (c *Code) by(route *Route, s Site) (Decision, error) {
 }
 
 // choose returns the index of the answer that decides. Where no route can be
-// gone, the error says why of each; where there are velocities, why they do
-// not do.
+// gone the error says why of each; where there are velocities but none of
+// their routes can be, why not: N and su do not take their place unsaid.
 func (c *Code) choose(answers []answer, s Site) (int, error) {
 	if s.Route != "" {
 		return c.asked(answers, s.Route)
 	}
-	best := -1
-	for i, a := range answers {
-		if a.err == nil && (best < 0 || c.before(&a, &answers[best])) {
+	best, timed := -1, false
+	var slip error // of the last route by velocity
+	for i := range answers {
+		a := &answers[i]
+		switch {
+		case a.err == nil && (best < 0 || c.before(a, &answers[best])):
 			best = i
+		case a.err != nil && a.route.has(AverageVs):
+			slip = a.err
 		}
-		if a.err != nil && a.route.has(AverageVs) && s.timed() {
-			return 0, a.err
-		}
+		timed = timed || a.err == nil && a.route.has(AverageVs)
 	}
-	if best < 0 {
+	switch {
+	case slip != nil && !timed && s.timed():
+		return 0, c.named(slip)
+	case best < 0:
 		return 0, c.noRoute(answers)
 	}
 	return best, nil
@@ -147,7 +151,7 @@ func why(a, chosen *answer) string {
 	case a.route.Rank > chosen.route.Rank:
 		return chosen.decision.Route + " goes first"
 	case a.route.Rank == chosen.route.Rank:
-		return "the softer class governs"
+		return "of routes side by side the softer class is taken"
 	}
 	return "the route was chosen"
 }

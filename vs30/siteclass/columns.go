@@ -14,6 +14,7 @@ type gauge struct {
 	value     float64 // in unit
 	unit      profile.Unit
 	thickness float64 // m of the layers that it is the average of
+	class     string  // that a rule of the code gives it; "" where the column does
 }
 
 // decideByColumns is the ordinary rule of a route without velocity: each of
@@ -46,7 +47,7 @@ func (r *ruling) gaugeAll(route *Route) error {
 			return err
 		}
 		r.sayTally(&t)
-		r.gauges = append(r.gauges, gauge{m, t.average(), c.unitOf(m), t.thickness})
+		r.gauges = append(r.gauges, gauge{m, t.average(), c.unitOf(m), t.thickness, ""})
 	}
 	if len(r.gauges) == 0 {
 		return r.fault(&tally{measure: route.Measures[0]})
@@ -128,6 +129,9 @@ func (r *ruling) byColumn(i int) {
 
 // gaugeClass returns the class that a value in place of average i gives.
 func (r *ruling) gaugeClass(i int, v float64) string {
+	if class := r.gauges[i].class; class != "" {
+		return class
+	}
 	if row := r.code.LookupIn(r.gauges[i].measure, v); row >= 0 {
 		return r.code.Bands[row].Class
 	}

@@ -82,7 +82,7 @@ func TestYesOrNoConditions(t *testing.T) {
 			}
 		}
 	}
-	if seen != 3*4+2 { // EN 1998-1 has no collapsible soil, NTC 2018 none of them
+	if seen != 3*4+2+3*3+2*2+14*3 { // EN 1998-1, NTC 2008 and BNBC have no collapsible soil, NTC 2018, AASHTO 2011 and E.030 none of them
 		t.Errorf("%d conditions seen", seen)
 	}
 }

@@ -13,7 +13,8 @@ type Criterion struct {
 // Property is what a criterion limits.
 type Property uint8
 
-// The properties. The last four are taken from the profile.
+// The properties. Those of the cover and the stiff ground are taken from the
+// profile.
 const (
 	Thickness       Property = iota // of a deposit, in all
 	PlasticityIndex                 // PI
@@ -22,10 +23,11 @@ const (
 	CoverThickness                  // of the ground above the stiff ground
 	CoverVelocity                   // time-averaged, of the ground above the stiff ground
 	StiffVelocity                   // slowest, of the stiff ground
+	LiquidLimit                     // LL; no site states it
 )
 
 var propertyWords = [...]string{"total thickness", "plasticity index", "water content", "undrained strength",
-	"thickness above the stiff ground", "average velocity above the stiff ground", "velocity of the stiff ground"}
+	"thickness above the stiff ground", "average velocity above the stiff ground", "velocity of the stiff ground", "liquid limit"}
 
 // String returns the words of the property.
 func (p Property) String() string { return propertyWords[p] }

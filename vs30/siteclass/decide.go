@@ -26,7 +26,7 @@ func (c *Code) Decide(s Site) (Decision, error) {
 	if err := s.check(); err != nil {
 		return Decision{}, fmt.Errorf("%s: %w", c.ID, err)
 	}
-	if s.Route == "" && (len(c.Routes) == 0 || !s.tested()) && c.routes()[0].has(AverageVs) {
+	if s.Route == "" && c.Needs < 2 && (len(c.Routes) == 0 || !s.tested()) && c.routes()[0].has(AverageVs) {
 		return c.byVelocity(s)
 	}
 	return c.byRoutes(s)

@@ -12,7 +12,7 @@ type Decision struct {
 	Class      string
 	Row        string   // class of the row of the table that Class belongs to; another than Class only where the code makes its own designation (X361, in the row of XC)
 	Classes    []string // every class that results where the code looks at several at once, stiffest first; nil where Class is the only one
-	Route      string   // "velocity", "N", "Nch and su", "Nch", "su"; what the code's Routes name
+	Route      string   // "velocity", "N", "Nch and su", "Nch", "su"; what the code's Routes name; "period" where the rules took the site period
 	Thickness  float64  // m over which Velocity is the average, or to which the layers of another route go
 	Velocity   float64  // m/s; 0 on a route that does not average it
 	Datum      float64  // m below ground level from which the average is taken

@@ -35,6 +35,9 @@ var materialWords = map[string]material{
 // materialOf returns the material that the description of a layer names
 // first: cohesive for "silty clay", sandy for "sand with clay".
 func materialOf(l *profile.Layer) material {
+	if l.Soil == "" {
+		return unstated
+	}
 	for word := range wordsOf(l.Soil) {
 		if m := materialWords[word]; m != unstated {
 			return m
@@ -45,6 +48,9 @@ func materialOf(l *profile.Layer) material {
 
 // says reports whether the description of a layer has one of the words.
 func says(l *profile.Layer, words ...string) bool {
+	if l.Soil == "" {
+		return false
+	}
 	for word := range wordsOf(l.Soil) {
 		if slices.Contains(words, word) {
 			return true

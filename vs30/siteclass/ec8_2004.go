@@ -64,6 +64,16 @@ func ec8_2004() *Code {
 				Bars:   []string{"A"}},
 		},
 
+		Routes: []Route{
+			{Name: "velocity", Measures: []Measure{AverageVs}, Rank: 1, Clause: "3.1.2(2)", Standing: FromMemory},
+			{Name: "N", Measures: []Measure{AverageN}, Rank: 2, Clause: "3.1.2(2)", Standing: FromMemory},
+			{Name: "Nch and su", Measures: []Measure{AverageNch, AverageSu}, Rank: 3, Clause: "Table 3.1", Standing: FromMemory},
+		},
+		Averaging: Averaging{
+			N: "NSPT", Nch: "NSPT", Su: "cu",
+			Clause: "Table 3.1", Standing: FromMemory, Unstated: true,
+		},
+
 		Notes: []string{
 			"360 m/s is printed in both B and C; the softer, C, is taken, by analogy with N and cu, whose shared values sit in the softer type; much practice takes B",
 			"A is strictly above 800 m/s and D strictly below 180 m/s, so 800 is B and 180 is C",
@@ -174,15 +184,16 @@ func (r *ruling) mixedCover(e *Condition, cov cover) {
 // unlisted notes ground over rock for which the print has no type of its own
 // and vs,30 decides.
 func (r *ruling) unlisted(e *Condition, cov cover) {
-	if !cov.found || cov.thickness() == 0 || r.d.Class == "A" || r.noted("rock-barred") {
+	if !cov.found || cov.thickness() == 0 || r.d.Class == r.code.Bands[0].Class || r.noted("rock-barred") {
 		return
 	}
 	slow, _ := e.limitOn(CoverVelocity)
-	what := "ground faster than that of C"
+	what := "ground faster than"
 	if slow.Range.Contains(cov.average(r.layers) / slow.Unit.Factor) {
-		what = "ground of C or D velocities"
+		what = "ground no faster than"
 	}
-	r.note("no-own-type", "%s of %s over vs > 800 m/s has no type of its own in the print; vs,30 decides", r.length(cov.thickness()), what)
+	r.note("no-own-type", "%s of %s %s over more than 800 m/s has no type of its own in the print; %s decides",
+		r.length(cov.thickness()), what, withUnit(slow.Range.Upper.Value, slow.Unit), r.code.Parameter)
 }
 
 // condition returns the code's condition of that ID.

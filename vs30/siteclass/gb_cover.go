@@ -125,10 +125,9 @@ func (r *ruling) slowestRock(top float64) float64 {
 // hardInside notes a layer faster than 500 m/s inside the cover that is
 // described as neither a boulder nor a volcanic interlayer.
 func (r *ruling) hardInside(bottom float64) {
-	hard := r.code.term("hard")
 	for i := range r.layers {
 		l := &r.layers[i]
-		if l.Bottom > r.datum && l.Top < bottom && hard.Range.Contains(min(l.Vs, l.VsAt(l.Bottom))/hard.Unit.Factor) {
+		if l.Bottom > r.datum && l.Top < bottom && r.isHard(l) {
 			r.note("hard-interlayer", "ground of %s at %s lies inside the cover and counts with its velocity; were it a boulder or lens it would count as the soil around it, were it a hard volcanic interlayer it would be taken out (4.1.4-3 and -4)",
 				quantity(l.Vs, r.code.Unit), r.length(l.Top))
 			return
@@ -140,38 +139,51 @@ func (r *ruling) hardInside(bottom float64) {
 // hard volcanic interlayers out, moving what lies below them up. Both are
 // known by their description alone.
 func (r *ruling) takeOut() {
-	hard := r.code.term("hard")
-	var layers []profile.Layer // nil until something changes
+	if !slices.ContainsFunc(r.layers, func(l profile.Layer) bool { return says(&l, hardWords...) }) {
+		return
+	}
+	var layers []profile.Layer
 	up := 0.0
 	for i := range r.layers {
 		l := r.layers[i]
-		fast := hard.Range.Contains(min(l.Vs, l.VsAt(l.Bottom)) / hard.Unit.Factor)
-		boulder := fast && says(&l, "boulder", "boulders", "lens")
-		volcanic := fast && !boulder && says(&l, "volcanic") && slowest(r.layers, l.Bottom, math.Inf(1)) < hard.lower()
-		if layers == nil && (boulder || volcanic) {
-			layers = slices.Clone(r.layers[:i])
-		}
 		switch {
-		case volcanic:
+		case r.isVolcanic(&l):
 			up += l.Thickness()
 			r.note("volcanic-interlayer", "the %s at %s are a hard volcanic interlayer by their description and are taken out of the cover (4.1.4-4)",
 				r.length(l.Thickness()), r.length(l.Top))
 			r.use(OneSource, "hard volcanic interlayers are taken out of the cover (4.1.4-4)")
 			continue
-		case boulder:
+		case r.isBoulder(&l):
 			l.Vs, l.VsBottom = r.around(i), 0
 			r.note("boulder", "the %s at %s are a boulder or lens by their description and count as the soil around them, %s (4.1.4-3)",
 				r.length(l.Thickness()), r.length(l.Top), quantity(l.Vs, r.code.Unit))
 			r.use(OneSource, "boulders and lenses count as the soil around them (4.1.4-3)")
 		}
-		if layers != nil {
-			l.Top, l.Bottom = l.Top-up, l.Bottom-up
-			layers = append(layers, l)
-		}
+		l.Top, l.Bottom = l.Top-up, l.Bottom-up
+		layers = append(layers, l)
 	}
-	if len(layers) > 0 {
-		r.layers = layers
-	}
+	r.layers = layers
+}
+
+// hardWords describe boulders, lenses and volcanic interlayers.
+var hardWords = []string{"boulder", "boulders", "lens", "volcanic"}
+
+// isBoulder reports whether a layer is a hard boulder or lens.
+func (r *ruling) isBoulder(l *profile.Layer) bool {
+	return r.isHard(l) && says(l, "boulder", "boulders", "lens")
+}
+
+// isVolcanic reports whether a layer below the datum is a hard volcanic
+// interlayer: with ground below that is not hard.
+func (r *ruling) isVolcanic(l *profile.Layer) bool {
+	return l.Top >= r.datum && r.isHard(l) && says(l, "volcanic") && !says(l, "boulder", "boulders", "lens") &&
+		slowest(r.layers, l.Bottom, math.Inf(1)) < r.code.term("below-hard").lower()
+}
+
+// isHard reports whether a layer is faster than 500 m/s throughout.
+func (r *ruling) isHard(l *profile.Layer) bool {
+	hard := r.code.term("hard")
+	return hard.Range.Contains(min(l.Vs, l.VsAt(l.Bottom)) / hard.Unit.Factor)
 }
 
 // around returns the velocity in m/s of the slower neighbour of layer i; its

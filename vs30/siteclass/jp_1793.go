@@ -20,7 +20,7 @@ func jp1793() *Code {
 		Table:     "table of ground types",
 		Source:    "Notification No. 1793 (1980), section 2, for the types; its commentary for Tg and its limits",
 		Parameter: "Tg",
-		DepthText: "the ground between the foundation and the base layer",
+		DepthText: "soil above the base",
 		Datum:     DatumFoundation,
 		DatumNote: "directly below the footing, or at the bearing level of stiff piles",
 		Unit:      profile.MetrePerSecond,

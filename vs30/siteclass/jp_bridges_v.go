@@ -14,7 +14,7 @@ func jpBridgesV() *Code {
 		Table:     "table of ground types",
 		Source:    "Specifications for Highway Bridges, Part V (Japan Road Association); the limits of TG from one source, formula and base layer from two",
 		Parameter: "TG",
-		DepthText: "the ground above the base surface for seismic design",
+		DepthText: "soil above the base",
 		Datum:     DatumGround,
 		Unit:      profile.MetrePerSecond,
 		Length:    profile.Metre,

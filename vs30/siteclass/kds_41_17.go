@@ -16,7 +16,7 @@ func kds41_17() *Code {
 		Source:    "KDS 41 17 00:2022 chapter 4, read in full; the class limits: Cho, Manandhar and Kim, EESK Journal 20(4), 2016; J. Korean Geotech. Soc. 38(8), 2022, doi 10.7843/kgs.2022.38.8.53",
 		Parameter: "Vs,soil",
 		Depth:     30,
-		DepthText: "the soil above bedrock, at most 30 m",
+		DepthText: "soil, at most 30 m",
 		Datum:     DatumGround,
 		DatumNote: "the ground surface after completion of the building (4.1.3)",
 		Unit:      profile.MetrePerSecond,
@@ -70,14 +70,17 @@ func kds41_17() *Code {
 				Limits: []Criterion{{Property: Thickness, Range: above(36), Unit: profile.Metre}}},
 		},
 
+		Default:      "where the data are not enough and S5 cannot be, S4 may be used (4.1.1(1)③)",
+		DefaultClass: "S4",
+		Several:      "one representative factor is taken, the mean of the places or the worst; on a steep slope the worst (4.2.3)",
+
 		Notes: []string{
 			"H is the depth of the bedrock, Vs,soil the travel-time mean of the soil above it alone",
 			"20 m is shallow, 260 m/s is S2 and 180 m/s is S4",
 			"KDS 41 17 00 lets bedrock shallower than 3 m be treated as S1, and that is done here; the table of KDS 17 10 00 has 1 m (from memory), and a note says where the two differ",
 			"Vs,soil ≤ 120 m/s makes S5 whatever the depth, and the kinds of ground of S6, are from memory",
 			"KDS 17 10 00 is remembered to put ground whose bedrock is deeper than 50 m into S6 as well; that is not applied here",
-			"where the data are not enough and S5 cannot be, S4 may be used (4.1.1(1)③)",
-			"large buildings, slopes and uneven ground need at least three places explored (4.1.2); on a steep slope the worst of them governs (4.2.3)",
+			"large buildings, slopes and uneven ground need at least three places explored (4.1.2)",
 		},
 		Short:      "where the data are not enough and S5 cannot be, the code lets S4 be used",
 		Correlated: "the clause asks for the mean shear-wave velocity and was not seen to speak of correlated ones",

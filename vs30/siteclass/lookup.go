@@ -11,12 +11,45 @@ import (
 // builders makes each built-in code, one line a file, in the order of All:
 // by ID.
 var builders = []func() *Code{
+	aashto2011,
+	aashto2023,
+	as1170_4,
+	asce7_10,
 	asce7_16,
 	asce7_22,
+	bc3_2013,
+	bnbc2020,
+	ds61,
+	e0302018,
 	ec8_2004,
+	ec8_2024,
+	gb50011_2010,
+	ibc2012,
+	ibc2015,
+	ibc2018,
+	ibc2021,
+	ibc2024,
+	iran2800,
+	is1893_2016,
+	jp1793,
+	jpBridgesV,
+	kds41_17,
+	nbcc2010,
 	nbcc2015,
+	nbcc2020,
+	ncse02,
+	nec2015,
+	nehrp2020,
+	nscp2015,
+	nsr10,
+	ntc2008,
 	ntc2018,
+	nzs1170_5,
+	rpa99,
+	sni1726_2019,
 	tbdy2018,
+	tec2007,
+	ubc97,
 }
 
 // codes holds the built-in codes, ordered by ID. It is never changed.
@@ -47,9 +80,15 @@ func Find(id string) (*Code, error) {
 	return nil, &UnknownError{ID: id, Nearest: nearest(id, ids)}
 }
 
-// nearest returns the ID most like the word, or else the first that begins
-// with it, or "".
+// nearest returns the ID of the same letters in another order, or else the
+// one most like the word, or else the first that begins with it, or "".
 func nearest(word string, ids []string) string {
+	letters := sorted(word)
+	for _, id := range ids {
+		if sorted(id) == letters {
+			return id
+		}
+	}
 	if like := profile.Nearest(word, ids); like != "" || word == "" {
 		return like
 	}
@@ -59,6 +98,13 @@ func nearest(word string, ids []string) string {
 		}
 	}
 	return ""
+}
+
+// sorted returns the letters of a word in their order.
+func sorted(word string) string {
+	letters := []rune(strings.ToLower(word))
+	slices.Sort(letters)
+	return string(letters)
 }
 
 // UnknownError reports an ID that no code has.

@@ -64,10 +64,17 @@ func nbcc2015() *Code {
 				Bars:   []string{"A", "B"}, FromFoundation: true, OwnAverage: true},
 		},
 
+		Routes: nbccRoutes(),
+		Averaging: Averaging{
+			N: "N̄60", Nch: "N̄60", Su: "su", Blow: BlowN60,
+			Clause: "4.1.8.4.", Standing: Checked, Unstated: true,
+		},
+
 		Notes: []string{
 			"velocities of exactly 760, 360 and 180 m/s are in no class as printed, nor is su = 50 kPa; the softer class is taken",
 			"the text has no averaging formula and no default class",
 			"velocity comes first; N60 (corrected for energy) or su where it is not known",
+			"how N60 and su go together in mixed ground is left to rational analysis; here N60 over all layers stands beside N60 over the sand and su over the clay, and the softest class is taken",
 			"liquefiable soil under structures with a period of 0.5 s or less may take the class found as if it did not liquefy",
 			"where A or B is barred the class comes from the average over the whole thickness of the softer material",
 		},
@@ -75,3 +82,7 @@ func nbcc2015() *Code {
 		Correlated: "the text asks for the velocity, or else N60 or su with their own columns, and has no rule for correlated velocities",
 	}
 }
+
+// nbccRoutes are the ways of Article 4.1.8.4.: the velocity, or else N60 or
+// su.
+func nbccRoutes() []Route { return threeWays("4.1.8.4.", Checked) }

@@ -4,7 +4,6 @@ import (
 	"fmt"
 
 	"shearbook/profile"
-	"shearbook/vs30"
 )
 
 // ncse02 returns the Spanish seismic standard NCSE-02, clause 2.4. It puts no
@@ -56,13 +55,6 @@ func ncse02() *Code {
 	}
 }
 
-// stretch is neighbouring ground of one type.
-type stretch struct {
-	band             int
-	top, bottom      float64 // m below ground level
-	slowest, fastest float64 // m/s
-}
-
 // decideNCSE types the ground layer by layer and weights the coefficient.
 func decideNCSE(c *Code, s Site) (Decision, error) {
 	r := begin(c, s)
@@ -70,87 +62,25 @@ func decideNCSE(c *Code, s Site) (Decision, error) {
 		return Decision{}, err
 	}
 	r.ground()
+	typeOf := func(_ *profile.Layer, v float64) int { return c.Lookup(v / c.Unit.Factor) }
 	coefficient := 0.0
-	for _, t := range r.stretches() {
-		b := &c.Bands[t.band]
-		r.typeSteps(b, t)
+	for _, t := range r.stretches(r.bottom(), c.bounds(), typeOf) {
+		b := &c.Bands[t.kind]
+		r.stretchSteps(t, b.Vs, c.Unit, "ground of type "+b.Class, c.Table)
 		r.use(b.Standing, "type %s of %s", b.Class, c.Table)
 		coefficient += c.term(b.Class).upper() * (t.bottom - t.top) / c.Depth
 	}
-	r.weighed(coefficient)
+	r.coefficient(coefficient)
 	return r.finish(), nil
 }
 
-// stretches cuts the averaged ground where its type changes.
-func (r *ruling) stretches() []stretch {
-	var all []stretch
-	for i := range r.layers {
-		l := &r.layers[i]
-		top, bottom := max(l.Top, r.datum), min(l.Bottom, r.bottom())
-		if bottom-top <= vs30.Touching {
-			continue
-		}
-		for _, cut := range r.cuts(l, top, bottom) {
-			all = joined(all, cut)
-		}
-	}
-	return all
-}
-
-// cuts returns the parts of a layer between two depths, cut where a gradient
-// passes a bound of the types.
-func (r *ruling) cuts(l *profile.Layer, top, bottom float64) []stretch {
-	var parts []stretch
-	v0, v1 := l.VsAt(top), l.VsAt(bottom)
-	for z := top; bottom-z > vs30.Touching; {
-		end := bottom
-		for _, b := range r.code.bounds() {
-			if at := top + (bottom-top)*(b*r.code.Unit.Factor-v0)/(v1-v0); v0 != v1 && at-z > vs30.Touching && at < end {
-				end = at
-			}
-		}
-		a, b, middle := l.VsAt(z), l.VsAt(end), l.VsAt((z+end)/2)
-		parts = append(parts, stretch{r.code.Lookup(middle / r.code.Unit.Factor), z, end, min(a, b), max(a, b)})
-		z = end
-	}
-	return parts
-}
-
-// joined adds a part to the stretches, to the last of them where it is of the
-// same type.
-func joined(all []stretch, part stretch) []stretch {
-	if n := len(all); n > 0 && all[n-1].band == part.band {
-		last := &all[n-1]
-		last.bottom, last.slowest, last.fastest = part.bottom, min(last.slowest, part.slowest), max(last.fastest, part.fastest)
-		return all
-	}
-	return append(all, part)
-}
-
-// typeSteps holds the slowest and the fastest ground of a stretch against the
-// bounds of its type. Where a gradient passes a bound the stretch ends at it,
-// and the bound itself is counted with the stretch.
-func (r *ruling) typeSteps(b *Band, t stretch) {
-	text := "ground of type " + b.Class + " from " + r.length(t.top) + " to " + r.length(t.bottom)
-	slow, fast := t.slowest/r.code.Unit.Factor, t.fastest/r.code.Unit.Factor
-	if low := b.Vs.Lower; low.Op != Open {
-		if equal(slow, low.Value) {
-			slow = low.Value * (1 + beside)
-		}
-		r.d.Steps = append(r.d.Steps, newStep(text+", slowest", r.code.Table, slow, low, true, r.code.Unit))
-	}
-	if high := b.Vs.Upper; high.Op != Open {
-		r.d.Steps = append(r.d.Steps, newStep(text+", fastest", r.code.Table, fast, high, false, r.code.Unit))
-	}
-}
-
-// weighed gives the coefficient as the decision's class.
-func (r *ruling) weighed(coefficient float64) {
+// coefficient gives the coefficient as the decision's class.
+func (r *ruling) coefficient(v float64) {
 	spectrum := r.code.term("spectrum")
-	r.d.Found = []Found{{Of: "C", Text: "coefficient of the ground, C", Value: coefficient}}
-	r.termStep(spectrum, coefficient, "coefficient of the ground, C")
-	if spectrum.Range.Contains(coefficient) {
-		r.note("spectrum", "C of %s is more than 1.8; the spectrum may not hold for periods longer than TB (%s)", number(coefficient), spectrum.Clause)
+	r.d.Found = []Found{{Of: "C", Text: "coefficient of the ground, C", Value: v}}
+	r.termStep(spectrum, v, "coefficient of the ground, C")
+	if spectrum.Range.Contains(v) {
+		r.note("spectrum", "C of %s is more than 1.8; the spectrum may not hold for periods longer than TB (%s)", number(v), spectrum.Clause)
 	}
-	r.d.Class = fmt.Sprintf("C = %.2f", coefficient)
+	r.d.Class = fmt.Sprintf("C = %.2f", v)
 }

@@ -83,6 +83,7 @@ func ntc2008() *Code {
 		},
 		Short:      "the rules of 2008 were not seen to speak of profiles that end above 30 m",
 		Correlated: "where VS is not known the rules go to NSPT in coarse and cu in fine soil, and where there are both the worse category is taken (from memory)",
+		Superseded: "the rules of 2008 were superseded by NTC 2018 on 22 March 2018",
 		decide:     decideNTC2008,
 	}
 }

@@ -29,8 +29,8 @@ type Route struct {
 	Clause   string
 	Standing Standing // of the rule that this route may be gone
 
-	// decide replaces the ordinary rule of a route without velocity where the
-	// code's own is not columns.
+	// decide replaces the ordinary rule of the route where the code's own is
+	// another.
 	decide func(*Code, Site) (Decision, error)
 }
 
@@ -59,11 +59,15 @@ func (c *Code) routes() []Route {
 // them: the velocity; else N over all layers, or N over the cohesionless and
 // su over the cohesive layers. The provisions set the last two side by side;
 // here the softer class of them governs.
-func threeWays(clause string, s Standing) []Route {
+func threeWays(clause string, s Standing) []Route { return ways(clause, s, s) }
+
+// ways are the three ways where the last, by Nch and su, has a standing of
+// its own.
+func ways(clause string, s, both Standing) []Route {
 	return []Route{
 		{Name: "velocity", Measures: []Measure{AverageVs}, Rank: 1, Clause: clause, Standing: s},
 		{Name: "N", Measures: []Measure{AverageN}, Rank: 2, Clause: clause, Standing: s},
-		{Name: "Nch and su", Measures: []Measure{AverageNch, AverageSu}, Rank: 2, Clause: clause, Standing: s},
+		{Name: "Nch and su", Measures: []Measure{AverageNch, AverageSu}, Rank: 2, Clause: clause, Standing: both},
 	}
 }
 

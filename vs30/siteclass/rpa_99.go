@@ -19,7 +19,7 @@ func rpa99() *Code {
 		Source:    "RPA 99, version 2003, section 3.3 and Table 3.2, from memory",
 		Parameter: "Vs",
 		Depth:     20,
-		DepthText: "the upper 20 m",
+		DepthText: "20 m",
 		Datum:     DatumUnstated,
 		Unit:      profile.MetrePerSecond,
 		Length:    profile.Metre,
@@ -52,10 +52,11 @@ func rpa99() *Code {
 			"ground of none of the other classes is S4, as the softest, even where its average over 20 m is not below 200 m/s; a note then says so",
 			"the table also has columns for cone and pressuremeter tests, N (about 50 and 10) and strength, which are not carried here",
 			"clause 3.3.3 says what to do where there are no tests; which class it names was not verified",
-			"RPA 2024 was approved on 15 May 2024; its limits are not carried here",
+			"the limits of RPA 2024 are not carried here",
 		},
 		Short:      "the rules were not seen to speak of profiles that end above 20 m",
 		Correlated: "the rules were not seen to speak of correlated velocities",
+		Superseded: "RPA 2024 was approved on 15 May 2024 (one source)",
 		decide:     decideRPA,
 	}
 }
@@ -88,5 +89,5 @@ func (r *ruling) slowestFrom(of string, depth float64) Found {
 	if math.IsInf(v, 1) {
 		v = velocityAt(r.layers, r.datum+depth)
 	}
-	return Found{Of: of, Text: "slowest velocity, " + of, Value: v, Unit: profile.MetrePerSecond.Name}
+	return Found{Of: of, Text: "slowest velocity from " + r.length(depth) + " to " + r.length(r.thickness) + " below the datum", Value: v, Unit: profile.MetrePerSecond.Name}
 }

@@ -159,7 +159,7 @@ func (r *ruling) byRules(found []Found) string {
 		if u.Indicative || !r.follow(u, found) {
 			continue
 		}
-		r.use(u.Standing, "class %s, %s (%s)", u.Class, u, u.clause(r.code))
+		r.rest(u.Standing, "class "+u.Class+" of "+u.clause(r.code))
 		return u.Class
 	}
 	return r.code.Outside

@@ -2,7 +2,6 @@ package siteclass
 
 import (
 	"fmt"
-	"math"
 	"strings"
 
 	"shearbook/profile"
@@ -113,7 +112,7 @@ func (c *Code) count(t *tally, l *profile.Layer, d float64) {
 		v, ok = blowsOf(l)
 		limit = a.NCap
 	}
-	if !ok {
+	if !ok || !(v >= 0) {
 		if t.missing == nil {
 			t.missing = l
 		}
@@ -186,8 +185,6 @@ func (r *ruling) fault(t *tally) error {
 		return fmt.Errorf("the layer from %s to %s states no %s", metres(t.missing.Top), metres(t.missing.Bottom), what)
 	case t.thickness <= 0:
 		return fmt.Errorf("no layer counts for %s", r.code.symbolOf(t.measure))
-	case math.IsNaN(t.sum) || t.sum < 0:
-		return fmt.Errorf("%s is no number; a layer's value is none, or negative", r.code.symbolOf(t.measure))
 	}
 	return nil
 }

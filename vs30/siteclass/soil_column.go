@@ -11,7 +11,7 @@ import (
 // which every velocity, as far down as the profile goes, satisfies the
 // term's lower bound.
 func (r *ruling) groundAbove(t *Term) cover {
-	return coverAbove(r.layers, r.datum, math.Inf(1), t.Range.Lower, t.Unit)
+	return coverAbove(r.layers, r.datum, 2*profile.MaxDepth, t.Range.Lower, t.Unit)
 }
 
 // averageAbove averages over the ground above the rock, over no more than
@@ -95,6 +95,10 @@ var quarterWave = columnPeriod{
 	carry: func(t, depth, v, enough float64) float64 { return depth + (enough-t)*v/4 },
 }
 
+// passing is how far, in parts of it, ground that goes on below a profile is
+// followed to be beyond the last bound of a code and not at it.
+const passing = 1.01
+
 // soilColumn is the ground whose period gives the class.
 type soilColumn struct {
 	thickness float64 // m, from the datum
@@ -125,7 +129,6 @@ func (r *ruling) columnToBase(base *Term, last float64, formula columnPeriod) (s
 	if err != nil || c.period > last*(1+beside) {
 		return c, err
 	}
-	const passing = 1.01 // of the last bound: beyond it, not at it
 	enough := formula.carry(c.period, c.thickness, v, last*passing)
 	if end.HalfSpace() {
 		return r.columnDown(enough, formula, true)

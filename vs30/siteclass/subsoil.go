@@ -78,7 +78,7 @@ func (r *ruling) subsoil(rock *Term) []Found {
 		return found
 	}
 	return append(found,
-		Found{Of: soilOnRock, Text: "soil above the first ground of " + rock.Text, Value: cover{from: r.datum, bottom: top}.thickness(), Unit: profile.Metre.Name},
+		Found{Of: soilOnRock, Text: "soil above " + rock.Text, Value: cover{from: r.datum, bottom: top}.thickness(), Unit: profile.Metre.Name},
 		Found{Of: underlying, Text: "slowest velocity below that", Value: slowest(r.layers, top, math.Inf(1)), Unit: profile.MetrePerSecond.Name})
 }
 

@@ -64,11 +64,18 @@ func tbdy2018() *Code {
 				Bars:   []string{"ZA", "ZB"}, FromFoundation: true},
 		},
 
+		Routes: threeWays("16.4", FromMemory),
+		Averaging: Averaging{
+			N: "(N60)30", Nch: "(N60)30", Su: "(cu)30", Blow: BlowN60,
+			Clause: "Eq. (16.2)", Standing: OneSource,
+		},
+
 		Notes: []string{
 			"at 760 and at 360 m/s two printed ranges meet and neither is said to own the value; the softer class is taken",
 			"class ZA is strictly above 1500 m/s and class ZE strictly below 180 m/s, so 1500 is ZB and 180 is ZD",
 			"the bar on ZA and ZB is written for shallow foundations; the kind of foundation is not asked here and the bar is applied",
 			"the soft clay of ZE needs w > 40 %, where the NEHRP provisions have w ≥ 40 %",
+			"(N60)30 and (cu)30 are harmonic averages; how they go together in mixed ground was not read: here (N60)30 over all layers stands beside (N60)30 over the sand and (cu)30 over the clay, and the softest class is taken",
 			"which class follows where ZA or ZB is barred is not printed; there is no default class",
 		},
 		Short:      "the code says nothing of explorations that end above 30 m",
