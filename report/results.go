@@ -28,8 +28,8 @@ type Result struct {
 	Class        string           `json:"class"`
 	Route        string           `json:"route"`
 	Depth        float64          `json:"depth_m"`         // thickness over which velocity_mps is averaged
-	VelocitySI   float64          `json:"velocity_mps"`    // the average that the code uses
-	Velocity     Quantity         `json:"velocity"`        // the same in the code's unit
+	VelocitySI   *float64         `json:"velocity_mps"`    // the average that the code uses; null on a route that averages none
+	Velocity     *Quantity        `json:"velocity"`        // the same in the code's unit
 	Vs30         *float64         `json:"vs30_mps"`        // over 30 m below the same datum; null where the profile is too short
 	DepthReached float64          `json:"depth_reached_m"` // by the survey, below ground level
 	Datum        float64          `json:"datum_m"`         // below ground level
@@ -39,6 +39,27 @@ type Result struct {
 	Steps        []siteclass.Step `json:"steps"`
 	Notes        []Note           `json:"notes"`
 	Unassessed   []string         `json:"unassessed"`
+
+	Classes  []string      `json:"classes,omitempty"`  // every class that results where the code looks at several at once
+	Averages []Average     `json:"averages,omitempty"` // what was held against the table, on a route by N or su
+	Found    []Quantity    `json:"found,omitempty"`    // what was held against the code's rules beside the average
+	Others   []Alternative `json:"others,omitempty"`   // the other routes that the data allow
+}
+
+// Average is an average that a decision held against a column of the table.
+type Average struct {
+	Symbol    string  `json:"symbol"`
+	Value     float64 `json:"value"`
+	Unit      string  `json:"unit"`
+	Thickness float64 `json:"thickness_m"`
+	Class     string  `json:"class"` // that it gives by itself
+}
+
+// Alternative is what a route gives that did not decide.
+type Alternative struct {
+	Route    string    `json:"route"`
+	Class    string    `json:"class"`
+	Averages []Average `json:"averages"`
 }
 
 // Source is the file a profile was read from.
@@ -49,6 +70,7 @@ type Source struct {
 
 // Quantity is a number with its unit.
 type Quantity struct {
+	Of    string  `json:"of,omitempty"` // what it is, where its place does not say
 	Value float64 `json:"value"`
 	Unit  string  `json:"unit"`
 }
@@ -77,8 +99,6 @@ func NewResult(p *profile.Profile, d siteclass.Decision, vs30 *float64) Result {
 		Class:        d.Class,
 		Route:        d.Route,
 		Depth:        d.Thickness,
-		VelocitySI:   d.Velocity,
-		Velocity:     Quantity{d.Velocity / d.Code.Unit.Factor, d.Code.Unit.Name},
 		Vs30:         vs30,
 		DepthReached: p.DepthReached(),
 		Datum:        d.Datum,
@@ -87,6 +107,19 @@ func NewResult(p *profile.Profile, d siteclass.Decision, vs30 *float64) Result {
 		Steps:        d.Steps,
 		Notes:        []Note{},
 		Unassessed:   d.Unassessed,
+		Classes:      d.Classes,
+	}
+	if d.Velocity > 0 {
+		r.VelocitySI = &d.Velocity
+		r.Velocity = &Quantity{Value: d.Velocity / d.Code.Unit.Factor, Unit: d.Code.Unit.Name}
+	} else {
+		r.Averages = averages(d.Averages)
+	}
+	for _, f := range d.Found {
+		r.Found = append(r.Found, Quantity{f.Of, f.Value, f.Unit})
+	}
+	for _, o := range d.Others {
+		r.Others = append(r.Others, Alternative{o.Route, o.Class, averages(o.Averages)})
 	}
 	if p.Reading != nil {
 		r.Source = Source{p.Reading.File, p.Reading.SHA256}
@@ -105,6 +138,14 @@ func NewResult(p *profile.Profile, d siteclass.Decision, vs30 *float64) Result {
 		r.Unassessed = []string{}
 	}
 	return r
+}
+
+func averages(of []siteclass.Average) []Average {
+	out := []Average{}
+	for _, a := range of {
+		out = append(out, Average{a.Symbol, a.Value, a.Unit, a.Thickness, a.Class})
+	}
+	return out
 }
 
 // WriteResults writes results as indented JSON with a final newline.

@@ -183,11 +183,28 @@ func (s streams) writeDecision(b *strings.Builder, c classified) {
 		fmt.Fprintf(b, "  %s%s\n", pad(label, 10), wrap(text, width-12, strings.Repeat(" ", 12)))
 	}
 	line("code", d.Code.ID+": "+d.Code.Edition+", "+d.Code.Table)
-	line("average", fmt.Sprintf("%s over %s %s", velocities(d.Velocity), lengths(d.Thickness), below(d.Datum)))
+	if len(d.Classes) > 1 {
+		line("classes", strings.Join(d.Classes, ", ")+": the governing spectrum is the envelope of theirs")
+	}
+	if d.Velocity > 0 {
+		line("average", fmt.Sprintf("%s over %s %s", velocities(d.Velocity), lengths(d.Thickness), below(d.Datum)))
+	}
+	for _, a := range d.Averages {
+		if d.Velocity == 0 {
+			line("average", fmt.Sprintf("%s = %.1f %s over %s", a.Symbol, a.Value, a.Unit, lengths(a.Thickness)))
+		}
+	}
+	for _, f := range d.Found {
+		more := map[bool]string{true: "more than "}[f.AtLeast]
+		line(f.Of, fmt.Sprintf("%s%.4g %s: %s", more, f.Value, f.Unit, f.Text))
+	}
+	for _, o := range d.Others {
+		line("also", "class "+o.Class+" by "+o.Route)
+	}
 	if c.vs30 != nil && d.Thickness != 30 {
 		line("Vs30", velocities(*c.vs30))
 	}
-	line("reached", lengths(c.profile.DepthReached())+"; velocities "+d.Basis)
+	line("reached", lengths(c.profile.DepthReached())+basisText(d.Basis))
 	if d.Margin != nil {
 		line("next", fmt.Sprintf("class %s at %.4g %s: %s would be %s", d.Margin.ToClass, d.Margin.Bound, d.Margin.Unit, notebook.MarginOf(d.Margin), notebook.MarginText(d.Margin)))
 	}
@@ -203,6 +220,14 @@ func (s streams) writeDecision(b *strings.Builder, c classified) {
 	writeList(b, "notes", noteTexts(d.Notes))
 	writeList(b, "not assessed", d.Unassessed)
 	b.WriteByte('\n')
+}
+
+// basisText says how the velocities came to be known, where there are any.
+func basisText(basis string) string {
+	if basis == "" {
+		return ""
+	}
+	return "; velocities " + basis
 }
 
 func noteTexts(notes []profile.Note) []string {

@@ -113,7 +113,11 @@ func writeReport(s streams, c *cobra.Command, f reportFlags, source string) erro
 func tellClasses(s streams, results []report.Result, dir string) error {
 	var b strings.Builder
 	for _, r := range results {
-		fmt.Fprintf(&b, "%s: site class %s (%s, %.1f %s)\n", report.Visible(r.Profile), r.Class, r.Code, r.Velocity.Value, r.Velocity.Unit)
+		by := "by " + r.Route
+		if r.Velocity != nil {
+			by = fmt.Sprintf("%.1f %s", r.Velocity.Value, r.Velocity.Unit)
+		}
+		fmt.Fprintf(&b, "%s: site class %s (%s, %s)\n", report.Visible(r.Profile), r.Class, r.Code, by)
 	}
 	fmt.Fprintf(&b, "%s\n%s\n", report.Visible(filepath.Join(dir, folder.PDF)), wrap(report.Caution, width, ""))
 	_, err := io.WriteString(s.out, b.String())

@@ -77,7 +77,7 @@ func (ev *evaluation) depths(s *site, asked profile.Optional) []float64 {
 	switch {
 	case !ok:
 		return nil
-	case d.Thickness == 30:
+	case d.Thickness == 30 || d.Velocity == 0:
 		return []float64{30}
 	case ev.average(s, s.datum, 30).Missing != "":
 		return []float64{d.Thickness}

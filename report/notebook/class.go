@@ -43,12 +43,67 @@ func (ev *evaluation) eachDecision(c call, blocksOf func(*site, siteclass.Decisi
 
 // classBlocks is one decision.
 func (ev *evaluation) classBlocks(s *site, d siteclass.Decision) []report.Block {
-	return []report.Block{
-		ev.answer(s, d),
-		ev.codeTable(d),
-		stepTable(s, d),
-		ev.marginSentence(d),
+	blocks := []report.Block{ev.answer(s, d)}
+	if len(d.Classes) > 1 {
+		blocks = append(blocks, para("Several classes result and count together: "+strings.Join(d.Classes, ", ")+
+			". The governing spectrum is the envelope of theirs, the most severe at each period."))
 	}
+	if len(d.Code.Bands) > 0 {
+		blocks = append(blocks, ev.codeTable(d))
+	}
+	blocks = append(blocks, stepTable(s, d))
+	if len(d.Found) > 0 {
+		blocks = append(blocks, foundTable(s, d))
+	}
+	if len(d.Others) > 0 {
+		blocks = append(blocks, ev.routeTable(s, d))
+	}
+	return append(blocks, ev.marginSentence(d))
+}
+
+// averaged words what a decision rests on: the average velocity, or the
+// averages of another route.
+func (ev *evaluation) averaged(d siteclass.Decision) string {
+	if d.Velocity > 0 {
+		return "an average velocity of " + ev.both(d.Velocity) + " over " + ev.bothLengths(d.Thickness) + " " + ev.below(d.Datum)
+	}
+	return ev.averages(d.Averages)
+}
+
+// averages words the averages of a route: "N̄ = 23.8 blows over 30 m".
+func (ev *evaluation) averages(of []siteclass.Average) string {
+	var parts []string
+	for _, a := range of {
+		parts = append(parts, a.Symbol+" = "+fixed(a.Value, 1)+" "+a.Unit+" over "+ev.bothLengths(a.Thickness))
+	}
+	if len(parts) == 0 {
+		return "what its steps say"
+	}
+	return strings.Join(parts, " and ")
+}
+
+// foundTable is what was held against the code's rules beside the average.
+func foundTable(s *site, d siteclass.Decision) *report.Table {
+	t := &report.Table{
+		Caption: words("What the rules of " + d.Code.Edition + " asked of profile " + s.profile.Name),
+		Columns: []report.TableColumn{column("Quantity", report.AlignLeft), wide("What it is"), column("Value", report.AlignRight)},
+	}
+	for _, f := range d.Found {
+		t.Rows = append(t.Rows, row(f.Of, f.Text, foundText(f)))
+	}
+	return t
+}
+
+// routeTable is the other routes that the data allow.
+func (ev *evaluation) routeTable(s *site, d siteclass.Decision) *report.Table {
+	t := &report.Table{
+		Caption: words("Other routes of " + d.Code.Edition + " for profile " + s.profile.Name + "; the class is by " + d.Route),
+		Columns: []report.TableColumn{column("Route", report.AlignLeft), wide("Averages"), column("Class", report.AlignLeft), column("Standing", report.AlignLeft)},
+	}
+	for _, o := range d.Others {
+		t.Rows = append(t.Rows, row(o.Route, ev.averages(o.Averages), o.Class, o.Standing.String()))
+	}
+	return t
 }
 
 // answer is the class in a sentence, with the decision's notes at it.
@@ -56,8 +111,8 @@ func (ev *evaluation) answer(s *site, d siteclass.Decision) *report.Paragraph {
 	in := words("Profile " + s.profile.Name + " is site class ")
 	in = append(in, strong(d.Class)...)
 	in = append(in, ev.refs(d.Notes)...)
-	in = append(in, words(" under "+d.Code.Edition+", "+d.Code.Clause+", "+d.Code.Table+", with a velocity of "+
-		ev.both(d.Velocity)+" over "+ev.bothLengths(d.Thickness)+" "+ev.below(d.Datum)+
+	in = append(in, words(" under "+d.Code.Edition+", "+d.Code.Clause+", "+d.Code.Table+", with "+
+		ev.averaged(d)+
 		". Standing of the part of the table that was used: "+d.Standing.String()+".")...)
 	return &report.Paragraph{Inline: in}
 }
@@ -66,7 +121,7 @@ func (ev *evaluation) answer(s *site, d siteclass.Decision) *report.Paragraph {
 func (ev *evaluation) codeTable(d siteclass.Decision) *report.Table {
 	t := ClassTable(d.Code)
 	for i, b := range d.Code.Bands {
-		t.Rows[i].Marked = b.Class == d.Class
+		t.Rows[i].Marked = b.Class == d.Class || d.Row != "" && b.Class == d.Row
 	}
 	return t
 }

@@ -39,12 +39,17 @@ func evaluateCompare(ev *evaluation, c call) []report.Block {
 			if d.Margin != nil {
 				next = d.Margin.ToClass + ", " + MarginText(d.Margin)
 			}
-			r := row(d.Code.ID, fixed(d.Velocity/ev.system.velocity().Factor, 1),
-				fixed(d.Velocity/d.Code.Unit.Factor, 1)+" "+d.Code.Unit.Name, ev.length(d.Thickness), ev.length(d.Datum), "", next, d.Standing.String())
+			inUnit := ev.averages(d.Averages)
+			if d.Velocity > 0 {
+				inUnit = fixed(d.Velocity/d.Code.Unit.Factor, 1) + " " + d.Code.Unit.Name
+			}
+			r := row(d.Code.ID, averageCell(ev, d), inUnit, ev.length(d.Thickness), ev.length(d.Datum), "", next, d.Standing.String())
 			r.Cells[5] = append(strong(d.Class), ev.refs(d.Notes)...)
 			t.Rows = append(t.Rows, r)
 			t.Notes = append(t.Notes, words(d.Code.ID+": "+d.Code.Edition+", "+d.Code.Table+"."))
-			strips = append(strips, d)
+			if d.Velocity > 0 && len(classes(d.Code).Bounds) > 0 {
+				strips = append(strips, d) // the others have no bounds of velocity to draw
+			}
 		}
 		blocks := one(t)
 		if drawn && len(strips) > 0 {

@@ -324,7 +324,7 @@ func TestResultsFollowTheNotebook(t *testing.T) {
 	if strings.Join(got, ",") != want {
 		t.Errorf("results %v, want %s", got, want)
 	}
-	if v := r.Results[0].VelocitySI; math.Abs(v-300) > 1e-9 {
+	if v := *r.Results[0].VelocitySI; math.Abs(v-300) > 1e-9 {
 		t.Errorf("average %v, want 300", v)
 	}
 }

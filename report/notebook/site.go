@@ -190,6 +190,9 @@ func (ev *evaluation) resultsOf(s *site) Results {
 		}
 	}
 	r.Class, r.Average, r.Depth = d.Class, metresPerSecond(d.Velocity, d.Notes...), metres(d.Thickness)
+	if d.Velocity == 0 {
+		r.Average = missing("the class is by " + d.Route + ", without an average velocity")
+	}
 	r.Margin = missing("the class does not hang on a bound of the average")
 	if d.Margin != nil {
 		r.Margin = Quantity{Value: math.Abs(d.Margin.Percent), Decimals: 1}

@@ -58,7 +58,7 @@ func TestExtendWorkingChoosesForTheWholeNotebook(t *testing.T) {
 	if r.Results[0].Basis != "extended" {
 		t.Errorf("basis %q, want extended", r.Results[0].Basis)
 	}
-	if v := r.Results[0].VelocitySI; v < 272.514 || v > 272.517 {
+	if v := *r.Results[0].VelocitySI; v < 272.514 || v > 272.517 {
 		t.Errorf("the decision uses %v, want 272.515", v)
 	}
 	if !strings.Contains(markdown(t, r), "10.1785/0120030105") {

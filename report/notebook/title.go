@@ -116,8 +116,15 @@ func (ev *evaluation) summaryBox(s *site, d siteclass.Decision) *report.Summary 
 		box.Fields = append(box.Fields, report.Field{Label: label, Value: append(words(value), ev.refs(notes)...)})
 	}
 	add("Code", d.Code.Edition+", "+d.Code.Table)
-	add("Average velocity", ev.both(d.Velocity), averageNotes(d)...)
-	add("Averaged over", ev.bothLengths(d.Thickness)+" "+ev.below(d.Datum))
+	if d.Velocity > 0 {
+		add("Average velocity", ev.both(d.Velocity), averageNotes(d)...)
+		add("Averaged over", ev.bothLengths(d.Thickness)+" "+ev.below(d.Datum))
+	} else {
+		add("By "+d.Route, ev.averages(d.Averages), averageNotes(d)...)
+	}
+	for _, f := range d.Found {
+		add(f.Of, foundText(f))
+	}
 	add("How measured", method+"; velocities "+d.Basis+"; reached "+ev.bothLengths(p.DepthReached()))
 	add("Next class", marginField(d), otherNotes(d)...)
 	add("Standing of the table", d.Standing.String())
@@ -125,6 +132,14 @@ func (ev *evaluation) summaryBox(s *site, d siteclass.Decision) *report.Summary 
 		add("Not assessed", fmt.Sprintf("%s of the code's conditions; see the classification", count(n, "one", "%d")))
 	}
 	return box
+}
+
+func foundText(f siteclass.Found) string {
+	value := shortest(f.Value, 3) + " " + f.Unit
+	if f.AtLeast {
+		return "more than " + value
+	}
+	return value
 }
 
 func count(n int, single, many string) string {
@@ -138,7 +153,7 @@ func marginField(d siteclass.Decision) string {
 	if d.Margin == nil {
 		return "does not hang on one bound"
 	}
-	return d.Margin.ToClass + ", if "+MarginOf(d.Margin)+" were " + MarginText(d.Margin) + " (bound " +
+	return d.Margin.ToClass + ", if " + MarginOf(d.Margin) + " were " + MarginText(d.Margin) + " (bound " +
 		shortest(d.Margin.Bound, 3) + " " + d.Margin.Unit + ")"
 }
 
@@ -154,20 +169,29 @@ func otherNotes(d siteclass.Decision) []profile.Note {
 	return notes
 }
 
+// averageCell is the average velocity in the report's unit, a dash where the
+// route has none.
+func averageCell(ev *evaluation, d siteclass.Decision) string {
+	if d.Velocity == 0 {
+		return "–"
+	}
+	return fixed(d.Velocity/ev.system.velocity().Factor, 1)
+}
+
 // summaryTable is the summary of many decisions.
 func (ev *evaluation) summaryTable(of []*site, decided []siteclass.Decision) *report.Table {
 	t := &report.Table{
 		Caption: words("Site classes"),
-		Columns: []report.TableColumn{column("Profile", report.AlignLeft), wide("Code"), column("Class", report.AlignLeft),
+		Columns: []report.TableColumn{column("Profile", report.AlignLeft), column("Code", report.AlignLeft), column("Class", report.AlignLeft),
 			column("Average ("+ev.system.velocity().Name+")", report.AlignDecimal), column("Over ("+ev.system.length().Name+")", report.AlignDecimal),
-			column("Basis", report.AlignLeft), column("Next class", report.AlignLeft), column("Standing", report.AlignLeft)},
+			column("Basis", report.AlignLeft), wide("Next class"), column("Standing", report.AlignLeft)},
 	}
 	for i, d := range decided {
 		next := "–"
 		if d.Margin != nil {
 			next = d.Margin.ToClass + ", " + MarginText(d.Margin)
 		}
-		r := row(of[i].profile.Name, d.Code.Edition, "", fixed(d.Velocity/ev.system.velocity().Factor, 1),
+		r := row(of[i].profile.Name, d.Code.ID, "", averageCell(ev, d),
 			ev.length(d.Thickness), d.Basis, next, d.Standing.String())
 		r.Cells[2] = append(strong(d.Class), ev.refs(d.Notes)...)
 		t.Rows = append(t.Rows, r)
