@@ -7,6 +7,7 @@ import (
 	"shearbook/profile"
 	"shearbook/report"
 	"shearbook/vs30"
+	"shearbook/vs30/siteclass"
 	"shearbook/vs30/spread"
 )
 
@@ -102,6 +103,7 @@ func (ev *evaluation) together(sites []*site, lines []spread.Line, thickness flo
 		Caption: words("Averages of " + fmt.Sprint(len(lines)) + " profiles over " + ev.bothLengths(thickness) + " " + ev.below(from)),
 		Columns: []report.TableColumn{wide("Profile"), column("Basis", report.AlignLeft), column("Average ("+ev.system.velocity().Name+")", report.AlignDecimal), column("σ of ln", report.AlignDecimal), column("Class", report.AlignLeft)},
 	}
+	var decisions []siteclass.Decision
 	for i, l := range lines {
 		sigma := "–"
 		if l.SigmaLn > 0 {
@@ -111,6 +113,7 @@ func (ev *evaluation) together(sites []*site, lines []spread.Line, thickness flo
 		if code := ev.code(); code != nil {
 			if d, ok := ev.decide(sites[i], code, sites[i].entry.place); ok {
 				class = d.Class
+				decisions = append(decisions, d)
 			}
 		}
 		t.Rows = append(t.Rows, row(l.Name, l.Basis.String(), fixed(whole.Averages[i]/ev.system.velocity().Factor, 1), sigma, class))
@@ -125,11 +128,31 @@ func (ev *evaluation) together(sites []*site, lines []spread.Line, thickness flo
 		row("Average of the mean slowness (for comparison)", "", fixed(whole.OfMeanSlowness/ev.system.velocity().Factor, 1), "", ""))
 	t.Notes = append(t.Notes, words(fmt.Sprintf("σ of the mean is the sample standard deviation of ln V, with n − 1; its standard error is %s, and the interval of the mean at 68 %% uses Student's t with %d degrees of freedom.",
 		fixed(whole.StandardError, 3), len(lines)-1)))
-	t.Notes = append(t.Notes, words("A mean of profiles is not a class: which profile or mean decides is the code's or the engineer's to say; where a code lets the least favourable profile govern, its decision says so."))
 	if low, high, ok := whole.Interval(0.68); ok {
 		t.Notes = append(t.Notes, words("Mean at 68 %: "+metresPerSecond(low).Print(ev.system)+" to "+metresPerSecond(high).Print(ev.system)+"."))
 	}
-	return []report.Block{t, ev.agreement(lines, from, thickness)}
+	return []report.Block{t, ev.governing(decisions), ev.agreement(lines, from, thickness)}
+}
+
+// governing says what the code makes of several profiles.
+func (ev *evaluation) governing(of []siteclass.Decision) report.Block {
+	code := ev.code()
+	if code == nil || len(of) == 0 {
+		return para("No code is named, and no class is given.")
+	}
+	if code.Several == "" {
+		return para(code.Edition + " does not say which of several profiles decides. A mean of profiles is not a class: that is the engineer's to say.")
+	}
+	text := code.Edition + ": " + code.Several + "."
+	if !code.WorstOf {
+		return para(text)
+	}
+	d, err := siteclass.Governing(of)
+	if err != nil {
+		return para(text + " It cannot be applied: " + err.Error() + ".")
+	}
+	in := append(words(text+" The site is class "), strong(d.Class)...)
+	return &report.Paragraph{Inline: append(append(in, ev.refs(d.Notes)...), report.Text("."))}
 }
 
 func (ev *evaluation) meanRow(name string, s *spread.Site) report.TableRow {

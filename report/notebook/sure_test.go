@@ -111,3 +111,19 @@ func TestProfilesTogether(t *testing.T) {
 		t.Errorf("average of the mean slowness %q", row)
 	}
 }
+
+func TestWorseProfileGovernsWhereTheCodeSaysSo(t *testing.T) {
+	folder["pair.csv"] = "profile,bottom (m),vs (m/s)\nA,40,600\nB,40,400\n"
+	// DS 61 (2011): of two surface-wave lines the worse governs. Vs30 alone
+	// drops a class: 600 is B by its bound of 500 and becomes C; 400 is C by
+	// its bound of 350 and becomes D (art. 6).
+	r := mustEvaluate(t, "---\ncode: ds61-2011\nprofiles:\n  A: {file: pair.csv, profile: A}\n  B: {file: pair.csv, profile: B}\n---\n```site\nfigure: no\n```\n")
+	for profile, class := range map[string]string{"A": "C", "B": "D"} {
+		if row := cellsOf(t, r, profile); row[4] != class {
+			t.Errorf("profile %s is %q, want %s", profile, row[4], class)
+		}
+	}
+	if !strings.Contains(markdown(t, r), "The site is class **D**") {
+		t.Error("the worse profile does not govern")
+	}
+}
