@@ -93,12 +93,32 @@ func classify(s streams, f classifyFlags, names []string) error {
 		return report.WriteResults(s.out, results)
 	}
 	var b strings.Builder
-	for _, c := range found {
+	for i, c := range found {
 		s.writeDecision(&b, c)
+		if last := i+1 == len(found) || found[i+1].profile != c.profile; last && len(codes) > 1 {
+			b.WriteString(sideBySideCodes(found[i+1-len(codes) : i+1]))
+		}
 	}
 	b.WriteString(wrap(report.Caution, width, "") + "\n")
 	_, err = io.WriteString(s.out, b.String())
 	return err
+}
+
+// sideBySideCodes is one profile under several codes in one table.
+func sideBySideCodes(of []classified) string {
+	g := grid{indent: "  ", wraps: 3, rows: [][]string{{"code", "class", "average", "over, from", "next", "standing"}}}
+	for _, c := range of {
+		d := c.decision
+		average, next := "by "+d.Route, "–"
+		if d.Velocity > 0 {
+			average = fmt.Sprintf("%.1f %s", d.Velocity/d.Code.Unit.Factor, d.Code.Unit.Name)
+		}
+		if d.Margin != nil {
+			next = fmt.Sprintf("%s %+.1f %%", d.Margin.ToClass, d.Margin.Percent)
+		}
+		g.rows = append(g.rows, []string{d.Code.ID, d.Class, average, fmt.Sprintf("%.4g m, %.4g m", d.Thickness, d.Datum), next, d.Standing.String()})
+	}
+	return report.Visible(of[0].profile.Name) + " side by side\n" + g.String() + "\n"
 }
 
 // classified is one answer.

@@ -21,6 +21,7 @@ var spreadWorking = Working{
 		{"average sigma", "standard deviation of ln of the average itself, as 0.10, instead of those of layers"},
 		{"boundaries", "standard error of the depth of each boundary, as 0.5 m; none if left out"},
 		{"correlation", "independent, full, or toro: how the errors of the layers go together; independent if left out"},
+		{"equivalents", "a list of profiles that fit one survey about equally well, drawn from in place of sigmas"},
 		{"layering", "random to draw the boundaries anew in every profile (Toro 1995); fixed if left out"},
 		{"realisations", "how many profiles are drawn; 100000 if left out"},
 		{"seed", "of the random numbers; 1995 if left out"},
@@ -38,6 +39,7 @@ type spreadKeys struct {
 	random         bool // layering
 	draw           spread.Options
 	figures        bool
+	equivalents    []*site
 	at             profile.Place
 }
 
@@ -57,6 +59,7 @@ func evaluateSpread(ev *evaluation, c call) []report.Block {
 	case "toro":
 		k.correlation = spread.Interlayer
 	}
+	k.equivalents = ev.sitesNamed(&m, "equivalents")
 	k.draw.Realisations = int(m.positive("realisations", spread.MaxRealisations))
 	k.draw.Seed = uint64(m.positive("seed", 1<<53))
 	if k.sigma > 0 && k.average > 0 {
@@ -97,7 +100,9 @@ func (ev *evaluation) spreadBlocks(s *site, k spreadKeys) []report.Block {
 	classes, _ := ev.spreadClasses()
 	var blocks []report.Block
 	var shares []spread.Share
-	if k.average > 0 {
+	if len(k.equivalents) > 0 {
+		blocks = ev.equivalentSpread(s, thickness, classes, k)
+	} else if k.average > 0 {
 		blocks = ev.averageSpread(s, v, ev.withRelation(s, thickness, k.average), thickness, classes, k)
 	} else {
 		blocks, shares = ev.layerSpread(s, layers, thickness, notes, classes, k)
@@ -156,6 +161,38 @@ func (ev *evaluation) averageSpread(s *site, v, sigma, thickness float64, classe
 		}
 		if k.figures {
 			blocks = append(blocks, ev.densityFigure(s, nil, l, classes, k.at)...)
+		}
+	}
+	return blocks
+}
+
+// equivalentSpread is the spread of the averages of profiles that fit one
+// survey about equally well.
+func (ev *evaluation) equivalentSpread(s *site, thickness float64, classes spread.Classes, k spreadKeys) []report.Block {
+	var q spread.Equivalents
+	var names []string
+	for _, other := range k.equivalents {
+		layers, _ := ev.layersTo(other, s.datum, thickness)
+		average, err := vs30.Average(layers, s.datum, thickness)
+		if err != nil {
+			ev.add(k.at, shortHint, "%s", ev.shortText(other, err))
+			return nil
+		}
+		q.Averages, names = append(q.Averages, average), append(names, other.profile.Name)
+	}
+	q.SigmaLn = k.average
+	sample, err := q.Draw(k.draw)
+	if err != nil {
+		ev.add(k.at, "", "the profiles cannot be drawn: %v", err)
+		return nil
+	}
+	t := ev.bandTable("Spread of the average over " + ev.bothLengths(thickness) + " by equivalent profiles of one survey")
+	t.Rows = append(t.Rows, ev.bandRow(fmt.Sprintf("%s draws from %d profiles, seed %d", fixed(float64(len(sample.Velocities)), 0), len(names), sample.Seed), sample.SigmaLn, sample.Band, ""))
+	t.Notes = append(t.Notes, words("Profiles: "+strings.Join(names, ", ")+". Their scatter is that of the inversion alone; `average sigma` adds what the survey errs as a whole."))
+	blocks := one(t)
+	if len(classes.Names) > 0 {
+		if o, err := sample.Outlook(classes); err == nil {
+			blocks = append(blocks, ev.chanceTable(s, o, true))
 		}
 	}
 	return blocks

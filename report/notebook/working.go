@@ -72,17 +72,21 @@ func (ev *evaluation) keys(c call) mapping {
 
 // of returns the sites that a working is about.
 func (ev *evaluation) of(m *mapping) []*site {
-	names := m.texts("of")
-	if names == nil {
+	if m.texts("of") == nil {
 		return ev.sites
 	}
+	return ev.sitesNamed(m, "of")
+}
+
+// sitesNamed returns the sites that a key names.
+func (ev *evaluation) sitesNamed(m *mapping, key string) []*site {
 	var chosen []*site
-	for _, name := range names {
+	for _, name := range m.texts(key) {
 		if s := ev.site(name); s != nil {
 			chosen = append(chosen, s)
 			continue
 		}
-		m.add(m.at(m.get("of")), suggest(name, ev.siteNames()), "no profile is named %q", name)
+		m.add(m.at(m.get(key)), suggest(name, ev.siteNames()), "no profile is named %q", name)
 	}
 	return chosen
 }
