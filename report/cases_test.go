@@ -234,7 +234,8 @@ func checkCase(t *testing.T, file string, build func() *Document) {
 
 func TestSameDocumentSameBytes(t *testing.T) {
 	for name, build := range cases {
-		if markdownOf(t, build()) != markdownOf(t, build()) || htmlOf(t, build()) != htmlOf(t, build()) {
+		first, second := build(), build()
+		if markdownOf(t, first) != markdownOf(t, second) || htmlOf(t, first) != htmlOf(t, second) {
 			t.Errorf("%s differs", name)
 		}
 	}

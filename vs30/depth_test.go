@@ -75,7 +75,6 @@ func TestAboveRock(t *testing.T) {
 		{3, 12 / 0.035},  // 2/200 + 10/400 by hand
 		{5, 400},         // one layer
 		{14.9, 400},      // its last 0.1 m
-		{-0.0, 300},      // ground level
 		{1, 14 / 0.0450}, // 4/200 + 10/400 by hand
 	} {
 		v, depth, err := AboveRock(layers, c.from, 800)
