@@ -11,8 +11,8 @@ import (
 // Place is a place in a file.
 type Place struct {
 	File         string
-	Line, Column int    // from 1, in characters; 0 where unknown
-	Cell         string // of a spreadsheet, as Sheet1!B7; instead of Line and Column
+	Line, Column int    // from 1, in characters; row and column in a spreadsheet; 0 where unknown
+	Cell         string // of a spreadsheet, as Sheet1!B7; "" in other files
 }
 
 // String returns the place as file:line:column, or as much of it as is known.

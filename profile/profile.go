@@ -177,7 +177,8 @@ type Reading struct {
 	File     string // as the user named it
 	SHA256   string // of the whole file, lower-case hexadecimal
 	Size     int64  // bytes
-	Encoding string // "UTF-8", "UTF-16LE", "UTF-16BE" or "Windows-1252"
+	Encoding string // "UTF-8", "UTF-16LE", "UTF-16BE" or "Windows-1252"; "XLSX" of a spreadsheet
+	Sheet    string // of a spreadsheet; "" in other files
 	Metadata []Metadatum
 	Columns  []Column
 	Rows     []Row

@@ -75,14 +75,14 @@ func (v *validator) at(l *Layer, hint, format string, args ...any) {
 // placeOf returns the place of layer l in the file that p was read from, the
 // file where l is nil.
 func (p *Profile) placeOf(l *Layer) Place {
-	var at Place
-	if p.Reading != nil {
-		at.File = p.Reading.File
-	}
+	var line, column int
 	if l != nil {
-		at.Line, at.Column = int(l.Line), int(l.Column)
+		line, column = int(l.Line), int(l.Column)
 	}
-	return at
+	if p.Reading == nil {
+		return Place{Line: line, Column: column}
+	}
+	return p.Reading.Place(line, column)
 }
 
 func finite(x float64) bool { return !math.IsNaN(x) && !math.IsInf(x, 0) }

@@ -16,6 +16,9 @@ func (r *reader) fileName() string {
 	if r.preamble.base.Name != "" {
 		return r.preamble.base.Name
 	}
+	if r.tableName != "" {
+		return r.tableName
+	}
 	base := path.Base(strings.ReplaceAll(r.file, `\`, "/"))
 	name := strings.Map(printable, strings.TrimSuffix(base, path.Ext(base)))
 	name = strings.Join(strings.Fields(name), " ")
@@ -150,10 +153,6 @@ func some(list []string) string {
 		list[most] = strings.TrimSuffix(list[most], "s")
 	}
 	return strings.Join(list, ", ")
-}
-
-func (r *reader) place(at spot) profile.Place {
-	return profile.Place{File: r.file, Line: at.line, Column: at.column}
 }
 
 // ownNotes are the notes on how the layers of one profile were read.

@@ -154,7 +154,7 @@ func (r *reader) note(id string, c *column, what, why string) {
 	r.columns.notes = append(r.columns.notes, profile.Note{
 		ID:    id,
 		Text:  "column " + quote(c.name) + " was taken for " + what + " of each layer, because " + why,
-		Place: profile.Place{File: r.file, Line: c.line, Column: c.column},
+		Place: r.place(c.spot),
 	})
 }
 
@@ -207,7 +207,7 @@ func (r *reader) has(q profile.Quantity) bool { return r.columns.index[q] >= 0 }
 func (r *reader) required() bool {
 	depth := r.has(profile.Top) || r.has(profile.Bottom) || r.has(profile.Thickness)
 	vs := r.has(profile.Vs)
-	at := spot{r.headerLine(), 1}
+	at := r.headerSpot()
 	switch {
 	case !vs && !depth:
 		r.fault(at, r.hintNoTable(), "this does not look like a table of layers: no column of depth and none of Vs in %s", r.seen())
@@ -238,6 +238,15 @@ func (r *reader) headerLine() int {
 		return r.columns.list[0].line
 	}
 	return r.scan.end.line
+}
+
+// headerSpot is the place of the header: the line in text, the first cell in
+// a spreadsheet.
+func (r *reader) headerSpot() spot {
+	if r.scan.grid != nil {
+		return spot{r.headerLine(), r.scan.grid.column}
+	}
+	return spot{r.headerLine(), 1}
 }
 
 // seen is what the header holds, for messages.

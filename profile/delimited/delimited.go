@@ -121,6 +121,8 @@ type reader struct {
 	numerals numerals
 	table    table
 	profiles []profile.Profile
+
+	tableName string // of a profile that nothing in a spreadsheet's table names
 }
 
 // read runs from the bytes to the profiles. Each step that returns false has

@@ -25,16 +25,30 @@ type trouble struct {
 // that ended the reading.
 type collector struct {
 	file   string
+	sheet  string // of a spreadsheet; "" in text
 	faults profile.Faults
 	total  int
+}
+
+// place is a spot in the file.
+func (c *collector) place(at spot) profile.Place {
+	reading := profile.Reading{File: c.file, Sheet: c.sheet}
+	return reading.Place(at.line, at.column)
+}
+
+// line is a line of the file in words; a spreadsheet has rows.
+func (c *collector) line(n int) string {
+	if c.sheet != "" {
+		return "row " + strconv.Itoa(n)
+	}
+	return "line " + strconv.Itoa(n)
 }
 
 // fault adds a fault.
 func (c *collector) fault(at spot, hint, format string, args ...any) {
 	c.total++
 	if len(c.faults) < MaxFaults {
-		place := profile.Place{File: c.file, Line: at.line, Column: at.column}
-		c.faults = append(c.faults, profile.Faultf(place, hint, format, args...))
+		c.faults = append(c.faults, profile.Faultf(c.place(at), hint, format, args...))
 	}
 }
 
@@ -42,8 +56,7 @@ func (c *collector) fault(at spot, hint, format string, args ...any) {
 // there are.
 func (c *collector) stop(at spot, hint, format string, args ...any) {
 	c.total++
-	place := profile.Place{File: c.file, Line: at.line, Column: at.column}
-	c.faults = append(c.faults, profile.Faultf(place, hint, format, args...))
+	c.faults = append(c.faults, profile.Faultf(c.place(at), hint, format, args...))
 }
 
 // trouble stops with a fault that is told already.

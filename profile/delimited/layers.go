@@ -29,9 +29,10 @@ func (r *reader) number(q profile.Quantity) (float64, state) {
 	if len(text) == 0 {
 		return 0, blank
 	}
-	v, problem := r.numerals.parse(text)
+	numerals := r.numeralsOf(text)
+	v, problem := numerals.parse(text)
 	if problem != "" {
-		r.fault(r.scan.place(i), r.numerals.hintNumber(text), "%s %s %s", q, quote(text), problem)
+		r.fault(r.scan.place(i), numerals.hintNumber(text), "%s %s %s", q, quote(text), problem)
 		return 0, faulty
 	}
 	if d := q.Dimension(); d != profile.Dimensionless {

@@ -135,6 +135,15 @@ func allDigits(text []byte) bool {
 	return len(text) > 0
 }
 
+// numeralsOf is how the number in a cell is written. A spreadsheet stores its
+// numbers with a point, whatever the text beside them does.
+func (r *reader) numeralsOf(text []byte) numerals {
+	if r.scan.grid != nil && bytes.IndexByte(text, ',') < 0 {
+		return numerals{}
+	}
+	return r.numerals
+}
+
 // readNumerals looks through the numbers of the file for the decimal sign
 // that it uses. In a file whose cells are separated by commas it is a point.
 func (r *reader) readNumerals() {
@@ -158,7 +167,7 @@ func (r *reader) readNumerals() {
 			case bytes.IndexByte(text, ',') >= 0:
 				comma = comma || decimalComma(text)
 				eitherWay = eitherWay || thousands(text)
-			case point == 0 && bytes.IndexByte(text, '.') >= 0:
+			case point == 0 && ahead.grid == nil && bytes.IndexByte(text, '.') >= 0:
 				if _, problem := (numerals{}).parse(text); problem == "" {
 					point = ahead.end.line
 				}

@@ -147,7 +147,7 @@ func (r *reader) statedUnits(st *statement) {
 func (r *reader) first(name string, k key, st *statement) bool {
 	id := name + profile.CellSeparator + string(k)
 	if line := r.preamble.seen[id]; line > 0 {
-		r.fault(st.spot, "keep one of them", "%s is stated a second time, after line %d", k, line)
+		r.fault(st.spot, "keep one of them", "%s is stated a second time, after %s", k, r.line(line))
 		return false
 	}
 	r.preamble.seen[id] = st.line

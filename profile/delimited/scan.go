@@ -18,6 +18,8 @@ type scanner struct {
 
 	cells []cell // of the row last read; overwritten by the next
 	end   spot   // of the row last read
+
+	grid *grid // where the text came from, if from a spreadsheet
 }
 
 // cell is one cell of a row.
@@ -35,11 +37,17 @@ func isLineEnd(b byte) bool { return b == '\n' || b == '\r' }
 
 // spot is the place of offset off, which must lie in the present line.
 func (s *scanner) spot(off int) spot {
+	if s.grid != nil {
+		return s.grid.spot(s.line, s.text[s.bol:off])
+	}
 	return spot{s.line, utf8.RuneCount(s.text[s.bol:off]) + 1}
 }
 
 // spotOf is the place of a cell.
 func (s *scanner) spotOf(c *cell) spot {
+	if s.grid != nil {
+		return s.grid.spot(c.line, s.text[c.bol:c.off])
+	}
 	return spot{c.line, utf8.RuneCount(s.text[c.bol:c.off]) + 1}
 }
 

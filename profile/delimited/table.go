@@ -74,7 +74,7 @@ func (r *reader) readRows() bool {
 	r.flush()
 	r.closeStack()
 	if len(r.table.layers) == 0 && r.total == 0 {
-		r.fault(spot{r.headerLine(), 1}, hintTable, "the table has a header but no layers")
+		r.fault(r.headerSpot(), hintTable, "the table has a header but no layers")
 	}
 	return len(r.table.layers) > 0
 }
@@ -198,7 +198,7 @@ func (r *reader) newStack(i int, name string) bool {
 		return false
 	case t.names[name] > 0:
 		r.fault(r.scan.place(i), "put the layers of a profile in rows that follow one another, or give the profile another name",
-			"duplicate profile %s: its layers began in line %d, and another profile came between", quote(name), t.names[name])
+			"duplicate profile %s: its layers began in %s, and another profile came between", quote(name), r.line(t.names[name]))
 		s.faulty, s.resumed = true, true
 	}
 	if t.names[name] == 0 {

@@ -1,7 +1,7 @@
 // Package open reads a profile file of any kind that is read: it looks at
 // what the file begins with and calls the reader for it. In this version that
-// is a table of layers in text (package delimited); other kinds are named and
-// refused, with a way out.
+// is a table of layers in text (package delimited) or in a workbook (package
+// spreadsheet); other kinds are named and refused, with a way out.
 package open
 
 import (
@@ -13,6 +13,7 @@ import (
 
 	"shearbook/profile"
 	"shearbook/profile/delimited"
+	"shearbook/profile/spreadsheet"
 )
 
 // Options says how to read a file. The zero value reads what the file states.
@@ -26,6 +27,9 @@ type Options struct {
 // in messages and names a profile that has no other name. An error is a
 // profile.Faults.
 func Bytes(name string, data []byte, opt Options) ([]profile.Profile, error) {
+	if bytes.HasPrefix(data, []byte(zipped)) {
+		return spreadsheet.Read(name, data, spreadsheet.Options{Units: opt.Units})
+	}
 	if kind, ok := sniff(data); ok {
 		return nil, fault(name, kind.hint, "the file is %s, which this version does not read", kind.what)
 	}

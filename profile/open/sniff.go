@@ -14,9 +14,11 @@ const (
 	hintText  = "find the layers in it and type or export them as CSV with the columns top, bottom, vs and their units"
 )
 
+// zipped is how a zip file begins, and so a spreadsheet (XLSX).
+const zipped = "PK\x03\x04"
+
 // binary are kinds whose first bytes are fixed.
 var binary = []kind{
-	{"PK\x03\x04", "a spreadsheet (XLSX) or another zip file", hintTable},
 	{"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1", "a spreadsheet (XLS) or another file in the old Office format", hintTable},
 	{"%PDF-", "a PDF file", hintText},
 	{"\x1f\x8b", "a gzip file", "unpack it first"},

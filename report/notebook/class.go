@@ -121,7 +121,7 @@ func (ev *evaluation) answer(s *site, d siteclass.Decision) *report.Paragraph {
 func (ev *evaluation) codeTable(d siteclass.Decision) *report.Table {
 	t := ClassTable(d.Code)
 	for i, b := range d.Code.Bands {
-		t.Rows[i].Marked = b.Class == d.Class || d.Row != "" && b.Class == d.Row
+		t.Rows[i].Marked = b.Class == d.Row || d.Row != "" && b.Class == d.Row
 	}
 	return t
 }

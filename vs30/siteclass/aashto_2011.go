@@ -58,12 +58,12 @@ func aashto2011() *Code {
 					{Property: Strength, Range: below(0.5), Unit: ksf}}},
 		},
 
-		Routes: threeWays("3.4.2.2", OneSource),
+		Routes: threeWays("3.4.2", OneSource),
 		Averaging: Averaging{
 			N: "N̄", Nch: "N̄ch", Su: "s̄u",
 			Blow: BlowField, NCap: 100, SuCap: 5,
 			Cohesive: above(20), Cohesionless: below(20),
-			Clause: "3.4.2.2", Standing: FromMemory,
+			Clause: "3.4.2", Standing: FromMemory,
 		},
 		Default: "the soil is to be investigated; E or F need not be assumed unless the authority says so (from memory)",
 

@@ -27,6 +27,9 @@ func TestNumericCoreDoesNotAllocate(t *testing.T) {
 				panic(err)
 			}
 			row = c.Lookup(v / c.Unit.Factor)
+			if c.ClassOf(v) == "" {
+				panic("no class")
+			}
 		})
 		if allocs != 0 || row < 0 {
 			t.Errorf("%s: %v allocations, row %d", c.ID, allocs, row)
@@ -76,13 +79,43 @@ func BenchmarkDecide(b *testing.B) {
 	}
 }
 
-// BenchmarkLoad makes every code afresh.
+// BenchmarkDecideAll decides on one profile under every code that decides by
+// velocities, with all steps and notes.
+func BenchmarkDecideAll(b *testing.B) {
+	site := siteOf(twenty()...)
+	all := timed()
+	b.ReportAllocs()
+	for b.Loop() {
+		for _, c := range all {
+			if _, err := c.Decide(site); err != nil {
+				b.Fatal(err)
+			}
+		}
+	}
+	b.ReportMetric(float64(len(all)), "codes")
+}
+
+// BenchmarkClassOfAll looks one averaged profile up in every table that has a
+// velocity column.
+func BenchmarkClassOfAll(b *testing.B) {
+	all := columned()
+	b.ReportAllocs()
+	for b.Loop() {
+		for _, c := range all {
+			if c.ClassOf(271.8) == "" {
+				b.Fatal("no class")
+			}
+		}
+	}
+	b.ReportMetric(float64(len(all)), "codes")
+}
+
+// BenchmarkLoad makes every code afresh, and works out what does not change
+// from one decision to the next.
 func BenchmarkLoad(b *testing.B) {
 	for b.Loop() {
 		for _, build := range builders {
-			if build().ID == "" {
-				b.Fatal("no code")
-			}
+			build().prepare()
 		}
 	}
 }

@@ -12,6 +12,11 @@
 // printed operators decide. Where the print gives the value to two classes or
 // to none, the softer class is taken and a note says so.
 //
+// Where a code also has columns of blow counts and strengths, they are routes
+// of their own: N averaged over all layers, N over the cohesionless and su
+// over the cohesive, each with the thickness of its own layers. A Route says
+// what goes before what; what another route would give is shown.
+//
 // A decision looks first at the ground that no average settles (liquefiable
 // soil, peat, soft clay …), then at the average, then at whether a rock class
 // may stand on so much soil. Every comparison is a Step. What is not known of
@@ -85,7 +90,7 @@ type Code struct {
 	Unit       profile.Unit // of the velocity bounds, as printed
 	SuUnit     profile.Unit // of the strength bounds, as printed; zero if the table has none
 	Length     profile.Unit // of depths and thicknesses, as printed
-	Standing   Standing     // of the table as a whole: the weakest of its rows
+	Standing   Standing     // of the table as a whole: the weakest of its rows, and of its adoption
 	Bands      []Band       // in the printed order, stiffest first
 	Outside    string       // class of a velocity that no row covers, softer than all; "" if there is none
 	Conditions []Condition  // in the order in which they are looked at

@@ -122,7 +122,7 @@ func (r *ruling) byColumn(i int) {
 	g, c := &r.gauges[i], r.code
 	r.bandSteps(g.measure, g.value, g.unit, c.symbolOf(g.measure)+" of "+metres(g.thickness))
 	if row := c.LookupIn(g.measure, g.value); row >= 0 {
-		r.rest(c.Bands[row].Standing, "class "+c.Bands[row].Class+" of "+c.Table)
+		r.restOnRow(row)
 		r.boundary(g.measure, g.value, row, itself)
 	}
 }

@@ -149,8 +149,11 @@ func (c *Condition) test(g *Ground) Outcome {
 	if a, ok := g.answer(c.Fact); ok {
 		return Outcome{State: a.state()}
 	}
-	o := Outcome{State: Met}
 	d := g.deposit(c.Fact)
+	if d == (Deposit{}) {
+		return Outcome{State: NotAssessed}
+	}
+	o := Outcome{State: Met}
 	var assumed []string
 	for _, limit := range c.Limits {
 		v := d.property(limit.Property)

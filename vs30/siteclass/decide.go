@@ -67,6 +67,7 @@ type ruling struct {
 	site   *Site
 	layers []profile.Layer
 	given  profile.Given // what at least one of the layers states
+	named  bool          // at least one of the layers has a description
 
 	from      float64 // m below ground level: the datum of the site
 	datum     float64 // m below ground level: where the present average starts
@@ -95,9 +96,10 @@ type part struct {
 // begin takes the datum and what the caller noted of the layers.
 func begin(c *Code, s Site) *ruling {
 	r := &ruling{code: c, site: &s, layers: s.layers(), after: itself,
-		d: Decision{Code: c, Route: velocityRoute.Name, Notes: slices.Clone(s.Notes), Steps: make([]Step, 0, 2*len(c.Bands))}}
+		d: Decision{Code: c, Route: velocityRoute.Name, Notes: slices.Clone(s.Notes), Steps: make([]Step, 0, len(c.Bands)+2)}}
 	for i := range r.layers {
 		r.given |= r.layers[i].Given
+		r.named = r.named || r.layers[i].Soil != ""
 	}
 	from, note := c.DatumOf(s)
 	r.from, r.datum, r.d.Datum = from, from, from
@@ -147,7 +149,14 @@ func (r *ruling) note(id, format string, args ...any) {
 
 // say adds a note to the decision in so many words.
 func (r *ruling) say(id, text string) {
-	r.d.Notes = append(r.d.Notes, profile.Note{ID: id, Text: text})
+	r.d.Notes = append(r.d.Notes, note(id, text))
+}
+
+// sayOnce adds a note unless the decision has the same already.
+func (r *ruling) sayOnce(id, text string) {
+	if !slices.Contains(r.d.Notes, note(id, text)) {
+		r.say(id, text)
+	}
 }
 
 // noted reports whether the decision has a note of that ID.
@@ -163,8 +172,24 @@ func (r *ruling) use(s Standing, format string, args ...any) {
 // rest records that the decision rests on a part of the code named in so many
 // words.
 func (r *ruling) rest(s Standing, name string) {
-	r.parts = append(r.parts, part{name, s})
+	if s != Checked { // what is checked is not listed
+		r.parts = append(r.parts, part{name, s})
+	}
 }
+
+// restOnRow records that the decision rests on a row of the table.
+func (r *ruling) restOnRow(i int) {
+	switch b := &r.code.Bands[i]; {
+	case b.Standing == Checked:
+	case r.code.ready != nil:
+		r.rest(b.Standing, r.code.ready.rows[i])
+	default:
+		r.rest(b.Standing, r.code.rowName(i))
+	}
+}
+
+// rowName names a row of the table.
+func (c *Code) rowName(i int) string { return "class " + c.Bands[i].Class + " of " + c.Table }
 
 // settled reports whether the class is found.
 func (r *ruling) settled() bool { return r.d.Class != "" }
@@ -204,13 +229,20 @@ func (r *ruling) classAt(v float64) string {
 	return r.after(r.code.Bands[i].Class)
 }
 
-// byAverages returns the class that the averages alone give, and those averages in
-// words.
-func (r *ruling) byAverages() (class, averages string) {
+// byAverages returns the class that the averages alone give.
+func (r *ruling) byAverages() string {
 	if len(r.gauges) == 0 {
-		return r.classAt(r.velocity), r.speed(r.velocity)
+		return r.classAt(r.velocity)
 	}
-	return r.softestGauge(-1, 0), r.gaugeText()
+	return r.softestGauge(-1, 0)
+}
+
+// averagesText returns the averages in words.
+func (r *ruling) averagesText() string {
+	if len(r.gauges) == 0 {
+		return r.speed(r.velocity)
+	}
+	return r.gaugeText()
 }
 
 // shortError is a profile that ends above a code's depth, in the code's

@@ -184,7 +184,7 @@ func (r *ruling) byStrength(w weakLayer) {
 	over := c.symbolOf(w.measure) + " of the weakest layer, from " + metres(w.layer.Top) + " down"
 	r.bandSteps(w.measure, w.value, c.unitOf(w.measure), over)
 	row := c.LookupIn(w.measure, w.value)
-	r.rest(c.Bands[row].Standing, "class "+w.class+" of "+c.Table)
+	r.restOnRow(row)
 	r.boundary(w.measure, w.value, row, itself)
 	if w.measure == AverageNch {
 		r.sayBlow()

@@ -33,7 +33,7 @@ func e0302018() *Code {
 		},
 
 		Conditions: []Condition{
-			{ID: "soft-clay", Kind: Softer, Class: "S3", Clause: "art. 12", Standing: Checked, Fact: SoftClay,
+			{ID: "soft-clay", Kind: Softer, Class: "S3", Clause: "arts. 12 and 13", Standing: Checked, Fact: SoftClay,
 				Text: "more than 3 m of soft clay: PI > 20, w > 40 % and su < 25 kPa",
 				Limits: []Criterion{
 					{Property: Thickness, Range: above(3), Unit: profile.Metre},
@@ -43,12 +43,12 @@ func e0302018() *Code {
 		},
 
 		Routes: []Route{
-			{Name: "velocity", Measures: []Measure{AverageVs}, Rank: 1, Clause: "art. 12", Standing: Checked},
-			{Name: "Nch and su", Measures: []Measure{AverageNch, AverageSu}, Rank: 2, Clause: "art. 12", Standing: Checked},
+			{Name: "velocity", Measures: []Measure{AverageVs}, Rank: 1, Clause: "arts. 12 and 13", Standing: Checked},
+			{Name: "Nch and su", Measures: []Measure{AverageNch, AverageSu}, Rank: 2, Clause: "arts. 12 and 13", Standing: Checked},
 		},
 		Averaging: Averaging{
 			N: "N̄60", Nch: "N̄60", Su: "S̄u", Blow: BlowN60,
-			Clause: "art. 12", Standing: Checked,
+			Clause: "arts. 12 and 13", Standing: Checked,
 		},
 
 		Notes: []string{

@@ -48,12 +48,15 @@ func (r *ruling) averages() {
 func (r *ruling) adopted() {
 	if c := r.code; c.Adopts != "" {
 		r.say("adopted", c.Adoption)
-		r.rest(c.AdoptionStanding, "whose table "+c.Edition+" takes")
+		r.rest(c.AdoptionStanding, c.adoptionName())
 	}
 	if r.code.Superseded != "" {
 		r.say("superseded", r.code.Superseded)
 	}
 }
+
+// adoptionName names the adoption of another code's table.
+func (c *Code) adoptionName() string { return "that " + c.Edition + " takes the table of " + c.Adopts }
 
 // near adds how near the average velocity is to another class. It is called
 // where the class hangs on it.
@@ -180,7 +183,7 @@ func (r *ruling) restingOn(s Standing) string {
 // override notes that a condition settled the class, and what the averages
 // alone would have given.
 func (r *ruling) override(c *Condition) {
-	alone, averages := r.byAverages()
+	alone, averages := r.byAverages(), r.averagesText()
 	switch {
 	case c.Kind == Special:
 		r.say("special-study", "class "+c.Class+" calls for a site-specific study ("+c.Clause+"); by the average alone, "+

@@ -33,10 +33,15 @@ type extent struct {
 // they state themselves: peat by the word in their description, clay by PI,
 // water content and strength. ok is false where they state nothing, or the
 // limits are none that a layer could state. Ground that states too little
-// leaves the condition not assessed unless the rest of it settles it.
+// leaves the condition not assessed unless the rest of it settles it. A note
+// says so, but where nothing at all meets the limits, which the step tells.
 func (r *ruling) fromLayers(c *Condition) (o Outcome, ok bool) {
 	limit, ok := c.limitOn(Thickness)
-	if !ok || c.Fact != Peat && r.given&(profile.GivenPI|profile.GivenWaterContent|profile.GivenSu) == 0 {
+	states := r.given&(profile.GivenPI|profile.GivenWaterContent|profile.GivenSu) != 0
+	if c.Fact == Peat {
+		states = r.named
+	}
+	if !ok || !states {
 		return o, false
 	}
 	f := r.find(c, limit)
@@ -53,7 +58,9 @@ func (r *ruling) fromLayers(c *Condition) (o Outcome, ok bool) {
 		o.State, o.Steps = NotAssessed, nil
 		text += ", and " + unknownGround(f.unknown) + " does not tell"
 	}
-	o.Notes = []profile.Note{note("from-layers", text)}
+	if f.meets > 0 || o.State == NotAssessed {
+		o.Notes = []profile.Note{note("from-layers", text)}
+	}
 	return o, true
 }
 

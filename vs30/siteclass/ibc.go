@@ -1,14 +1,16 @@
 package siteclass
 
+import "strings"
+
 // The International Building Codes have no site-class table of their own:
 // they send the reader to chapter 20 of the edition of ASCE/SEI 7 that they
 // adopt.
 
 // ibc2012 returns the International Building Code of 2012.
-func ibc2012() *Code { return ibc("2012", "1613.3.2", asce7_10(), Checked) }
+func ibc2012() *Code { return ibc("2012", "1613.3", asce7_10(), Checked) }
 
 // ibc2015 returns the International Building Code of 2015.
-func ibc2015() *Code { return ibc("2015", "1613.3.2", asce7_10(), Checked) }
+func ibc2015() *Code { return ibc("2015", "1613.3", asce7_10(), Checked) }
 
 // ibc2018 returns the International Building Code of 2018.
 func ibc2018() *Code { return ibc("2018", "1613.2.2", asce7_16(), OneSource) }
@@ -20,7 +22,8 @@ func ibc2021() *Code { return ibc("2021", "1613.2.2", asce7_16(), FromMemory) }
 func ibc2024() *Code { return ibc("2024", "1613.2", asce7_22(), OneSource) }
 
 func ibc(year, clause string, table *Code, s Standing) *Code {
-	c := adopted(table, "IBC "+year+" ("+clause+") takes its site classes from "+table.Edition+", chapter 20; that table decides", s)
+	edition, _, _ := strings.Cut(table.Edition, " with ")
+	c := adopted(table, "IBC "+year+" ("+clause+") takes its site classes from "+edition+", chapter 20; that table decides", s)
 	c.ID = "ibc-" + year
 	c.Title = "International Building Code"
 	c.Edition = "IBC " + year
@@ -29,11 +32,14 @@ func ibc(year, clause string, table *Code, s Standing) *Code {
 	return c
 }
 
-// adopted returns the code of a table under another name.
+// adopted returns the code of a table under another name. It stands no better
+// than the table, nor than the adoption.
 func adopted(table *Code, how string, s Standing) *Code {
 	c := *table
 	c.Adopts, c.Adoption, c.AdoptionStanding = table.ID, how, s
-	c.Table = table.Edition + " " + table.Table
+	c.Standing = max(c.Standing, s)
+	edition, _, _ := strings.Cut(table.Edition, " with ")
+	c.Table = table.Table + " of " + edition
 	c.ready = nil
 	return &c
 }

@@ -274,6 +274,7 @@ type prepared struct {
 	bounds   [AverageSu + 1][]float64 // of each column
 	over     string                   // "v̄s over 100 ft"
 	subjects []subject                // of each band
+	rows     []string                 // names of the rows, as a standing lists them
 }
 
 // subject is what a band is compared with, in words: whole, and at either end
@@ -294,6 +295,7 @@ func (c *Code) prepare() {
 	}
 	for i := range c.Bands {
 		p.subjects = append(p.subjects, subjectOf(p.over+", class "+c.Bands[i].Class))
+		p.rows = append(p.rows, c.rowName(i))
 	}
 	c.ready = p
 }

@@ -49,7 +49,9 @@ func (r *ruling) record(c *Condition, o Outcome) {
 	r.d.Steps = append(r.d.Steps, o.Steps...)
 	r.d.Notes = append(r.d.Notes, o.Notes...)
 	if o.State == Met || o.State == NotMet && weighed(o.Steps) {
-		r.rest(c.Standing, c.Text+" ("+c.Clause+")")
+		if c.Standing != Checked {
+			r.rest(c.Standing, c.Text+" ("+c.Clause+")")
+		}
 	}
 	if o.State == Met && c.Class != "" && !r.settled() {
 		r.d.Class = c.Class
@@ -69,7 +71,7 @@ func (r *ruling) restricted(c *Condition, o Outcome) Outcome {
 	if len(c.Only) == 0 {
 		return o
 	}
-	alone, _ := r.byAverages()
+	alone := r.byAverages()
 	if slices.Contains(c.Only, alone) {
 		return o
 	}
@@ -134,7 +136,7 @@ func (r *ruling) byAverage() string {
 		return c.Outside
 	}
 	b := &c.Bands[i]
-	r.rest(b.Standing, "class "+b.Class+" of "+c.Table)
+	r.restOnRow(i)
 	if b.Improving && len(vs30.Reversals(r.layers, r.datum, r.bottom())) > 0 {
 		r.say("not-improving", "the row of class "+b.Class+" asks for properties that improve with depth; here the velocity falls")
 	}

@@ -210,16 +210,16 @@ func (r *ruling) sayTally(t *tally) {
 		r.note("refusal", "%s of ground refused penetration and are counted as %d blows%s", metres(t.refused), refusalCount, rule)
 	}
 	if t.gap > 0 {
-		r.note("index-gap", "%s of ground have a plasticity index between cohesionless (%s) and cohesive (%s), which the code gives to neither; what the layer states decides",
-			metres(t.gap), a.Cohesionless, a.Cohesive)
+		r.sayOnce("index-gap", metres(t.gap)+" of ground have a plasticity index between cohesionless ("+a.Cohesionless.String()+
+			") and cohesive ("+a.Cohesive.String()+"), which the code gives to neither; what the layer states decides")
 	} else if t.guessed {
-		r.say("kind-assumed", "where no plasticity index tells, layers that state su are taken for cohesive and those that state N alone for cohesionless")
+		r.sayOnce("kind-assumed", "where no plasticity index tells, layers that state su are taken for cohesive and those that state N alone for cohesionless")
 	}
 	if t.left > 0 {
-		r.note("left-out", "%s of ground state nothing to tell whether they are cohesive, and are in none of these averages", metres(t.left))
+		r.sayOnce("left-out", metres(t.left)+" of ground state nothing to tell whether they are cohesive, and are in none of these averages")
 	}
 	if a.Unstated {
-		r.say("averaging-assumed", "the code prints no formula for averages of N and su; the harmonic mean is taken, each over its own layers")
+		r.sayOnce("averaging-assumed", "the code prints no formula for averages of N and su; the harmonic mean is taken, each over its own layers")
 	}
 }
 

@@ -103,7 +103,11 @@ func (r *ruling) belowReach() {
 func (r *ruling) halfSpace() {
 	last := &r.layers[len(r.layers)-1]
 	if used := r.bottom() - max(last.Top, r.datum); last.HalfSpace() && used > vs30.Touching && !r.extended() {
-		r.say("half-space", "from "+metres(last.Top)+" below ground level on, the ground averaged is the half-space, "+short(last.Vs)+" m/s")
+		from := "from ground level on"
+		if last.Top > 0 {
+			from = "from " + metres(last.Top) + " below ground level on"
+		}
+		r.say("half-space", from+", the ground averaged is the half-space, "+short(last.Vs)+" m/s")
 	}
 }
 

@@ -1,0 +1,158 @@
+// Package spreadsheet reads tables of layers in workbooks (Office Open XML,
+// XLSX).
+//
+// A table may stand anywhere on any sheet: its header is the row that names a
+// column of Vs and one of top, bottom, thickness or depth. What package
+// delimited says of headings, units, depths and numbers holds here too. Tables
+// may follow one another down a sheet, each with its header, or stand side by
+// side with a blank column between them. A table ends where the next header in
+// its columns begins; blank rows do not end it, so that no layer is lost. Cells
+// outside the columns that a header names are not read.
+//
+// # Titles and statements
+//
+// Rows above a header that are no layers belong to its table. A cell
+// "method: MASW", or a cell "method" with "MASW" in the cell to the right of
+// it, states what the lines above a table in text do; other text is kept as a
+// comment. Text below a table is kept out of it and noted.
+//
+// # Names
+//
+// A profile is named by its column, or by a statement "name: …". Otherwise, one
+// table on a sheet is named after the sheet, unless it is the workbook's only
+// table and the sheet has the name that a new workbook gives it: then it is
+// named after the file. Several tables on a sheet are named by the title above
+// each, if each has one of its own, or after the sheet with a number.
+//
+// # Cells
+//
+// Numbers are read as stored, to the 15 digits that a spreadsheet shows; a
+// percentage as it is shown. A date where a number is due is a fault. Of a
+// formula its stored value is read; nothing is evaluated. Merged cells all hold
+// the value of the first. Hidden rows, columns and sheets are read and noted.
+package spreadsheet
+
+import (
+	"crypto/sha256"
+	"encoding/hex"
+	"errors"
+	"slices"
+
+	"shearbook/profile"
+	"shearbook/profile/delimited"
+)
+
+// Limits of what Read takes in, beside those of package delimited. Beyond them
+// it says so and stops.
+const (
+	MaxBytes     = delimited.MaxBytes // of a file
+	MaxUnzipped  = 256 << 20          // bytes of its sheets and texts, unzipped
+	MaxParts     = 64 << 20           // bytes of everything else in it, unzipped
+	MaxPart      = 8 << 20            // bytes of one XML part that is no sheet and no text
+	MaxFiles     = 5_000              // parts
+	MaxSheets    = 100
+	MaxSheetRows = 2_000_000  // of all sheets, blank ones before the last included
+	MaxCells     = 10_000_000 // of all sheets, blank ones left of others included
+	MaxTables    = 10_000
+	MaxInspected = 200_000 // cells of the rectangle that a sheet fills; a larger one is not looked through for what Read calls inspected
+	MaxMerged    = 2_000   // merged ranges of a sheet that is inspected
+)
+
+// Options says how to read a file. The zero value reads what the file states.
+type Options struct {
+	// Units are for what the file states no unit for, in the form of
+	// delimited.ParseUnits: "ft, ft/s".
+	Units string
+}
+
+// Read returns the profiles of a workbook in the order of its sheets and of
+// the tables on them. An error is a profile.Faults, each fault at its cell.
+// Beside the notes of delimited.Read a profile may carry these:
+//
+//   - hidden-rows, hidden-columns, hidden-sheet: what is hidden and was read.
+//   - row-not-read: text below a table.
+//   - sheet-not-inspected: the sheet is too large to be inspected for merged
+//     cells, hidden columns and formulas without a stored value.
+func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
+	if _, err := delimited.ParseUnits(opt.Units); err != nil {
+		return nil, err
+	}
+	r := reader{collector: collector{file: file}, opt: opt}
+	sum := sha256.Sum256(data)
+	r.reading = profile.Reading{File: file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data)), Encoding: "XLSX"}
+	if r.checkZip(data) {
+		r.readBook(data)
+	}
+	if err := r.err(); err != nil {
+		return nil, err
+	}
+	return r.profiles, nil
+}
+
+// reader is the state of reading one file.
+type reader struct {
+	collector
+	opt      Options
+	reading  profile.Reading // what the readings of all profiles share
+	rows     int             // read so far, of all sheets
+	cells    int
+	tables   []*table
+	profiles []profile.Profile
+}
+
+// place is the place of a cell.
+func (r *reader) place(sheet string, row, column int) profile.Place {
+	return profile.Place{Line: row, Column: column, Cell: profile.CellName(sheet, row, column)}
+}
+
+// readTables reads the tables that were found.
+func (r *reader) readTables() {
+	if len(r.tables) == 0 {
+		r.fault(profile.Place{}, "name the columns in a row above the layers, such as top_m, bottom_m, vs_mps",
+			"no sheet holds a table of layers: no row names a column of Vs and one of depth")
+		return
+	}
+	nameTables(r.tables)
+	began := map[string]profile.Place{}
+	for i, t := range r.tables {
+		reading := r.reading
+		reading.Sheet = t.sheet.name
+		profiles, err := t.Read(reading, delimited.Options{Units: r.opt.Units})
+		t.Table = delimited.Table{} // its cells are in the profiles now
+		if err != nil {
+			if r.addFaults(err); r.total >= profile.MaxFaults && i < len(r.tables)-1 {
+				r.stop("mend these first", "%s after these were not looked at", profile.Plural(len(r.tables)-1-i, "table"))
+				return
+			}
+			continue
+		}
+		for _, p := range profiles {
+			r.take(p, t, began)
+		}
+	}
+}
+
+// addFaults adds the faults of one table.
+func (r *reader) addFaults(err error) {
+	var faults profile.Faults
+	if !errors.As(err, &faults) {
+		r.fault(profile.Place{}, "", "%v", err)
+		return
+	}
+	for _, each := range faults {
+		r.fault(each.Place, each.Hint, "%s", each.Text)
+	}
+}
+
+// take takes a profile of table t unless one of its name was taken before.
+func (r *reader) take(p profile.Profile, t *table, began map[string]profile.Place) {
+	at := r.place(t.sheet.name, p.Reading.Rows[0].Line, t.from+1)
+	if before, ok := began[p.Name]; ok {
+		r.fault(at, "give each table a title, a sheet or a column of profile names of its own", "duplicate profile %s: one of that name began at %s",
+			profile.Quote(p.Name), before.Cell)
+		return
+	}
+	began[p.Name] = at
+	p.Notes = slices.Concat(t.notes(&p), p.Notes)
+	r.profiles = append(r.profiles, p)
+}
