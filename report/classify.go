@@ -70,6 +70,9 @@ func Classify(p *profile.Profile, code *siteclass.Code, facts Facts) (siteclass.
 // Average30 returns the average in m/s over 30 m below a datum, of the
 // profile extended as facts say where it is too short; nil if there is none.
 func Average30(p *profile.Profile, datum float64, facts Facts) *float64 {
+	if p.NoVelocity {
+		return nil
+	}
 	layers := p.Layers
 	if last := layers[len(layers)-1]; last.Bottom < datum+30-vs30.Touching && facts.Extend != "" {
 		var err error

@@ -65,6 +65,8 @@ func (r *reader) assemble() bool {
 			Survey:   r.preamble.base.Survey,
 			Position: r.preamble.base.Position,
 			Reading:  reading,
+
+			NoVelocity: !r.has(profile.Vs),
 		}
 		if lines := own[s.name]; lines != nil {
 			r.applyOwn(&p, lines)

@@ -206,7 +206,7 @@ func (r *reader) has(q profile.Quantity) bool { return r.columns.index[q] >= 0 }
 // required looks for the columns that a table cannot do without.
 func (r *reader) required() bool {
 	depth := r.has(profile.Top) || r.has(profile.Bottom) || r.has(profile.Thickness)
-	vs := r.has(profile.Vs)
+	vs := r.has(profile.Vs) || r.tested()
 	at := r.headerSpot()
 	switch {
 	case !vs && !depth:
@@ -229,6 +229,24 @@ func (r *reader) required() bool {
 		return false
 	}
 	return vs && depth
+}
+
+// tested reports whether a table without velocities has blow counts or
+// strengths instead.
+func (r *reader) tested() bool {
+	return !r.has(profile.Vs) && (r.has(profile.N) || r.has(profile.Su))
+}
+
+// principal is the quantity whose cell stands for a layer in messages: its
+// Vs, or what the table has instead.
+func (r *reader) principal() profile.Quantity {
+	switch {
+	case r.has(profile.Vs):
+		return profile.Vs
+	case r.has(profile.N):
+		return profile.N
+	}
+	return profile.Su
 }
 
 func (r *reader) columnOf(q profile.Quantity) *column { return &r.columns.list[r.columns.index[q]] }

@@ -80,11 +80,13 @@ func (r *reader) cellFault(q profile.Quantity, hint, problem string) {
 
 // layer reads the layer in the present row, but for its boundaries.
 func (r *reader) layer(l *profile.Layer) {
-	var st state
-	if l.Vs, st = r.positive(profile.Vs); st == blank {
-		r.cellFault(profile.Vs, "give the velocity of every layer", "is blank")
+	if r.has(profile.Vs) {
+		var st state
+		if l.Vs, st = r.positive(profile.Vs); st == blank {
+			r.cellFault(profile.Vs, "give the velocity of every layer", "is blank")
+		}
 	}
-	at := r.scan.place(r.columns.index[profile.Vs])
+	at := r.scan.place(r.columns.index[r.principal()])
 	l.Line, l.Column = int32(at.line), int32(at.column)
 	l.VsBottom, _ = r.positive(profile.VsBottom)
 	for _, o := range []struct {

@@ -60,6 +60,8 @@ func writable(profiles []profile.Profile) error {
 			return fmt.Errorf("the name %s of profile %d is blank or not one line of plain text", quote(p.Name), i+1)
 		case names[p.Name]:
 			return fmt.Errorf("two profiles have the name %s", quote(p.Name))
+		case p.NoVelocity != profiles[0].NoVelocity:
+			return fmt.Errorf("profile %s and profile %s cannot share a table: only one of them states velocities", quote(p.Name), quote(profiles[0].Name))
 		}
 		names[p.Name] = true
 		if faults := profile.Validate(p); len(faults) > 0 {
@@ -86,7 +88,7 @@ var fields = []field{
 		}
 		return digits(l.Bottom)
 	}},
-	{"vs_mps", nil, func(_ *profile.Profile, l *profile.Layer) string { return digits(l.Vs) }},
+	{"vs_mps", func(l *profile.Layer) bool { return l.Vs != 0 }, func(_ *profile.Profile, l *profile.Layer) string { return digits(l.Vs) }},
 	{
 		"vs_bottom_mps",
 		func(l *profile.Layer) bool { return l.VsBottom != 0 },

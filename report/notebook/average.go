@@ -33,7 +33,7 @@ func evaluateAverage(ev *evaluation, c call) []report.Block {
 	if name != "" {
 		ev.nameAverage(&m, name, sites, datum, depth)
 	}
-	return ev.each(sites, func(s *site) []report.Block {
+	return ev.eachMeasured(sites, func(s *site) []report.Block {
 		from := s.datum
 		if datum.Known {
 			from = datum.Value

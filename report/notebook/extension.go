@@ -28,7 +28,7 @@ func evaluateExtend(ev *evaluation, c call) []report.Block {
 	m.word("by", report.Extensions()) // taken by choices before anything was evaluated
 	depth := m.value("depth", profile.Length, "30 m")
 	m.rest()
-	return ev.each(sites, func(s *site) []report.Block {
+	return ev.eachMeasured(sites, func(s *site) []report.Block {
 		thickness := ev.averagingDepth(s, ev.code())
 		if depth.Known {
 			thickness = depth.Value

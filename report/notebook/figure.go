@@ -35,16 +35,17 @@ func evaluateFigure(ev *evaluation, c call) []report.Block {
 	}
 	m.rest()
 	if kind == "travel" {
-		return ev.each(sites, func(s *site) []report.Block {
+		return ev.eachMeasured(sites, func(s *site) []report.Block {
 			thickness := ev.averagingDepth(s, code)
 			layers, _ := ev.layersTo(s, s.datum, thickness)
 			return ev.travelFigure(s, layers, s.datum, thickness, c.at)
 		})
 	}
-	if len(sites) == 0 {
-		return nil
+	with := measured(sites)
+	if len(with) == 0 {
+		return ev.eachMeasured(sites, nil)
 	}
-	return ev.velocityFigure(sites, code, caption, c.at)
+	return ev.velocityFigure(with, code, caption, c.at)
 }
 
 // averagingDepth is the thickness a code averages over, 30 m without one.

@@ -63,8 +63,10 @@ func (ev *evaluation) layerTable(s *site) *report.Table {
 		Columns: []report.TableColumn{
 			column("Layer", report.AlignRight), column("Top ("+unit+")", report.AlignDecimal),
 			column("Bottom ("+unit+")", report.AlignDecimal), column("Thickness ("+unit+")", report.AlignDecimal),
-			column("Vs ("+ev.system.velocity().Name+")", report.AlignDecimal),
 		},
+	}
+	if !p.NoVelocity {
+		t.Columns = append(t.Columns, column("Vs ("+ev.system.velocity().Name+")", report.AlignDecimal))
 	}
 	var optional []layerColumn
 	for _, c := range ev.layerColumns() {
@@ -82,7 +84,10 @@ func (ev *evaluation) layerTable(s *site) *report.Table {
 		t.Columns = append(t.Columns, wide("Ground"))
 	}
 	for i, l := range p.Layers {
-		r := row(strconv.Itoa(i+1), ev.length(l.Top), ev.bottom(l), ev.thickness(l), ev.velocity(l.Vs))
+		r := row(strconv.Itoa(i+1), ev.length(l.Top), ev.bottom(l), ev.thickness(l))
+		if !p.NoVelocity {
+			r.Cells = append(r.Cells, words(ev.velocity(l.Vs)))
+		}
 		for _, c := range optional {
 			text := "–"
 			if c.used(l) {
@@ -127,6 +132,9 @@ func (ev *evaluation) thickness(l profile.Layer) string {
 
 // basisSentence says how the velocities came to be known.
 func (ev *evaluation) basisSentence(p *profile.Profile) string {
+	if p.NoVelocity {
+		return "The file states no velocities."
+	}
 	switch basis := basisOf(p); basis {
 	case "measured":
 		return "The velocities are measured interval velocities."

@@ -25,7 +25,7 @@ var siteWorking = Working{
 
 func evaluateSite(ev *evaluation, c call) []report.Block {
 	m := ev.keys(c)
-	sites := ev.of(&m)
+	sites := measured(ev.of(&m))
 	depth := m.value("depth", profile.Length, "30 m")
 	sigma := m.positive("sigma", spread.MaxSigma)
 	title := m.text("heading")

@@ -49,9 +49,17 @@ func (ev *evaluation) layersTo(s *site, from, thickness float64) (layers []profi
 	return extended, notes
 }
 
+// noVelocity says that a profile has none.
+func noVelocity(s *site) string {
+	return "profile " + s.profile.Name + " states no velocities"
+}
+
 // average returns the time-averaged velocity over a thickness below a datum
 // with its notes.
 func (ev *evaluation) average(s *site, from, thickness float64) Quantity {
+	if s.profile.NoVelocity {
+		return missing(noVelocity(s))
+	}
 	layers, notes := ev.layersTo(s, from, thickness)
 	v, err := vs30.Average(layers, from, thickness)
 	if err != nil {
@@ -173,6 +181,9 @@ func (ev *evaluation) resultsOf(s *site) Results {
 	r := Results{Name: p.Name, Vs30: ev.average(s, s.datum, 30), Datum: metres(s.datum), Reached: metres(p.DepthReached()),
 		Slowest: metresPerSecond(slow), Fastest: metresPerSecond(fast), Layers: len(p.Layers),
 		Method: p.Survey.Method, Basis: basisOf(p)}
+	if p.NoVelocity {
+		r.Slowest, r.Fastest = missing(noVelocity(s)), missing(noVelocity(s))
+	}
 	code := ev.code()
 	if code == nil {
 		none := missing("the front matter names no code")

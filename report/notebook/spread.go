@@ -66,7 +66,7 @@ func evaluateSpread(ev *evaluation, c call) []report.Block {
 		m.add(m.at(m.get("sigma")), "keep one of them", "sigma and average sigma are two ways to say it")
 	}
 	m.rest()
-	return ev.each(sites, func(s *site) []report.Block { return ev.spreadBlocks(s, k) })
+	return ev.eachMeasured(sites, func(s *site) []report.Block { return ev.spreadBlocks(s, k) })
 }
 
 // positive returns the value of a key as a plain number above 0 and at most

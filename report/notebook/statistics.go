@@ -22,7 +22,7 @@ func evaluateStatistics(ev *evaluation, c call) []report.Block {
 	depth := m.value("depth", profile.Length, "20 m")
 	drawn := m.word("figure", []string{"yes", "no"}) == "yes"
 	m.rest()
-	return ev.each(sites, func(s *site) []report.Block {
+	return ev.eachMeasured(sites, func(s *site) []report.Block {
 		depths := ev.depths(s, depth)
 		if len(depths) == 0 {
 			return nil

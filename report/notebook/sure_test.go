@@ -5,6 +5,7 @@ import (
 	"testing"
 
 	"shearbook/report"
+	"shearbook/templates"
 )
 
 // markdown returns a report as Markdown.
@@ -136,5 +137,24 @@ func TestEquivalentProfilesOfOneSurvey(t *testing.T) {
 	row := cellsOf(t, r, "3,000 draws from 3 profiles, seed 1995")
 	if row[2] != "270.0" || row[4] != "300.0" || row[6] != "330.0" {
 		t.Errorf("row %q", row)
+	}
+}
+
+// A profile of blow counts alone goes through the standard template: K9 of
+// three layers, capped at 100 blows: 100 ft / (20/8 + 30/25 + 50/100) = 23.81.
+func TestProfileWithoutVelocities(t *testing.T) {
+	folder["blows.csv"] = "bottom (ft),N,soil\n20,8,fill\n50,25,sand\n100,140,gravel\n"
+	r := mustEvaluate(t, "---\ncode: asce-7-16\nprofiles:\n  B: {file: blows.csv}\n---\n"+templates.Standard)
+	if got := r.Results[0]; got.Class != "D" || got.VelocitySI != nil || got.Vs30 != nil || got.Route == "velocity" {
+		t.Errorf("class %s by %s, velocity %v", got.Class, got.Route, got.VelocitySI)
+	}
+	text := markdown(t, r)
+	for _, want := range []string{"states no velocities", "23.8"} {
+		if !strings.Contains(text, want) {
+			t.Errorf("the report does not say %q", want)
+		}
+	}
+	if strings.Contains(text, "NaN") || strings.Contains(text, "Inf") {
+		t.Error("the report prints a number that is none")
 	}
 }

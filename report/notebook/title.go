@@ -125,7 +125,10 @@ func (ev *evaluation) summaryBox(s *site, d siteclass.Decision) *report.Summary 
 	for _, f := range d.Found {
 		add(f.Of, foundText(f))
 	}
-	add("How measured", method+"; velocities "+d.Basis+"; reached "+ev.bothLengths(p.DepthReached()))
+	if d.Basis != "" {
+		method += "; velocities " + d.Basis
+	}
+	add("How measured", method+"; reached "+ev.bothLengths(p.DepthReached()))
 	add("Next class", marginField(d), otherNotes(d)...)
 	add("Standing of the table", d.Standing.String())
 	if n := len(d.Unassessed); n > 0 {

@@ -121,6 +121,28 @@ func (ev *evaluation) each(sites []*site, f func(*site) []report.Block) []report
 	return blocks
 }
 
+// eachMeasured is each for the sites whose profile states velocities; of the
+// others it says that they do not.
+func (ev *evaluation) eachMeasured(sites []*site, f func(*site) []report.Block) []report.Block {
+	return ev.each(sites, func(s *site) []report.Block {
+		if s.profile.NoVelocity {
+			return one(para(capital(noVelocity(s)) + "."))
+		}
+		return f(s)
+	})
+}
+
+// measured are the sites whose profile states velocities.
+func measured(sites []*site) []*site {
+	var out []*site
+	for _, s := range sites {
+		if !s.profile.NoVelocity {
+			out = append(out, s)
+		}
+	}
+	return out
+}
+
 // The pieces below are what workings build their blocks from.
 
 func heading(level int, text string) *report.Heading {
