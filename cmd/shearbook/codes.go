@@ -181,7 +181,7 @@ func (s streams) describe(c *siteclass.Code) string {
 		g.rows = append(g.rows, cells(r.Cells))
 	}
 	b.WriteString("\n" + g.String())
-	writeList(&b, "rules beside the columns, the first that holds decides", rulesText(c))
+	writeList(&b, "rules beside the columns, the first that holds decides", notebook.RuleTexts(c))
 	writeList(&b, "figures that these rules rest on", termsText(c))
 	if len(c.Conditions) > 0 {
 		b.WriteString("\n  conditions beside the average\n")
@@ -210,23 +210,6 @@ func routesText(c *siteclass.Code) string {
 		text, last = text+r.Name, r.Rank
 	}
 	return text
-}
-
-// rulesText are the rules that are no columns, in their order.
-func rulesText(c *siteclass.Code) []string {
-	var texts []string
-	for _, r := range c.Rules {
-		clause := r.Clause
-		if clause == "" {
-			clause = c.Table
-		}
-		text := fmt.Sprintf("%s: %s (%s; %s)", r.Class, r, clause, r.Standing)
-		if r.Indicative {
-			text += ", shown and not deciding"
-		}
-		texts = append(texts, text)
-	}
-	return texts
 }
 
 // termsText are the figures that a code's own rule rests on.

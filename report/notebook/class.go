@@ -1,6 +1,7 @@
 package notebook
 
 import (
+	"fmt"
 	"math"
 	"strconv"
 	"strings"
@@ -149,10 +150,32 @@ func ClassTable(code *siteclass.Code) *report.Table {
 		r.Cells = append(r.Cells, words(b.Standing.String()))
 		t.Rows = append(t.Rows, r)
 	}
-	for _, n := range code.Notes {
-		t.Notes = append(t.Notes, words(sentence(n)))
+	for _, rule := range RuleTexts(code) {
+		t.Notes = append(t.Notes, words("Rule, the first that holds decides: "+sentence(rule)))
+	}
+	for _, n := range append([]string{code.Superseded, code.Adoption, code.Default}, code.Notes...) {
+		if n != "" {
+			t.Notes = append(t.Notes, words(sentence(n)))
+		}
 	}
 	return t
+}
+
+// RuleTexts returns the rules of a code that are no columns, in their order.
+func RuleTexts(c *siteclass.Code) []string {
+	var texts []string
+	for _, r := range c.Rules {
+		clause := r.Clause
+		if clause == "" {
+			clause = c.Table
+		}
+		text := fmt.Sprintf("%s: %s (%s; %s)", r.Class, r, clause, r.Standing)
+		if r.Indicative {
+			text += ", shown and not deciding"
+		}
+		texts = append(texts, text)
+	}
+	return texts
 }
 
 func orDash(text string) string {
