@@ -7,6 +7,7 @@ import (
 	"testing"
 
 	"shearbook/report"
+	"shearbook/report/notebook"
 	"shearbook/vs30/siteclass"
 )
 
@@ -95,7 +96,7 @@ func TestDescribe(t *testing.T) {
 			}
 		}
 		flat := strings.Join(strings.Fields(text), " ")
-		pieces := append(append(rulesText(c), termsText(c)...), c.Notes...)
+		pieces := append(append(notebook.RuleTexts(c), termsText(c)...), c.Notes...)
 		for _, k := range c.Conditions {
 			pieces = append(pieces, k.Text)
 		}
