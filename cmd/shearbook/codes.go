@@ -56,9 +56,11 @@ may be added; schema grows when one changes its meaning or goes away.`,
   shearbook codes asce-7-16
   shearbook codes --differences asce-7-16 asce-7-22
   shearbook codes nbcc-2015 --format yaml > local.yaml`,
-		Args:      codesArguments,
-		ValidArgs: codeIDs(),
-		RunE:      func(_ *cobra.Command, args []string) error { return codes(s, f, args) },
+		Args: codesArguments,
+		ValidArgsFunction: func(*cobra.Command, []string, string) ([]cobra.Completion, cobra.ShellCompDirective) {
+			return codeIDs(), cobra.ShellCompDirectiveNoFileComp
+		},
+		RunE: func(_ *cobra.Command, args []string) error { return codes(s, f, args) },
 	}
 	fl := c.Flags()
 	fl.StringVar(&f.format, "format", "text", "`text, json or yaml`")

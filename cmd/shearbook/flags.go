@@ -42,7 +42,9 @@ func completeWords(c *cobra.Command, flag string, words ...string) {
 
 // completeCodes lets the shell complete --code.
 func completeCodes(c *cobra.Command) {
-	completeWords(c, "code", codeIDs()...)
+	_ = c.RegisterFlagCompletionFunc("code", func(*cobra.Command, []string, string) ([]cobra.Completion, cobra.ShellCompDirective) {
+		return codeIDs(), cobra.ShellCompDirectiveNoFileComp
+	}) // fails only for a flag that is not there
 }
 
 func codeIDs() []string {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"slices"
 	"strings"
+	"sync"
 
 	"shearbook/profile"
 )
@@ -52,8 +53,9 @@ var builders = []func() *Code{
 	ubc97,
 }
 
-// codes holds the built-in codes, ordered by ID. It is never changed.
-var codes = func() []*Code {
+// codes returns the built-in codes, ordered by ID, made when they are first
+// asked for: a command that needs none does not wait for them.
+var codes = sync.OnceValue(func() []*Code {
 	all := make([]*Code, len(builders))
 	for i, build := range builders {
 		all[i] = build()
@@ -61,20 +63,20 @@ var codes = func() []*Code {
 	}
 	slices.SortStableFunc(all, func(a, b *Code) int { return strings.Compare(a.ID, b.ID) })
 	return all
-}()
+})
 
 // All returns the built-in codes, ordered by ID.
-func All() []*Code { return slices.Clone(codes) }
+func All() []*Code { return slices.Clone(codes()) }
 
 // Find returns the built-in code of that ID. The error is an *UnknownError.
 func Find(id string) (*Code, error) {
-	for _, c := range codes {
+	for _, c := range codes() {
 		if c.ID == id {
 			return c, nil
 		}
 	}
-	ids := make([]string, len(codes))
-	for i, c := range codes {
+	ids := make([]string, len(codes()))
+	for i, c := range codes() {
 		ids[i] = c.ID
 	}
 	return nil, &UnknownError{ID: id, Nearest: nearest(id, ids)}
