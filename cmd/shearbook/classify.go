@@ -21,6 +21,7 @@ type classifyFlags struct {
 	codes, codeFiles                 []string
 	datum, foundation, extend, units string
 	format                           string
+	maps                             []string
 }
 
 func newClassify(s streams) *cobra.Command {
@@ -46,6 +47,7 @@ start from.`,
 	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
 	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
 	fl.StringVar(&f.units, "units", "", "`units` the file does not state: \"m, m/s\"")
+	fl.StringArrayVar(&f.maps, "map", nil, "`name` in AGS4 or LAS: \"Vs=DTS [us/ft]\"")
 	fl.StringVar(&f.format, "format", "text", "`text or json`")
 	codeFilesFlag(c, &f.codeFiles)
 	completeCodes(c)
@@ -64,7 +66,7 @@ func classify(s streams, f classifyFlags, names []string) error {
 	var faults profile.Faults
 	var found []classified
 	for _, name := range names {
-		profiles, err := openProfiles(s.in, name, f.units)
+		profiles, err := openProfiles(s.in, name, open.Options{Units: f.units, Map: f.maps})
 		if err != nil {
 			if faults, err = join(faults, err); err != nil {
 				return err
@@ -156,11 +158,11 @@ func (f classifyFlags) read() (facts report.Facts, codes []*siteclass.Code, err 
 }
 
 // openProfiles reads a file, or standard input for -.
-func openProfiles(in io.Reader, name, units string) ([]profile.Profile, error) {
+func openProfiles(in io.Reader, name string, opt open.Options) ([]profile.Profile, error) {
 	if name == "-" {
-		return open.Reader("standard input", in, open.Options{Units: units})
+		return open.Reader("standard input", in, opt)
 	}
-	return open.File(name, open.Options{Units: units})
+	return open.File(name, opt)
 }
 
 // join adds the faults of err to faults; an error of another kind comes

@@ -52,6 +52,7 @@ standard template.`,
 	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
 	fl.StringSliceVar(&f.standard.Codes, "code", nil, "`ID`s of codes, for a profile file")
 	fl.StringVar(&f.standard.Units, "units", "", "`units` the file does not state: \"m, m/s\"")
+	fl.StringArrayVar(&f.standard.Map, "map", nil, "`name` in AGS4 or LAS: \"Vs=DTS [us/ft]\"")
 	fl.StringVar(&f.datum, "datum", "", "`depth` to average from: 2.5m")
 	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
 	fl.StringVar(&f.standard.Project, "project", "", "`name`, for a profile file")
@@ -66,7 +67,7 @@ standard template.`,
 }
 
 // forProfileOnly are the flags that a notebook says itself.
-var forProfileOnly = []string{"code", "code-file", "units", "datum", "foundation-depth", "project", "prepared-by", "date"}
+var forProfileOnly = []string{"code", "map", "code-file", "units", "datum", "foundation-depth", "project", "prepared-by", "date"}
 
 // writeReport is the whole of `shearbook report`.
 func writeReport(s streams, c *cobra.Command, f reportFlags, source string) error {

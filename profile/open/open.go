@@ -1,7 +1,9 @@
 // Package open reads a profile file of any kind that is read: it looks at
 // what the file begins with and calls the reader for it. In this version that
 // is a table of layers in text (package delimited) or in a workbook (package
-// spreadsheet); other kinds are named and refused, with a way out.
+// spreadsheet), a borehole log in LAS (package las), SiteXML (package sitexml)
+// or our own JSON (package json); other kinds are named and refused, with a way
+// out.
 package open
 
 import (
@@ -21,6 +23,11 @@ type Options struct {
 	// Units are for what the file states no unit for, as "ft, ft/s"; see
 	// delimited.ParseUnits.
 	Units string
+
+	// Map names the headings or curves of a file that would not be recognised,
+	// each as "Vs=DTS [us/ft]"; see ags.Options and las.Options. Other kinds of
+	// file refuse it.
+	Map []string
 }
 
 // Bytes reads the profiles in data. The name is that of the file; it stands
@@ -28,12 +35,26 @@ type Options struct {
 // profile.Faults.
 func Bytes(name string, data []byte, opt Options) ([]profile.Profile, error) {
 	if bytes.HasPrefix(data, []byte(zipped)) {
+		if len(opt.Map) > 0 {
+			return nil, unmapped(name)
+		}
 		return spreadsheet.Read(name, data, spreadsheet.Options{Units: opt.Units})
 	}
 	if kind, ok := sniff(data); ok {
+		if read := readers[kind.begins]; read != nil {
+			return read(name, data, opt)
+		}
 		return nil, fault(name, kind.hint, "the file is %s, which this version does not read", kind.what)
 	}
+	if len(opt.Map) > 0 {
+		return nil, unmapped(name)
+	}
 	return delimited.Read(name, data, delimited.Options{Units: opt.Units})
+}
+
+// unmapped is the fault of a map given for a file that takes none.
+func unmapped(name string) error {
+	return fault(name, "name the column in its heading instead, as \"vs (m/s)\"", "only AGS4 and LAS files take a map")
 }
 
 // File reads the profiles in a file.

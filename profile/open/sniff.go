@@ -29,7 +29,11 @@ var binary = []kind{
 // textual are kinds of text, known by what stands before all else.
 var textual = []kind{
 	{`"GROUP"`, "an AGS4 file", hintTable},
+	{`"**PROJ"`, "an AGS file of edition 3 or older", "ask for it in AGS4"},
 	{"~V", "a LAS file", hintTable},
+	{"~W", "a LAS file", hintTable}, // with its sections out of order, or some missing
+	{"~C", "a LAS file", hintTable},
+	{"~A", "a LAS file", hintTable},
 	{"<", "an XML or HTML file", hintTable},
 	{"{", "a JSON file", hintTable},
 	{"[", "a JSON file", hintTable},
@@ -42,14 +46,27 @@ func sniff(data []byte) (kind, bool) {
 			return k, true
 		}
 	}
-	text := bytes.TrimLeft(bytes.TrimPrefix(data, []byte("\ufeff")), " \t\r\n")
+	text := bytes.TrimLeft(withoutMark(data), " \t\r\n")
 	if k, ok := textKind(text); ok {
 		return k, true
 	}
-	if k, ok := textKind(pastComments(text)); ok && k.begins == "~V" {
+	if k, ok := textKind(pastComments(text)); ok && k.begins[0] == '~' {
 		return k, true
 	}
 	return kind{}, false
+}
+
+// withoutMark is data without a byte order mark. Of a text in UTF-16 it is the
+// beginning, without the NULs that letters have there.
+func withoutMark(data []byte) []byte {
+	const most = 64 << 10
+	for _, mark := range []string{"\xff\xfe", "\xfe\xff"} {
+		data = bytes.TrimPrefix(data, []byte(mark))
+	}
+	if len(data) > 1 && (data[0] == 0) != (data[1] == 0) {
+		return bytes.ReplaceAll(data[:min(len(data), most)], []byte{0}, nil)
+	}
+	return bytes.TrimPrefix(data, []byte("\ufeff"))
 }
 
 // textKind is the kind whose text begins so, in either case.

@@ -92,7 +92,7 @@ type evaluation struct {
 func (ev *evaluation) load() {
 	files := map[string][]profile.Profile{}
 	for _, e := range ev.nb.Header.Profiles {
-		key := e.File + "\x00" + e.Units
+		key := strings.Join(append([]string{e.File, e.Units}, e.Map...), "\x00")
 		if _, ok := files[key]; !ok {
 			files[key] = ev.read(e)
 		}
@@ -109,7 +109,7 @@ func (ev *evaluation) read(e ProfileEntry) []profile.Profile {
 		ev.add(e.place, "name a file in the notebook's folder", "profile %q: %s cannot be read: %v", e.Key, e.File, profile.FileError(err))
 		return nil
 	}
-	profiles, err := open.Bytes(e.File, data, open.Options{Units: e.Units})
+	profiles, err := open.Bytes(e.File, data, open.Options{Units: e.Units, Map: e.Map})
 	var faults profile.Faults
 	switch {
 	case errors.As(err, &faults):

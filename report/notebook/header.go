@@ -44,10 +44,11 @@ type Header struct {
 
 // ProfileEntry is one profile that a notebook names.
 type ProfileEntry struct {
-	Key     string // the name that workings and expressions use
-	File    string // file, beside the notebook
-	Profile string // profile: its name inside the file; "" where the file holds one
-	Units   string // units the file does not state, as `m, m/s`
+	Key     string   // the name that workings and expressions use
+	File    string   // file, beside the notebook
+	Profile string   // profile: its name inside the file; "" where the file holds one
+	Units   string   // units the file does not state, as `m, m/s`
+	Map     []string // map: columns of an AGS4 or LAS file, each as "Vs=DTS [us/ft]"
 
 	Survey   profile.Survey   // what the notebook states; the rest comes from the file
 	Position profile.Position // likewise
@@ -147,6 +148,7 @@ func parseProfiles(m mapping) []ProfileEntry {
 
 func (e *ProfileEntry) read(in *mapping) {
 	e.File, e.Profile, e.Units = in.text("file"), in.text("profile"), in.text("units")
+	e.Map = in.texts("map")
 	e.Survey = profile.Survey{
 		Method: in.text("method"), Date: in.text("date"), Operator: in.text("operator"), Location: in.text("location"),
 		GroundLevel: in.value("ground level", profile.Length, "4.2 m"),

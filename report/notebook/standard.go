@@ -16,6 +16,7 @@ type Standard struct {
 	Codes             []string
 	CodeFiles         []string         // files of tables of their own, as ReadFile knows them
 	Units             string           // that the file does not state
+	Map               []string         // of its columns
 	Datum, Foundation profile.Optional // m below ground level
 	Project           string
 	PreparedBy        string
@@ -29,7 +30,7 @@ const StandardFile = "standard report template"
 // NewStandard returns the standard notebook of every profile of a file. The
 // error is a profile.Faults.
 func NewStandard(file string, data []byte, s Standard) (*Notebook, error) {
-	profiles, err := open.Bytes(file, data, open.Options{Units: s.Units})
+	profiles, err := open.Bytes(file, data, open.Options{Units: s.Units, Map: s.Map})
 	if err != nil {
 		return nil, err
 	}
@@ -77,6 +78,9 @@ func (s Standard) frontMatter(file string, profiles []profile.Profile) string {
 		if s.Units != "" {
 			b.WriteString(", units: " + quote(s.Units))
 		}
+		if len(s.Map) > 0 {
+			b.WriteString(", map: [" + quoteAll(s.Map) + "]")
+		}
 		b.WriteString("}\n")
 	}
 	b.WriteString("---\n\n")
@@ -84,6 +88,14 @@ func (s Standard) frontMatter(file string, profiles []profile.Profile) string {
 }
 
 func metreText(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) + " m" }
+
+func quoteAll(texts []string) string {
+	var quoted []string
+	for _, t := range texts {
+		quoted = append(quoted, quote(t))
+	}
+	return strings.Join(quoted, ", ")
+}
 
 // quote writes text as a double-quoted YAML scalar.
 func quote(text string) string {
