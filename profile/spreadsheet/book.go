@@ -3,10 +3,9 @@ package spreadsheet
 import (
 	"archive/zip"
 	"bytes"
+	"errors"
 	"path"
 	"strings"
-
-	"github.com/xuri/excelize/v2"
 
 	"shearbook/profile"
 )
@@ -15,28 +14,28 @@ const hintSave = "open it in a spreadsheet program, and save it as XLSX or the t
 
 // checkZip looks at the zip file's own list of its parts, before anything is
 // unzipped: whether it is a workbook, and how large.
-func (r *reader) checkZip(data []byte) bool {
+func (r *reader) checkZip(data []byte) (*zip.Reader, bool) {
 	if len(data) > MaxBytes {
 		r.stop("split it", "the file is larger than %d MiB", MaxBytes>>20)
-		return false
+		return nil, false
 	}
 	archive, err := zip.NewReader(bytes.NewReader(data), int64(len(data)))
 	if err != nil {
 		r.stop("was it copied or downloaded to its end?", "the file is damaged: as a zip file it has no list of its parts")
-		return false
+		return nil, false
 	}
 	if len(archive.File) > MaxFiles {
 		r.stop(hintSave, "the file has more than %d parts", MaxFiles)
-		return false
+		return nil, false
 	}
-	return r.checkKind(archive) && r.checkSizes(archive)
+	return archive, r.checkKind(archive) && r.checkSizes(archive)
 }
 
 // checkKind looks for the parts of a workbook.
 func (r *reader) checkKind(archive *zip.Reader) bool {
 	has := map[string]bool{}
 	for _, part := range archive.File {
-		has[strings.ToLower(strings.ReplaceAll(part.Name, `\`, "/"))] = true
+		has[partName(part.Name)] = true
 	}
 	const hint = "save it as XLSX, or the table as CSV"
 	switch {
@@ -54,12 +53,18 @@ func (r *reader) checkKind(archive *zip.Reader) bool {
 	return false
 }
 
-// checkSizes adds up how large the parts are unzipped. What they claim is
-// binding: unzipping ends in an error where a part is larger.
+// partName is the name of a part as names are compared: parts that differ in
+// case alone are the same (ISO/IEC 29500-2, part names).
+func partName(name string) string {
+	return strings.ToLower(strings.ReplaceAll(name, `\`, "/"))
+}
+
+// checkSizes adds up how large the parts claim to be unzipped, so that most
+// files that are too large are refused at once. Reading them counts again.
 func (r *reader) checkSizes(archive *zip.Reader) bool {
 	var sheets, others uint64
 	for _, part := range archive.File {
-		size, name := part.UncompressedSize64, strings.ToLower(strings.ReplaceAll(part.Name, `\`, "/"))
+		size, name := part.UncompressedSize64, partName(part.Name)
 		switch {
 		case size > MaxUnzipped:
 			sheets = MaxUnzipped + 1
@@ -81,73 +86,43 @@ func (r *reader) checkSizes(archive *zip.Reader) bool {
 	return sheets <= MaxUnzipped && others <= MaxParts
 }
 
-// readBook reads every sheet, and then the tables that they hold. A damaged
-// part may make the library that takes the file apart panic; that too is
-// reported as damage.
-func (r *reader) readBook(data []byte) {
-	if r.readSheets(data) && r.total == 0 {
+// readBook reads every sheet, and then the tables that they hold.
+func (r *reader) readBook(archive *zip.Reader) {
+	if r.readSheets(archive) && r.total == 0 {
 		r.readTables()
 	}
 }
 
-func (r *reader) readSheets(data []byte) (ok bool) {
-	defer func() {
-		if recover() != nil {
-			r.damaged("")
-			ok = false
-		}
-	}()
-	f, err := excelize.OpenReader(bytes.NewReader(data), excelize.Options{UnzipSizeLimit: MaxUnzipped + MaxParts, RawCellValue: true})
+func (r *reader) readSheets(archive *zip.Reader) bool {
+	b, err := openBook(archive)
 	if err != nil {
-		r.damaged("")
+		r.unreadable("", err)
 		return false
 	}
-	defer f.Close()
-	b := newBook(f)
-	list := f.GetSheetList()
-	if len(list) > MaxSheets {
+	if len(b.sheets) > MaxSheets {
 		r.stop("keep the layers in a workbook of their own", "the file has more than %d sheets", MaxSheets)
 		return false
 	}
-	for _, name := range list {
-		if !r.readSheet(b, name) {
+	for i := range b.sheets {
+		if !r.readSheet(b, &b.sheets[i]) {
 			return false
 		}
 	}
 	return true
 }
 
-// damaged tells that the file, or a sheet of it, cannot be taken apart.
-func (r *reader) damaged(sheet string) {
+// unreadable tells why the file, or a sheet of it, cannot be taken apart,
+// unless that was told already.
+func (r *reader) unreadable(sheet string, err error) {
 	what := "the file"
 	if sheet != "" {
 		what = "sheet " + profile.Quote(sheet)
 	}
-	r.stop(hintSave, "%s is damaged, or not a workbook", what)
-}
-
-// book is an open workbook.
-type book struct {
-	file      *excelize.File
-	formats   bool // some cell may be formatted as a date or a percentage
-	inspected bool // its sheets may be inspected
-	damaged   bool // a sheet could not be read to its end
-}
-
-func newBook(f *excelize.File) *book {
-	b := &book{file: f, inspected: true}
-	for i := 0; !b.formats; i++ {
-		style, err := f.GetStyle(i)
-		if err != nil {
-			break
-		}
-		b.formats = style.NumFmt != 0
+	switch {
+	case errors.Is(err, errStopped):
+	case errors.Is(err, errLarge):
+		r.stop("keep the layers in a workbook of their own", "the sheets are larger than %d MiB unzipped", MaxUnzipped>>20)
+	default:
+		r.stop(hintSave, "%s is damaged, or not a workbook", what)
 	}
-	f.Pkg.Range(func(_, part any) bool {
-		if xml, ok := part.([]byte); ok && bytes.Count(xml, []byte("mergeCell ")) > MaxMerged {
-			b.inspected = false
-		}
-		return b.inspected
-	})
-	return b
 }

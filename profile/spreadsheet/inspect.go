@@ -1,7 +1,7 @@
 package spreadsheet
 
 import (
-	"github.com/xuri/excelize/v2"
+	"strings"
 
 	"shearbook/profile"
 )
@@ -13,33 +13,32 @@ type merged struct {
 	text                     string
 }
 
-// inspect looks for merged cells and hidden columns. It returns false if the
-// sheet is damaged.
-func (s *sheet) inspect(f *excelize.File, width int) bool {
-	ranges, err := f.GetMergeCells(s.name, true)
-	if err != nil {
-		return false
+// merge takes a range of merged cells by its name, as "C2:C9". After more than
+// MaxMerged of them the sheet is not inspected.
+func (s *sheet) merge(name string) {
+	first, last, found := strings.Cut(name, ":")
+	if !found {
+		last = first
 	}
-	for _, m := range ranges {
-		left, top, err1 := excelize.CellNameToCoordinates(m.GetStartAxis())
-		right, bottom, err2 := excelize.CellNameToCoordinates(m.GetEndAxis())
-		if err1 == nil && err2 == nil {
-			s.merged = append(s.merged, merged{top: top - 1, left: left - 1, bottom: bottom - 1, right: right - 1})
-		}
+	left, top, ok1 := coordinates(first)
+	right, bottom, ok2 := coordinates(last)
+	switch {
+	case !ok1 || !ok2:
+	case len(s.merged) == MaxMerged:
+		s.crowded = true
+	default:
+		s.merged = append(s.merged, merged{top: min(top, bottom) - 1, left: min(left, right) - 1, bottom: max(top, bottom) - 1, right: max(left, right) - 1})
 	}
-	s.hiddenColumns = map[int]bool{}
-	for i := range width {
-		letters, err := excelize.ColumnNumberToName(i + 1)
-		if err != nil {
-			return false
-		}
-		visible, err := f.GetColVisible(s.name, letters)
-		if err != nil {
-			return false
-		}
-		s.hiddenColumns[i] = !visible
+}
+
+// hide takes a range of hidden columns, from 1. Ranges come in order and do not
+// overlap (ISO/IEC 29500-1, 18.3.1.17); what was passed is not taken again, so
+// that there are never more columns than a sheet has.
+func (s *sheet) hide(first, last int) {
+	for n := max(first, s.columns+1); n <= min(last, lastColumn); n++ {
+		s.hiddenColumns[n-1] = true
+		s.columns = n
 	}
-	return true
 }
 
 // fill gives the cells of a range that is merged downward the text of its
@@ -65,25 +64,26 @@ func (s *sheet) fill(r *row, width int) {
 
 // checkFormulas tells of formulas in the blank cells of tables: a program
 // other than a spreadsheet wrote them, and nobody evaluated them yet.
-func (s *sheet) checkFormulas(r *reader, f *excelize.File) bool {
-	if !s.inspected {
-		return true
-	}
+func (s *sheet) checkFormulas(r *reader) {
 	for _, t := range r.tables {
 		if t.sheet != s {
 			continue
 		}
 		for _, at := range t.blanks {
-			name, err := excelize.CoordinatesToCellName(at[1], at[0])
-			if err != nil {
-				continue
-			}
-			if formula, err := f.GetCellFormula(s.name, name); err == nil && formula != "" {
-				r.fault(r.place(s.name, at[0], at[1]), "open the workbook in a spreadsheet program and save it",
-					"the formula %s has no stored value", profile.Quote("="+formula))
+			if formula, ok := s.formulas[at]; ok {
+				r.fault(r.place(s.name, at[0], at[1]), "open the workbook in a spreadsheet program and save it", "%s has no stored value", formula)
 			}
 		}
 		t.blanks = nil
 	}
-	return true
+	s.formulas = nil
+}
+
+// formulaText names a formula. One that is shared with other cells has no text
+// of its own.
+func formulaText(text string) string {
+	if text == "" {
+		return "the formula"
+	}
+	return "the formula " + profile.Quote("="+text)
 }

@@ -5,8 +5,6 @@ import (
 	"strconv"
 	"strings"
 	"unicode"
-
-	"github.com/xuri/excelize/v2"
 )
 
 // nameTables gives each table the name that its profile has if nothing in it
@@ -65,11 +63,37 @@ func some(list []string) string {
 
 func number(n int) string { return strconv.Itoa(n) }
 
-// letters names a column.
+// letters names a column: A to Z, AA to ZZ and so on.
 func letters(n int) string {
-	name, err := excelize.ColumnNumberToName(n)
-	if err != nil {
-		return number(n)
+	var name string
+	for ; n > 0; n = (n - 1) / 26 {
+		name = string(rune('A'+(n-1)%26)) + name
 	}
 	return name
 }
+
+// coordinates are the column and the row that the name of a cell states, from
+// 1; false if it is none, or beyond the last cell of a sheet, XFD1048576.
+func coordinates(name string) (column, row int, ok bool) {
+	i := 0
+	for ; i < len(name) && i < 4; i++ {
+		c := name[i] &^ 0x20
+		if c < 'A' || c > 'Z' {
+			break
+		}
+		column = column*26 + int(c-'A') + 1
+	}
+	for _, c := range []byte(name[i:]) {
+		if c < '0' || c > '9' || row > lastRow {
+			return 0, 0, false
+		}
+		row = row*10 + int(c-'0')
+	}
+	return column, row, column >= 1 && column <= lastColumn && row >= 1 && row <= lastRow
+}
+
+// The last row and column that a sheet can have; common practice, from memory.
+const (
+	lastRow    = 1 << 20
+	lastColumn = 1 << 14
+)

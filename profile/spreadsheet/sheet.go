@@ -1,21 +1,24 @@
 package spreadsheet
 
 import (
+	"errors"
 	"math"
-	"regexp"
 	"strconv"
-	"strings"
-
-	"github.com/xuri/excelize/v2"
 )
+
+// errStopped ends the reading of a sheet after a fault that was told.
+var errStopped = errors.New("stopped")
 
 // sheet is what is known of one sheet.
 type sheet struct {
 	name          string
 	hidden        bool
 	inspected     bool
+	crowded       bool         // it has more than MaxMerged merged ranges
+	columns       int          // how many were looked at for being hidden
 	hiddenColumns map[int]bool // from 0
 	merged        []merged
+	formulas      map[[2]int]string // without a stored value, by row and column from 1
 }
 
 // row is one row of a sheet.
@@ -27,71 +30,93 @@ type row struct {
 
 // readSheet finds the tables of a sheet. A sheet whose rectangle of cells is
 // small is inspected first.
-func (r *reader) readSheet(b *book, name string) bool {
-	visible, _ := b.file.GetSheetVisible(name)
-	s := &sheet{name: name, hidden: !visible}
-	small, height, width := r.smallRows(b, name)
-	fd := finder{reader: r, sheet: s}
-	if b.damaged {
-		r.damaged(name)
+func (r *reader) readSheet(b *book, p *sheetPart) bool {
+	if p.part == "" {
+		return true // a sheet of a chart has no rows
+	}
+	s := &sheet{name: p.name, hidden: p.hidden, hiddenColumns: map[int]bool{}, formulas: map[[2]int]string{}}
+	g := &gatherer{finder: finder{reader: r, sheet: s}}
+	err := b.readRows(p.part, s, g.take)
+	if err == nil {
+		err = g.end()
+	}
+	if err != nil {
+		r.unreadable(p.name, err)
 		return false
 	}
-	if small == nil {
-		if !r.eachRow(b, name, fd.row) {
-			return false
-		}
-		fd.finish()
-		return true
+	if !s.inspected {
+		s.hiddenColumns = nil
 	}
-	if s.inspected = b.inspected && len(small) > 0; s.inspected && !s.inspect(b.file, width) {
-		r.damaged(name)
-		return false
-	}
-	r.rows += height
-	for i := range small {
-		r.cells += len(small[i].cells)
-		s.fill(&small[i], width)
-		fd.row(small[i])
-	}
-	if !r.withinLimits() {
-		return false
-	}
-	fd.finish()
-	return s.checkFormulas(r, b.file)
+	g.finish()
+	s.checkFormulas(r)
+	return true
 }
 
-// smallRows returns the rows of a sheet, its height and its width; nil if it
-// is larger than MaxInspected.
-func (r *reader) smallRows(b *book, name string) (rows []row, height, width int) {
-	rows = []row{}
-	b.eachRow(name, func(each row) bool {
-		height, width = each.number, max(width, len(each.cells))
-		if height*max(width, 1) > MaxInspected {
-			rows = nil
-			return false
-		}
-		if !each.blank() {
-			rows = append(rows, each)
-		}
-		return true
-	})
-	return rows, height, width
+// gatherer holds the rows of a sheet back until all of them, and what comes
+// after them, were read. Once they fill a rectangle of more than MaxInspected
+// cells it hands them over one by one.
+type gatherer struct {
+	finder
+	held   []row // that are not blank
+	large  bool
+	width  int
+	passed int // number of the row last handed over
 }
 
-// eachRow calls do for each row of a sheet that is not blank, within the
-// limits.
-func (r *reader) eachRow(b *book, name string, do func(row)) bool {
-	return b.eachRow(name, func(each row) bool {
-		r.rows++
-		r.cells += len(each.cells)
-		if !r.withinLimits() {
-			return false
+// take takes the next row of the sheet.
+func (g *gatherer) take(each row) error {
+	g.width = max(g.width, len(each.cells))
+	if !g.large && each.number*max(g.width, 1) > MaxInspected {
+		g.large, g.sheet.formulas = true, nil
+		if err := g.handOverHeld(); err != nil {
+			return err
 		}
-		if !each.blank() {
-			do(each)
+	}
+	if g.large {
+		return g.pass(&each)
+	}
+	if !each.blank() {
+		g.held = append(g.held, each)
+	}
+	return nil
+}
+
+// end inspects the rows that were held.
+func (g *gatherer) end() error {
+	if g.large {
+		return nil
+	}
+	g.sheet.inspected = !g.sheet.crowded
+	if g.sheet.inspected {
+		for i := range g.held {
+			g.sheet.fill(&g.held[i], g.width)
 		}
-		return true
-	})
+	}
+	return g.handOverHeld()
+}
+
+func (g *gatherer) handOverHeld() error {
+	for i := range g.held {
+		if err := g.pass(&g.held[i]); err != nil {
+			return err
+		}
+	}
+	g.held = nil
+	return nil
+}
+
+// pass hands a row to the finder, within the limits.
+func (g *gatherer) pass(each *row) error {
+	g.rows += each.number - g.passed
+	g.passed = each.number
+	g.cells += len(each.cells)
+	if !g.withinLimits() {
+		return errStopped
+	}
+	if !each.blank() {
+		g.row(*each)
+	}
+	return nil
 }
 
 func (r *reader) withinLimits() bool {
@@ -106,44 +131,6 @@ func (r *reader) withinLimits() bool {
 		return true
 	}
 	return false
-}
-
-// eachRow calls do for every row of a sheet until it returns false; then it
-// returns false. A sheet of charts has no rows.
-func (b *book) eachRow(name string, do func(row) bool) bool {
-	stored, err := b.file.Rows(name)
-	if err != nil {
-		return true
-	}
-	defer stored.Close()
-	shown := stored
-	if b.formats {
-		if shown, err = b.file.Rows(name); err != nil {
-			return true
-		}
-		defer shown.Close()
-	}
-	for n := 1; stored.Next(); n++ {
-		hidden := stored.GetRowOpts().Hidden
-		cells, err := stored.Columns()
-		if err != nil {
-			b.damaged = true
-			return false
-		}
-		if b.formats {
-			shown.Next()
-			formatted, _ := shown.Columns(excelize.Options{RawCellValue: false})
-			asShown(cells, formatted)
-		}
-		for i := range cells {
-			cells[i] = fifteenDigits(strings.TrimSpace(cells[i]))
-		}
-		if !do(row{n, hidden, cells}) {
-			return false
-		}
-	}
-	b.damaged = stored.Error() != nil
-	return !b.damaged
 }
 
 func (r *row) blank() bool {
@@ -162,26 +149,6 @@ func (r *row) cell(i int) string {
 	}
 	return ""
 }
-
-// asShown replaces stored numbers that are shown as percentages or dates.
-func asShown(stored, shown []string) {
-	for i := range min(len(stored), len(shown)) {
-		if stored[i] == shown[i] {
-			continue
-		}
-		v, err := strconv.ParseFloat(stored[i], 64)
-		switch {
-		case err != nil:
-		case strings.HasSuffix(shown[i], "%"):
-			stored[i] = strconv.FormatFloat(v*100, 'g', digits, 64)
-		case v >= 20000 && v < 80000 && date.MatchString(shown[i]): // 1954 to 2119, counted in days from 1900
-			stored[i] = shown[i]
-		}
-	}
-}
-
-// date is how a date is shown: 5/4/26, 2026-04-05, 5.4.26, 04-May, May 2026.
-var date = regexp.MustCompile(`\d[-/]\d|\d\.\d+\.\d|\d[- ]\pL{3}|^\pL{3}`)
 
 // digits is how many significant digits of a number a spreadsheet shows.
 const digits = 15

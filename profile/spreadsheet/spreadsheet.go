@@ -27,9 +27,20 @@
 // # Cells
 //
 // Numbers are read as stored, to the 15 digits that a spreadsheet shows; a
-// percentage as it is shown. A date where a number is due is a fault. Of a
-// formula its stored value is read; nothing is evaluated. Merged cells all hold
-// the value of the first. Hidden rows, columns and sheets are read and noted.
+// percentage as it is shown. A date where a number is due is a fault; elsewhere
+// it is read as it is shown, or as 2026-05-05 if its order depends on the
+// reader's country. True and false are the words TRUE and FALSE. Of a formula
+// its stored value is read; nothing is evaluated. Merged cells all hold the
+// value of the first. Hidden rows, columns and sheets are read and noted. A
+// sheet whose XML, rows or cells are not in order is damaged as a whole.
+//
+// # Standard library
+//
+// Workbooks are taken apart with archive/zip and encoding/xml alone. A general
+// library for them was used before; its initialisation cost 4 to 20 ms and
+// 21,000 allocations at the start of every command, also of those that read no
+// workbook. The tests still make their workbooks with it. A sheet is read once,
+// token by token; nothing is written to disk.
 package spreadsheet
 
 import (
@@ -80,8 +91,8 @@ func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
 	r := reader{collector: collector{file: file}, opt: opt}
 	sum := sha256.Sum256(data)
 	r.reading = profile.Reading{File: file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data)), Encoding: "XLSX"}
-	if r.checkZip(data) {
-		r.readBook(data)
+	if archive, ok := r.checkZip(data); ok {
+		r.readBook(archive)
 	}
 	if err := r.err(); err != nil {
 		return nil, err
