@@ -1,7 +1,10 @@
 package notebook
 
 import (
+	"bytes"
 	"errors"
+	"image"
+	"image/png"
 	"io/fs"
 	"math"
 	"strings"
@@ -182,6 +185,28 @@ func TestFaultsNameThePlace(t *testing.T) {
 		if !strings.Contains(err.Error(), c.want) {
 			t.Errorf("%s:\n got %v\nwant %s", c.name, err, c.want)
 		}
+	}
+}
+
+func TestImageReachesTheDocument(t *testing.T) {
+	var data bytes.Buffer
+	if err := png.Encode(&data, image.NewGray(image.Rect(0, 0, 3, 2))); err != nil {
+		t.Fatal(err)
+	}
+	folder["photo.png"] = data.String()
+	folder["more/photo.png"] = data.String()
+	r := mustEvaluate(t, front+"![The *crew*](photo.png \"At work\")\n\n![](more/photo.png)\n")
+	var got []report.Image
+	for b := range r.Document.All() {
+		if i, ok := b.(*report.Image); ok {
+			got = append(got, *i)
+		}
+	}
+	if len(got) != 2 || got[0].Alt != "The crew" || got[0].Title != "At work" || got[0].Width != 3 || got[0].Height != 2 || got[0].Format != "png" {
+		t.Fatalf("images %+v", got)
+	}
+	if got[0].Name == got[1].Name {
+		t.Errorf("two images have the name %s", got[0].Name)
 	}
 }
 
