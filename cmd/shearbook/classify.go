@@ -179,10 +179,8 @@ func join(faults profile.Faults, err error) (profile.Faults, error) {
 func tooShort(p *profile.Profile, code *siteclass.Code, err error) profile.Fault {
 	at := profile.Place{}
 	if p.Reading != nil {
-		at.File = p.Reading.File
-		if n := len(p.Layers); n > 0 {
-			at.Line, at.Column = int(p.Layers[n-1].Line), int(p.Layers[n-1].Column)
-		}
+		last := p.Layers[len(p.Layers)-1]
+		at = p.Reading.Place(int(last.Line), int(last.Column))
 	}
 	text, hint := err.Error(), ""
 	var short *vs30.ShortError

@@ -32,8 +32,8 @@ func evaluateData(ev *evaluation, c call) []report.Block {
 func readingBlocks(s *site) []report.Block {
 	r := s.profile.Reading
 	t := &report.Table{
-		Caption: words("Profile " + s.profile.Name + " as read from " + r.File + " (" + r.Encoding + ")"),
-		Columns: []report.TableColumn{column("Line", report.AlignRight)},
+		Caption: words("Profile " + s.profile.Name + " as read from " + r.File + sheetText(r) + " (" + r.Encoding + ")"),
+		Columns: []report.TableColumn{column(lineWord(r), report.AlignRight)},
 		Compact: true,
 	}
 	for _, c := range r.Columns {
@@ -54,9 +54,25 @@ func readingBlocks(s *site) []report.Block {
 		t.Rows = append(t.Rows, row(cells[:len(t.Columns)]...))
 	}
 	for _, md := range r.Metadata {
-		t.Notes = append(t.Notes, words(fmt.Sprintf("Line %d: %s: %s", md.Line, md.Key, md.Value)))
+		t.Notes = append(t.Notes, words(fmt.Sprintf("%s %d: %s: %s", lineWord(r), md.Line, md.Key, md.Value)))
 	}
 	return one(t)
+}
+
+// lineWord is what a place of a file is counted in.
+func lineWord(r *profile.Reading) string {
+	if r.Sheet != "" {
+		return "Row"
+	}
+	return "Line"
+}
+
+// sheetText names the sheet of a spreadsheet.
+func sheetText(r *profile.Reading) string {
+	if r.Sheet == "" {
+		return ""
+	}
+	return ", sheet " + r.Sheet
 }
 
 // alignOf sets numbers on their points and words to the left.

@@ -200,5 +200,5 @@ func (r *ruling) place(l *profile.Layer) profile.Place {
 	if p == nil || p.Reading == nil || l.Line == 0 {
 		return profile.Place{}
 	}
-	return profile.Place{File: p.Reading.File, Line: int(l.Line), Column: int(l.Column)}
+	return p.Reading.Place(int(l.Line), int(l.Column))
 }
