@@ -25,7 +25,7 @@ func evaluateData(ev *evaluation, c call) []report.Block {
 			blocks = append(blocks, readingBlocks(s)...)
 		}
 	}
-	return append(blocks, ev.digests(sites), ev.provenance())
+	return append(blocks, ev.provenance(), ev.digests(sites))
 }
 
 // readingBlocks is a profile in the words of its file.
