@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
 
 	"shearbook/profile"
 	"shearbook/report"
@@ -161,9 +162,9 @@ func canonical(c *cobra.Command, base string) string {
 		if !fl.Changed {
 			continue
 		}
-		values := []string{strings.Trim(fl.Value.String(), "[]")}
-		if name == "code-file" {
-			values, _ = c.Flags().GetStringArray(name) // fails only for a flag of another type
+		values := []string{fl.Value.String()}
+		if list, ok := fl.Value.(pflag.SliceValue); ok {
+			values = list.GetSlice()
 		}
 		for _, value := range values {
 			if name == "code-file" {

@@ -19,13 +19,20 @@ type site struct {
 	datum   float64 // m below ground level from which averages without a code start
 	extend  string  // one of report.Extensions; "" refuses a profile that is too short
 
-	decisions map[string]siteclass.Decision // by code
-	refused   map[string]bool               // codes whose fault is told already
+	decisions  map[string]siteclass.Decision // by code, those that a working told
+	refused    map[string]bool               // codes whose fault is told already
+	classified map[string]classified         // by code, whether told or not
+}
+
+// classified is what a code makes of a site.
+type classified struct {
+	decision siteclass.Decision
+	err      error
 }
 
 func (ev *evaluation) newSite(e ProfileEntry, p *profile.Profile) *site {
 	return &site{entry: e, profile: p, datum: ev.nb.Header.Datum.Value, extend: ev.nb.Header.Extend,
-		decisions: map[string]siteclass.Decision{}, refused: map[string]bool{}}
+		decisions: map[string]siteclass.Decision{}, refused: map[string]bool{}, classified: map[string]classified{}}
 }
 
 // layersTo returns the layers of a site down to a thickness below a datum:
@@ -131,8 +138,15 @@ func (ev *evaluation) decide(s *site, code *siteclass.Code, at profile.Place) (s
 	return d, true
 }
 
+// classify decides, once for each code: an expression may ask as often as it
+// stands in the prose.
 func (ev *evaluation) classify(s *site, code *siteclass.Code) (siteclass.Decision, error) {
-	return report.Classify(s.profile, code, ev.facts(s))
+	c, ok := s.classified[code.ID]
+	if !ok {
+		c.decision, c.err = report.Classify(s.profile, code, ev.facts(s))
+		s.classified[code.ID] = c
+	}
+	return c.decision, c.err
 }
 
 // facts is what the notebook states of a site.
