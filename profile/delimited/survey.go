@@ -112,7 +112,10 @@ func (r *reader) nameFile(p *profile.Profile, name string, st *statement) {
 		r.fault(st.at(), "", "profile %s is named already", quote(name))
 		return
 	}
-	p.Name, r.preamble.named = st.value, st.at()
+	p.Name, r.preamble.named = oneLine(st.value), st.at()
+	if p.Name == "" {
+		r.fault(st.at(), "state it, or remove the line", "the name %s has nothing in it that can be printed", quote(st.value))
+	}
 }
 
 func (r *reader) basis(p *profile.Profile, st *statement) {

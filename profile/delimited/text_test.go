@@ -137,6 +137,18 @@ func rows(r *profile.Reading) [][]string {
 	return list
 }
 
+// A name stated above the header becomes one line of plain text, as one in a
+// column does, so that what is read can be written.
+func TestStatedNameOneLine(t *testing.T) {
+	profiles, err := Read("a.csv", []byte("# name: L\t1  b\ntop_m,bottom_m,vs_mps\n0,4,180\n"), Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if profiles[0].Name != "L 1 b" {
+		t.Errorf("name %q, want %q", profiles[0].Name, "L 1 b")
+	}
+}
+
 // Every heading of names.go is found, alone, in other spellings and with a
 // unit behind it, and none stands for two quantities.
 func TestNames(t *testing.T) {
