@@ -135,9 +135,12 @@ type Optional struct {
 // Known returns v as a known number.
 func Known(v float64) Optional { return Optional{v, true} }
 
-// Position is where a profile was measured.
+// Position is where a profile was measured: in degrees, in a projected grid,
+// or both. One is never computed from the other.
 type Position struct {
 	Latitude, Longitude Optional // degrees, WGS 84
+	Easting, Northing   Optional // in the grid, in its own unit
+	EPSG                int      // of the grid, > 0; 0 where it is not stated
 }
 
 // BasisOf returns the basis of layer i: its own, or else the survey's.

@@ -229,7 +229,19 @@ func (v *validator) survey() {
 	v.within("water table", s.WaterTable, -MaxDepth, MaxDepth)
 	v.within("latitude", at.Latitude, -90, 90)
 	v.within("longitude", at.Longitude, -180, 180)
+	v.within("easting", at.Easting, -MaxGrid, MaxGrid)
+	v.within("northing", at.Northing, -MaxGrid, MaxGrid)
+	if at.EPSG < 0 || at.EPSG > MaxEPSG {
+		v.at(nil, "", "EPSG code %d lies outside 1 to %d", at.EPSG, MaxEPSG)
+	}
 }
+
+// Limits of a position in a grid: no coordinate on Earth is as large, even in
+// feet, and no code of the EPSG registry.
+const (
+	MaxGrid = 1e8
+	MaxEPSG = 99_999_999
+)
 
 func (v *validator) within(name string, x Optional, low, high float64) {
 	if x.Known && !(x.Value >= low && x.Value <= high) {

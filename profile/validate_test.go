@@ -17,7 +17,7 @@ func valid() *Profile {
 			{Top: 12, Bottom: math.Inf(1), Vs: 420, Line: 4, Column: 8},
 		},
 		Survey:   Survey{DepthReached: 30, GroundLevel: Known(-2), WaterTable: Known(1.5)},
-		Position: Position{Known(51), Known(-180)},
+		Position: Position{Latitude: Known(51), Longitude: Known(-180)},
 		Reading:  &Reading{File: "a.csv"},
 	}
 }
@@ -70,7 +70,7 @@ a.csv:2:7: plasticity index -1 is negative
 a.csv:2:7: water content +Inf is not a finite number`},
 		{"survey", func(p *Profile) {
 			p.Survey = Survey{DepthReached: -1, GroundLevel: Known(nan), WaterTable: Known(inf)}
-			p.Position = Position{Known(90.1), Known(-181)}
+			p.Position = Position{Latitude: Known(90.1), Longitude: Known(-181)}
 		}, `a.csv: depth reached -1 m is not a depth
 a.csv: ground level NaN lies outside -100000 to 100000
 a.csv: water table +Inf lies outside -100000 to 100000
