@@ -28,7 +28,7 @@ func (c *collector) stop(hint, format string, args ...any) {
 // err returns what was gathered, nil if nothing was.
 func (c *collector) err() error {
 	if more := c.total - len(c.faults); more > 0 {
-		c.faults = append(c.faults, profile.Faultf(profile.Place{File: c.file}, "", "and %s", profile.Plural(more, "more fault")))
+		c.faults = append(c.faults, profile.MoreFaults(c.file, more))
 	}
 	return c.faults.Err()
 }

@@ -12,8 +12,10 @@ type table struct {
 	delimited.Table
 	sheet    *sheet
 	from, to int    // its columns, from 0: [from, to)
-	numbers  []int  // columns of depth and of Vs
+	numbers  []int  // columns of depth and of Vs, N and su
+	velocity bool   // it has a column of Vs
 	title    string // in the row nearest above its header
+	header   int    // row
 	number   int    // among the tables of its sheet, from 1
 	hidden   []int  // rows
 	below    []row  // text below it
@@ -33,7 +35,7 @@ type finder struct {
 
 // row takes the next row that is not blank.
 func (f *finder) row(r row) {
-	if headers := headersOf(&r); len(headers) > 0 {
+	if headers := f.headersOf(&r); len(headers) > 0 {
 		f.start(&r, headers)
 		return
 	}
@@ -41,6 +43,7 @@ func (f *finder) row(r row) {
 	for _, t := range f.open {
 		kept = t.row(&r) || kept
 	}
+	f.consider(&r)
 	if !kept && len(f.above) < delimited.MaxMetadata {
 		f.above = append(f.above, r)
 	}
@@ -50,8 +53,8 @@ func (f *finder) row(r row) {
 type span struct{ from, to int }
 
 // headersOf returns the columns of the headers in a row: one or several that
-// blank cells separate, each with Vs and a depth.
-func headersOf(r *row) []span {
+// blank cells separate, each with a depth and Vs, N or su.
+func (f *finder) headersOf(r *row) []span {
 	var found []span
 	whole := span{-1, 0}
 	for i := 0; i < len(r.cells); {
@@ -67,12 +70,12 @@ func headersOf(r *row) []span {
 			whole.from = block.from
 		}
 		whole.to, i = block.to, block.to
-		if isHeader(r.cells[block.from:block.to]) {
+		if f.isHeader(r.cells[block.from:block.to]) {
 			found = append(found, block)
 		}
 	}
 	switch {
-	case whole.from >= 0 && len(found) < 2 && isHeader(r.cells[whole.from:whole.to]):
+	case whole.from >= 0 && len(found) < 2 && f.isHeader(r.cells[whole.from:whole.to]):
 		return []span{whole}
 	case len(found) >= 2:
 		return found
@@ -80,15 +83,15 @@ func headersOf(r *row) []span {
 	return nil
 }
 
-// isHeader reports whether cells name Vs and a depth.
-func isHeader(cells []string) bool {
+// isHeader reports whether cells name a depth, and Vs or else N or su.
+func (f *finder) isHeader(cells []string) bool {
 	vs, depth := false, false
 	for _, text := range cells {
 		if numeric(text) {
 			continue // most rows are layers, and soon told from headers so
 		}
-		switch delimited.Heading(text) {
-		case profile.Vs:
+		switch f.mapping.Heading(text) {
+		case profile.Vs, profile.N, profile.Su:
 			vs = true
 		case profile.Top, profile.Bottom, profile.Thickness:
 			depth = true
@@ -113,11 +116,16 @@ func (f *finder) start(r *row, headers []span) {
 	f.open = open
 	for _, h := range headers {
 		f.count++
-		t := &table{sheet: f.sheet, from: h.from, to: h.to, number: f.count}
+		t := &table{sheet: f.sheet, from: h.from, to: h.to, header: r.number, number: f.count}
 		t.Column = h.from + 1
+		t.Mapping = f.mapping
 		for i := h.from; i < h.to; i++ {
-			switch delimited.Heading(r.cells[i]) {
-			case profile.Vs, profile.Top, profile.Bottom, profile.Thickness:
+			f.mapping.Mark(f.mapped, r.cells[i])
+			switch f.mapping.Heading(r.cells[i]) {
+			case profile.Vs:
+				t.velocity = true
+				t.numbers = append(t.numbers, i)
+			case profile.N, profile.Su, profile.Top, profile.Bottom, profile.Thickness:
 				t.numbers = append(t.numbers, i)
 			}
 		}

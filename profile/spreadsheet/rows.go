@@ -127,7 +127,11 @@ func (r *rowReader) readCell(e xml.StartElement) error {
 		return err
 	}
 	text, err := r.value(kind, style)
-	r.add(kind, fifteenDigits(strings.TrimSpace(text)))
+	text = strings.TrimSpace(text)
+	if kind == "" || kind == "n" {
+		text = fifteenDigits(text)
+	}
+	r.add(kind, text)
 	return err
 }
 

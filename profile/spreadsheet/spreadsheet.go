@@ -2,7 +2,7 @@
 // XLSX).
 //
 // A table may stand anywhere on any sheet: its header is the row that names a
-// column of Vs and one of top, bottom, thickness or depth. What package
+// column of Vs, or else of N or su, and one of top, bottom, thickness or depth. What package
 // delimited says of headings, units, depths and numbers holds here too. Tables
 // may follow one another down a sheet, each with its header, or stand side by
 // side with a blank column between them. A table ends where the next header in
@@ -74,6 +74,10 @@ type Options struct {
 	// Units are for what the file states no unit for, in the form of
 	// delimited.ParseUnits: "ft, ft/s".
 	Units string
+
+	// Map names columns that would not be recognised, as delimited.Options does.
+	// An item may hold for some tables alone; one that holds for none is a fault.
+	Map []string
 }
 
 // Read returns the profiles of a workbook in the order of its sheets and of
@@ -82,13 +86,19 @@ type Options struct {
 //
 //   - hidden-rows, hidden-columns, hidden-sheet: what is hidden and was read.
 //   - row-not-read: text below a table.
+//   - table-not-read: tables of N or su without velocities, in a workbook that
+//     has tables with them; the first profile carries it.
 //   - sheet-not-inspected: the sheet is too large to be inspected for merged
 //     cells, hidden columns and formulas without a stored value.
 func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
 	if _, err := delimited.ParseUnits(opt.Units); err != nil {
 		return nil, err
 	}
-	r := reader{collector: collector{file: file}, opt: opt}
+	mapping, err := delimited.ParseMap(opt.Map)
+	if err != nil {
+		return nil, err
+	}
+	r := reader{collector: collector{file: file}, opt: opt, mapping: mapping, mapped: make([]bool, len(opt.Map))}
 	sum := sha256.Sum256(data)
 	r.reading = profile.Reading{File: file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data)), Encoding: "XLSX"}
 	if archive, ok := r.checkZip(data); ok {
@@ -104,6 +114,9 @@ func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
 type reader struct {
 	collector
 	opt      Options
+	mapping  delimited.Mapping
+	mapped   []bool          // which of its items a table has
+	nearest  candidate       // for the message, if no table is found
 	reading  profile.Reading // what the readings of all profiles share
 	rows     int             // read so far, of all sheets
 	cells    int
@@ -119,10 +132,13 @@ func (r *reader) place(sheet string, row, column int) profile.Place {
 // readTables reads the tables that were found.
 func (r *reader) readTables() {
 	if len(r.tables) == 0 {
-		r.fault(profile.Place{}, "name the columns in a row above the layers, such as top_m, bottom_m, vs_mps",
-			"no sheet holds a table of layers: no row names a column of Vs and one of depth")
+		r.noTable()
 		return
 	}
+	if !r.allMapped() {
+		return
+	}
+	left := r.leaveOut()
 	nameTables(r.tables)
 	began := map[string]profile.Place{}
 	for i, t := range r.tables {
@@ -141,6 +157,41 @@ func (r *reader) readTables() {
 			r.take(p, t, began)
 		}
 	}
+	if len(r.profiles) > 0 && len(left) > 0 {
+		p := &r.profiles[0]
+		p.Notes = append(p.Notes, r.leftOut(left))
+	}
+}
+
+// leaveOut takes the tables without velocities out, if others have them. It
+// returns the places of their headers.
+func (r *reader) leaveOut() []profile.Place {
+	if !slices.ContainsFunc(r.tables, func(t *table) bool { return t.velocity }) {
+		return nil
+	}
+	var left []profile.Place
+	r.tables = slices.DeleteFunc(r.tables, func(t *table) bool {
+		if !t.velocity {
+			left = append(left, r.place(t.sheet.name, t.header, t.from+1))
+		}
+		return !t.velocity
+	})
+	return left
+}
+
+// leftOut is the note on tables that were left out.
+func (r *reader) leftOut(left []profile.Place) profile.Note {
+	var cells []string
+	for _, at := range left {
+		cells = append(cells, at.Cell)
+	}
+	text := "a table without velocities was not read: its header stands in "
+	if len(left) > 1 {
+		text = profile.Plural(len(left), "table") + " without velocities were not read: their headers stand in "
+	}
+	at := left[0]
+	at.File = r.file
+	return profile.Note{ID: "table-not-read", Text: text + some(cells), Place: at}
 }
 
 // addFaults adds the faults of one table.
@@ -151,6 +202,10 @@ func (r *reader) addFaults(err error) {
 		return
 	}
 	for _, each := range faults {
+		if each.More > 0 {
+			r.total += each.More
+			continue
+		}
 		r.fault(each.Place, each.Hint, "%s", each.Text)
 	}
 }
