@@ -42,6 +42,10 @@ func (c *Collector) keep(at Place, hint, format string, args []any) {
 // Add adds the faults of a profile.
 func (c *Collector) Add(faults Faults) {
 	for _, f := range faults {
+		if f.More > 0 {
+			c.total += f.More
+			continue
+		}
 		c.Fault(f.Place, f.Hint, "%s", f.Text)
 	}
 }
@@ -56,11 +60,8 @@ func (c *Collector) Err() error {
 	slices.SortStableFunc(faults, func(a, b Fault) int {
 		return cmp.Or(cmp.Compare(a.Place.Line, b.Place.Line), cmp.Compare(a.Place.Column, b.Place.Column))
 	})
-	switch more := c.total - len(faults); {
-	case more == 1:
-		faults = append(faults, Faultf(Place{File: c.File}, "", "and 1 more fault"))
-	case more > 1:
-		faults = append(faults, Faultf(Place{File: c.File}, "", "and %d more faults", more))
+	if more := c.total - len(faults); more > 0 {
+		faults = append(faults, MoreFaults(c.File, more))
 	}
 	return faults.Err()
 }

@@ -33,6 +33,10 @@ type Fault struct {
 	Place Place
 	Text  string // what is wrong: lower case, no full stop
 	Hint  string // what to do next; "" where Text says it
+
+	// More is above 0 of a last fault that stands for others, which are not
+	// kept: how many there are.
+	More int
 }
 
 // Error returns the place and what is wrong there.
@@ -67,6 +71,13 @@ func (fs Faults) Err() error {
 // Faultf is a fault at a place, its text made from format and args.
 func Faultf(at Place, hint, format string, args ...any) Fault {
 	return Fault{Place: at, Text: fmt.Sprintf(format, args...), Hint: hint}
+}
+
+// MoreFaults is the fault that stands for n others in a file.
+func MoreFaults(file string, n int) Fault {
+	f := Faultf(Place{File: file}, "", "and %s", Plural(n, "more fault"))
+	f.More = n
+	return f
 }
 
 // FileError returns a file error without the path, for messages that name it

@@ -31,12 +31,28 @@ const (
 	WaterContent
 	RefusalWord
 	Depth // of a reading, inside the layer that it becomes
+
+	// Of the position of a profile:
+
+	Latitude
+	Longitude
+	Easting
+	Northing
+	EPSG
+
+	// Of the readings of a cone, which layers do not have:
+
+	TipResistance
+	SleeveFriction
+	PorePressure
 )
 
 var quantityNames = [...]string{
 	"unknown", "profile", "top", "bottom", "thickness", "Vs", "Vs at bottom",
 	"lower Vs", "upper Vs", "Vp", "density", "sigma of ln Vs", "basis", "soil",
 	"N", "su", "plasticity index", "water content", "refusal", "depth",
+	"latitude", "longitude", "easting", "northing", "EPSG code",
+	"tip resistance", "sleeve friction", "pore pressure",
 }
 
 // String returns the name of the quantity as messages and tables use it.
@@ -70,7 +86,7 @@ func (q Quantity) Dimension() Dimension {
 		return Velocity
 	case Density:
 		return MassDensity
-	case Su:
+	case Su, TipResistance, SleeveFriction, PorePressure:
 		return Stress
 	case PI, WaterContent:
 		return Percent

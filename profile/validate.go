@@ -46,8 +46,9 @@ const (
 // and velocities that are not positive and finite, a half-space that is not
 // last or has a velocity gradient, Vp/Vs below MinVpVs, velocities where
 // NoVelocity says that there are none, and optional quantities outside their
-// range. Each fault stands at the velocity of its layer. A profile without
-// faults is what the rest of the program assumes.
+// range. Each fault stands at the velocity of its layer. Of more than MaxFaults
+// the first are kept, and a last one says how many more there are. A profile
+// without faults is what the rest of the program assumes.
 func Validate(p *Profile) Faults {
 	v := validator{p: p}
 	if len(p.Layers) == 0 {
@@ -59,16 +60,24 @@ func Validate(p *Profile) Faults {
 		v.quantities(&p.Layers[i])
 	}
 	v.survey()
+	if v.more > 0 {
+		v.faults = append(v.faults, MoreFaults(p.placeOf(nil).File, v.more))
+	}
 	return v.faults
 }
 
 type validator struct {
 	p      *Profile
 	faults Faults
+	more   int // that are not kept
 }
 
 // at adds a fault of layer l, of the whole profile where l is nil.
 func (v *validator) at(l *Layer, hint, format string, args ...any) {
+	if len(v.faults) == MaxFaults {
+		v.more++
+		return
+	}
 	v.faults = append(v.faults, Faultf(v.p.placeOf(l), hint, format, args...))
 }
 

@@ -176,3 +176,25 @@ func TestReversalsAreCounted(t *testing.T) {
 		t.Errorf("notes %v", notes)
 	}
 }
+
+// However many layers are wrong, few faults are kept and the rest are counted.
+func TestValidateBounds(t *testing.T) {
+	p := &Profile{Name: "A"}
+	for i := range 100_000 {
+		p.Layers = append(p.Layers, Layer{Top: float64(i) / 10, Bottom: float64(i+1) / 10, Vs: -1})
+	}
+	faults := Validate(p)
+	if len(faults) != MaxFaults+1 || faults[MaxFaults].More != 100_000-MaxFaults || faults[MaxFaults].Text != "and 99980 more faults" {
+		t.Fatalf("%d faults, the last: %+v", len(faults), faults[len(faults)-1])
+	}
+	// The faults of several profiles are counted together.
+	c := Collector{File: "f"}
+	c.Fault(Place{}, "", "one")
+	c.Add(faults)
+	if err := c.Err(); c.Count() != 100_001 || !strings.HasSuffix(err.Error(), "\nf: and 99981 more faults") {
+		t.Errorf("%d: %v", c.Count(), err)
+	}
+	if n := testing.AllocsPerRun(3, func() { Validate(p) }); n > 400_000 { // their numbers, which nobody reads
+		t.Errorf("%v allocations", n)
+	}
+}

@@ -60,6 +60,13 @@
 // is refused if 50 blows or more drove it 150 mm or less, one increment of ASTM
 // D1586 (from memory); a layer is refused if all tests in it are.
 //
+// # Positions
+//
+// LOCA_LAT and LOCA_LON give the latitude and longitude, LOCA_NATE and LOCA_NATN
+// the easting and northing, as numbers in the unit of the file. LOCA_GREF gives
+// an EPSG code where it, or what ABBR says of it, names one as such, as
+// "EPSG:27700"; the name of a grid alone is not turned into one.
+//
 // # Holes without velocities
 //
 // Where a file has velocities, its other holes give no profile, and a note

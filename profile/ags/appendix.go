@@ -3,7 +3,6 @@ package ags
 import (
 	"cmp"
 	"slices"
-	"strings"
 
 	"shearbook/profile"
 )
@@ -31,7 +30,12 @@ func (r *reader) appendix(s *set, layers []profile.Layer) *profile.Reading {
 		a.hole(s.hole)
 		return a.reading(s)
 	}
-	a.set(s, profile.Vs)
+	a.main, a.mainColumn = s, a.columnOf(s, profile.Vs)
+	a.fields = make([]fields, len(s.readings))
+	for i := range s.readings {
+		a.fields[i] = s.readings[i].fields
+	}
+	s.readings = nil // the layers are made, and there may be many
 	if p := r.p[s.run]; p != nil && slices.ContainsFunc(layers, func(l profile.Layer) bool { return l.Has(profile.GivenVp) }) && s.source.own == nil {
 		a.set(p, profile.Vp)
 	}
@@ -53,10 +57,13 @@ func (a *appendix) reading(s *set) *profile.Reading {
 
 // appendix is an appendix in the making.
 type appendix struct {
-	r       *reader
-	columns []profile.Column
-	entries []entry
-	mixed   bool // the depths have several units, which stand in the cells
+	r          *reader
+	columns    []profile.Column
+	main       *set     // whose readings the layers were made of; nil if none were
+	mainColumn int      // of its velocities
+	fields     []fields // of these readings
+	entries    []entry
+	mixed      bool // the depths have several units, which stand in the cells
 }
 
 // column is the column of a heading, made where there is none.
@@ -71,24 +78,33 @@ func (a *appendix) column(heading, unit string, q profile.Quantity) int {
 
 // set enters the readings of a set.
 func (a *appendix) set(s *set, q profile.Quantity) {
+	column := a.columnOf(s, q)
+	for i := range s.readings {
+		a.entries = append(a.entries, a.readingEntry(s, &s.readings[i].fields, column))
+	}
+}
+
+// readingEntry is the entry of a reading.
+func (a *appendix) readingEntry(s *set, x *fields, column int) entry {
+	c := &a.r.again
+	e := entry{source: s.source, row: x.row, column: column, from: &s.source.depths[x.from], depth: c.fieldAt(x.depthOff), base: c.fieldAt(x.baseOff), value: c.fieldAt(x.valueOff)}
+	if s.source.unitColumn > 0 && s.unit == "" {
+		c.g = s.source.g
+		c.to(x.row)
+		e.value += " " + c.text(s.source.unitColumn)
+	}
+	return e
+}
+
+// columnOf makes the columns of a set, and returns that of its velocities.
+func (a *appendix) columnOf(s *set, q profile.Quantity) int {
 	heading := s.source.name
 	if heading == "WGPT_RDNG" {
 		heading += " " + s.what
 	}
 	column := a.column(heading, s.unit, q)
-	c := &a.r.again
-	for i := range s.readings {
-		x := &s.readings[i]
-		e := entry{source: s.source, row: x.row, column: column, from: &s.source.depths[x.from], depth: c.fieldAt(x.depthOff), base: c.fieldAt(x.baseOff), value: c.fieldAt(x.valueOff)}
-		if s.source.unitColumn > 0 && s.unit == "" {
-			c.g = s.source.g
-			c.to(x.row)
-			e.value += " " + c.text(s.source.unitColumn)
-		}
-		a.entries = append(a.entries, e)
-	}
 	if s.source.own == nil {
-		return
+		return column
 	}
 	g := s.source.g
 	for _, k := range quantityHeadings {
@@ -101,6 +117,7 @@ func (a *appendix) set(s *set, q profile.Quantity) {
 			a.column(k.heading, "", k.q)
 		}
 	}
+	return column
 }
 
 // hole enters strata and tests, whose rows are read once for all profiles of
@@ -151,32 +168,95 @@ func (r *reader) entry(s *source, row rowAt) entry {
 // rows are the rows of the appendix, in the order of the file. Several values
 // of one row of the file stand in one.
 func (a *appendix) rows() []profile.Row {
-	slices.SortStableFunc(a.entries, func(x, y entry) int { return cmp.Compare(x.row.off, y.row.off) })
 	a.commonUnit()
-	rows := make([]profile.Row, 0, len(a.entries))
+	var list rowList
+	list.rows = make([]profile.Row, 0, len(a.entries)+len(a.fields))
 	cells := make([]string, len(a.columns))
-	for i := range a.entries {
-		e := &a.entries[i]
-		if i == 0 || a.entries[i-1].row != e.row {
+	var at rowAt
+	open := false
+	for e := range a.inOrder {
+		if open && e.row != at {
+			list.add(int(at.line), cells)
+		}
+		if !open || e.row != at {
 			clear(cells)
+			at, open = e.row, true
 		}
 		a.cells(cells, e)
-		if i+1 < len(a.entries) && a.entries[i+1].row == e.row {
-			continue
-		}
-		rows = append(rows, profile.Row{Line: int(e.row.line), Cells: strings.Join(cells, profile.CellSeparator)})
 	}
-	return rows
+	if open {
+		list.add(int(at.line), cells)
+	}
+	return list.finish()
+}
+
+// inOrder yields the readings and the other entries in the order of the file.
+// The readings may be many, and are made entries one by one.
+func (a *appendix) inOrder(yield func(*entry) bool) {
+	slices.SortStableFunc(a.entries, func(x, y entry) int { return cmp.Compare(x.row.off, y.row.off) })
+	others := a.entries
+	slices.SortStableFunc(a.fields, func(x, y fields) int { return cmp.Compare(x.row.off, y.row.off) })
+	for i := range a.fields {
+		for len(others) > 0 && others[0].row.off < a.fields[i].row.off {
+			if !yield(&others[0]) {
+				return
+			}
+			others = others[1:]
+		}
+		if e := a.readingEntry(a.main, &a.fields[i], a.mainColumn); !yield(&e) {
+			return
+		}
+	}
+	for i := range others {
+		if !yield(&others[i]) {
+			return
+		}
+	}
+}
+
+// rowList is rows in the making, whose cells become strings many rows at a
+// time.
+type rowList struct {
+	rows    []profile.Row
+	cells   []byte // of the rows from pending on
+	ends    []int
+	pending int
+}
+
+func (l *rowList) add(line int, cells []string) {
+	for i, text := range cells {
+		if i > 0 {
+			l.cells = append(l.cells, profile.CellSeparator...)
+		}
+		l.cells = append(l.cells, text...)
+	}
+	l.rows, l.ends = append(l.rows, profile.Row{Line: line}), append(l.ends, len(l.cells))
+	if len(l.cells) >= 1<<16 {
+		l.flush()
+	}
+}
+
+func (l *rowList) flush() {
+	all, from := string(l.cells), 0
+	for i, to := range l.ends {
+		l.rows[l.pending+i].Cells = all[from:to]
+		from = to
+	}
+	l.pending, l.cells, l.ends = len(l.rows), l.cells[:0], l.ends[:0]
+}
+
+func (l *rowList) finish() []profile.Row {
+	l.flush()
+	return l.rows
 }
 
 // commonUnit puts the unit of the depths into the heading if they have one.
 func (a *appendix) commonUnit() {
 	var units []string
 	var last *source
-	for i := range a.entries {
-		s := a.entries[i].source
+	look := func(s *source) {
 		if s == last {
-			continue
+			return
 		}
 		last = s
 		for _, m := range append(slices.Clip(s.depths), s.base) {
@@ -184,6 +264,12 @@ func (a *appendix) commonUnit() {
 				units = append(units, m.unit)
 			}
 		}
+	}
+	if a.main != nil {
+		look(a.main.source)
+	}
+	for i := range a.entries {
+		look(a.entries[i].source)
 	}
 	if a.mixed = len(units) != 1; !a.mixed {
 		a.columns[0].Unit, a.columns[1].Unit = units[0], units[0]

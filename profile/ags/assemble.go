@@ -127,6 +127,9 @@ func (r *reader) profile(s *set, name string) {
 		r.leftOut = append(r.leftOut, leftOut{name, z, spot{s.readings[0].row.line, s.readings[0].column}})
 		return
 	}
+	if cap(s.readings)-len(s.readings) > 1<<12 {
+		s.readings = slices.Clone(s.readings) // gives back room that may be much
+	}
 	layers := s.layers()
 	s.compress(layers, r.p[s.run])
 	notes := r.layerNotes(s, layers)

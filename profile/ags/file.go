@@ -3,6 +3,8 @@ package ags
 import (
 	"cmp"
 	"slices"
+	"strconv"
+	"strings"
 
 	"shearbook/profile"
 )
@@ -28,7 +30,7 @@ func newFile(opt WriteOptions) *file {
 			{"TRAN_DESC", "", "X"}, {"TRAN_AGS", "", "X"}, {"TRAN_RECV", "", "X"}, {"TRAN_DLIM", "", "X"}, {"TRAN_RCON", "", "X"},
 		}},
 		loca: table{name: "LOCA", headings: []heading{
-			{"LOCA_ID", "", "ID"}, {"LOCA_GL", "m", "2DP"}, {"LOCA_LAT", "", "DMS"}, {"LOCA_LON", "", "DMS"}, {"LOCA_LLZ", "", "X"}, {"LOCA_LOCA", "", "X"},
+			{"LOCA_ID", "", "ID"}, {"LOCA_NATE", "m", "2DP"}, {"LOCA_NATN", "m", "2DP"}, {"LOCA_GREF", "", "PA"}, {"LOCA_GL", "m", "2DP"}, {"LOCA_LAT", "", "DMS"}, {"LOCA_LON", "", "DMS"}, {"LOCA_LLZ", "", "X"}, {"LOCA_LOCA", "", "X"},
 		}},
 		geol: table{name: "GEOL", headings: []heading{{"LOCA_ID", "", "ID"}, {"GEOL_TOP", "m", "2DP"}, {"GEOL_BASE", "m", "2DP"}, {"GEOL_DESC", "", "X"}}},
 		wgpg: table{name: "WGPG", headings: []heading{
@@ -104,8 +106,18 @@ func (f *file) hole(p *profile.Profile) {
 	if p.Position.Longitude.Known {
 		longitude, system = dms(p.Position.Longitude.Value), "WGS84"
 	}
-	f.loca.add(p.Name, level, latitude, longitude, system, p.Survey.Location)
+	east, north, grid := "", "", ""
+	if p.Position.Easting.Known && p.Position.Northing.Known {
+		east, north = decimals(p.Position.Easting.Value, 2), decimals(p.Position.Northing.Value, 2)
+		if p.Position.EPSG > 0 {
+			grid = gridCode(p.Position.EPSG)
+		}
+	}
+	f.loca.add(p.Name, east, north, grid, level, latitude, longitude, system, p.Survey.Location)
 }
+
+// gridCode is the code of a grid in LOCA_GREF.
+func gridCode(epsg int) string { return "EPSG" + strconv.Itoa(epsg) }
 
 // soil writes the rows in GEOL: one for layers of one soil that follow one
 // another. A half-space has no base to give.
@@ -292,6 +304,9 @@ func codesUsed(tables []*table) *table {
 				continue
 			}
 			for _, row := range t.rows {
+				if grid, is := strings.CutPrefix(row[i], "EPSG"); is && h.name == "LOCA_GREF" && !used[h.name+" "+row[i]] {
+					codes.add(h.name, row[i], "Grid with the number "+grid+" in the EPSG registry")
+				}
 				used[h.name+" "+row[i]] = true
 			}
 		}

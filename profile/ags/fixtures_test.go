@@ -145,6 +145,8 @@ func describeProfile(b *strings.Builder, p *profile.Profile) {
 		{"ground level", optionalText(s.GroundLevel)}, {"water table", optionalText(s.WaterTable)},
 		{"depth reached", optionalText(profile.Optional{Value: s.DepthReached, Known: s.DepthReached > 0})},
 		{"latitude", optionalText(p.Position.Latitude)}, {"longitude", optionalText(p.Position.Longitude)},
+		{"easting", optionalText(p.Position.Easting)}, {"northing", optionalText(p.Position.Northing)},
+		{"epsg", optionalText(profile.Optional{Value: float64(p.Position.EPSG), Known: p.Position.EPSG > 0})},
 	} {
 		if field.value != "" {
 			fmt.Fprintf(b, "%s: %s\n", field.name, field.value)

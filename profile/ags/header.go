@@ -31,7 +31,7 @@ var projectHeadings = []string{
 }
 
 // codeHeadings are those whose codes are looked up in ABBR.
-var codeHeadings = []string{"WGPG_TOOL", "WGPT_PARA", "ISTG_TYPE"}
+var codeHeadings = []string{"WGPG_TOOL", "WGPT_PARA", "ISTG_TYPE", "LOCA_GREF"}
 
 // mostWords bounds what is kept of ABBR, and of DICT. A whole dictionary is a
 // fifth of it.

@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"math"
 	"slices"
+	"strconv"
 	"strings"
 
 	"shearbook/profile"
@@ -150,6 +151,9 @@ func (r *reader) loca(h *hole, c *cursor, level measure) {
 	if h.location == "" {
 		h.location = r.header.location
 	}
+	if r.grid(h, c) {
+		return
+	}
 	grid := strings.TrimSpace(strings.Join([]string{gridPart(c, "LOCA_NATE", "E"), gridPart(c, "LOCA_NATN", "N")}, ""))
 	if grid == "" {
 		return
@@ -158,6 +162,46 @@ func (r *reader) loca(h *hole, c *cursor, level measure) {
 		grid = r.header.code("LOCA_GREF", system) + " " + grid
 	}
 	h.location = strings.TrimPrefix(h.location+", "+strings.TrimSuffix(grid, ","), ", ")
+}
+
+// grid reads the position in the national grid; false if it is not all there.
+// Then what there is of it goes to the location, in the words of the file. The
+// EPSG code of the grid is read where the file names it so.
+func (r *reader) grid(h *hole, c *cursor) bool {
+	var at [2]profile.Optional
+	for i, heading := range []string{"LOCA_NATE", "LOCA_NATN"} {
+		column := c.g.column(heading)
+		v, problem := parseNumber(c.get(column))
+		if len(c.get(column)) == 0 || problem != "" || math.Abs(v) > profile.MaxGrid {
+			return false
+		}
+		at[i] = profile.Known(v)
+	}
+	h.position.Easting, h.position.Northing = at[0], at[1]
+	system := c.text(c.g.column("LOCA_GREF"))
+	for _, text := range []string{system, r.header.code("LOCA_GREF", system)} {
+		if code, ok := epsgIn(text); ok {
+			h.position.EPSG = code
+			break
+		}
+	}
+	return true
+}
+
+// epsgIn is the code in a text such as "EPSG:27700" or "British National Grid
+// (EPSG 27700)".
+func epsgIn(text string) (code int, ok bool) {
+	_, rest, found := strings.Cut(strings.ToUpper(text), "EPSG")
+	rest = strings.TrimLeft(rest, " :.-_=")
+	end := 0
+	for end < len(rest) && rest[end] >= '0' && rest[end] <= '9' {
+		end++
+	}
+	if !found || end == 0 || end > 8 {
+		return 0, false
+	}
+	code, err := strconv.Atoi(rest[:end])
+	return code, err == nil && code > 0
 }
 
 // gridPart is one coordinate of the national grid as the file gives it.

@@ -41,7 +41,7 @@ var standard = map[string]standardGroup{
 // standardTypes are the types of the headings that Write uses.
 var standardTypes = map[string]string{
 	"PROJ_ID": "ID", "TRAN_DATE": "DT", "DICT_TYPE": "PA", "DICT_STAT": "PA", "DICT_DTYP": "PT", "DICT_UNIT": "PU",
-	"LOCA_ID": "ID", "LOCA_GL": "2DP", "LOCA_LAT": "DMS", "LOCA_LON": "DMS", "GEOL_TOP": "2DP", "GEOL_BASE": "2DP",
+	"LOCA_ID": "ID", "LOCA_NATE": "2DP", "LOCA_NATN": "2DP", "LOCA_GREF": "PA", "LOCA_GL": "2DP", "LOCA_LAT": "DMS", "LOCA_LON": "DMS", "GEOL_TOP": "2DP", "GEOL_BASE": "2DP",
 	"WGPG_TOOL": "PA", "WGPG_DATE": "DT", "WGPT_PARA": "PA", "WGPT_UNIT": "PU", "WGPT_DPTH": "2DP", "WGPT_RDNG": "U",
 	"ISTG_TYPE": "PA", "ISTA_TOP": "2DP", "ISTA_BASE": "2DP", "ISTA_WVTY": "PA", "ISTA_WVL": "1DP",
 }

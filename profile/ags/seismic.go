@@ -71,7 +71,7 @@ func (v *velocities) analysis(c *cursor, s *set, value, analysis int, invalid bo
 		return
 	}
 	x.analysis = s.analysisOf(c.text(analysis))
-	s.readings = append(s.readings, x)
+	s.push(x)
 }
 
 // analysisOf is the index of an analysis number. Most often it is that of the
@@ -127,7 +127,7 @@ func (v *velocities) split(from int) {
 			part.readings = nil
 			for _, x := range s.readings {
 				if int(x.analysis) == i {
-					part.readings = append(part.readings, x)
+					part.push(x)
 				}
 			}
 			if i > 0 {

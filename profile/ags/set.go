@@ -31,12 +31,16 @@ type set struct {
 type reading struct {
 	top, base float64 // m; base is +Inf where it is blank
 	v         float64 // m/s
-	row       rowAt
-	column    int32 // of the velocity, in characters
-	analysis  int16 // index in the set's analyses
-	from      uint8 // index of the depth in the source's depths
+	fields
+	column   int32 // of the velocity, in characters
+	analysis int16 // index in the set's analyses
+}
 
-	depthOff, baseOff, valueOff int32 // of the fields
+// fields is where in the file a reading stands.
+type fields struct {
+	row                         rowAt
+	depthOff, baseOff, valueOff int32
+	from                        uint8 // index of the depth in the source's depths
 }
 
 // point reports whether the reading is at a depth.
@@ -117,6 +121,16 @@ func (s *set) add(x reading, unit string) {
 	} else if s.unit != unit {
 		s.unit = ""
 	}
+	s.push(x)
+}
+
+// push adds a reading. A set that has had all rows of a group so far, and many,
+// makes room for the rest of them at once.
+func (s *set) push(x reading) {
+	const many = 1 << 16
+	if n, rows := len(s.readings), s.source.g.rows; n == many && n < len(rows) && rows[n] == x.row {
+		s.readings = slices.Grow(s.readings, len(rows)-n)
+	}
 	s.readings = append(s.readings, x)
 }
 
@@ -135,7 +149,7 @@ func (v *velocities) drop(is func(*set) bool) {
 // returns false where there is a fault.
 func (v *velocities) reading(c *cursor, s *source, i int, u speed) (x reading, ok bool) {
 	at := c.placeOf(i)
-	x = reading{row: c.here(), column: int32(at.Column), valueOff: c.offset(i)}
+	x = reading{fields: fields{row: c.here(), valueOff: c.offset(i)}, column: int32(at.Column)}
 	okay := v.interval(c, s, &x)
 	value, problem := parseNumber(c.get(i))
 	hint := ""

@@ -191,7 +191,7 @@ func (v *velocities) cell(c *cursor, u *userColumn, id string) {
 			set.survey.Method += " (" + text + ")"
 		}
 	}
-	set.readings = append(set.readings, x)
+	set.push(x)
 }
 
 // hasDepth tells where a velocity has no heading of depth beside it.

@@ -48,8 +48,8 @@ var writtenEditions = []string{"4.0.4", "4.1", "4.1.1", "4.2"}
 //     every quantity that a layer may state. So N, su and the others are not
 //     made out to be tests.
 //
-// Soil goes into GEOL too. The text is ASCII; what that and the precision of
-// LOCA_GL lose, Lost tells.
+// The EPSG code of a grid is written into LOCA_GREF, as EPSG27700. Soil goes into GEOL too. The text is ASCII; what that and the precision of
+// LOCA_GL, LOCA_NATE and LOCA_NATN lose, Lost tells.
 //
 // The error is that of w; or it names an edition or a date that is none, or a
 // profile that Read would not give back: one that profile.Validate finds
@@ -185,11 +185,21 @@ func formOf(p *profile.Profile, edition string) form {
 	return formOwn
 }
 
+// place is a position as it is written: to 0.01 in a grid, and the grid only
+// beside a position in it.
+func place(p profile.Position) profile.Position {
+	if !p.Easting.Known || !p.Northing.Known {
+		p.Easting, p.Northing, p.EPSG = profile.Optional{}, profile.Optional{}, 0
+	}
+	p.Easting.Value, p.Northing.Value = round(p.Easting.Value), round(p.Northing.Value)
+	return p
+}
+
 // equal reports whether two profiles are the same but for the file that they
-// were read from and the notes on them. Ground levels are compared as they are
-// written.
+// were read from and the notes on them. Ground levels and positions are
+// compared as they are written.
 func equal(a, b *profile.Profile) bool {
-	if a.Name != b.Name || a.NoVelocity != b.NoVelocity || a.Position != b.Position || len(a.Layers) != len(b.Layers) {
+	if a.Name != b.Name || a.NoVelocity != b.NoVelocity || place(a.Position) != place(b.Position) || len(a.Layers) != len(b.Layers) {
 		return false
 	}
 	s, t := a.Survey, b.Survey
@@ -208,7 +218,8 @@ func equal(a, b *profile.Profile) bool {
 }
 
 // Lost tells what Write does not keep of the profiles: characters that ASCII
-// has not, decimals of the ground level, and the notes. What a profile says of
+// has not, decimals of the ground level and of a position in a grid, and the
+// notes. What a profile says of
 // the file it was read from is not written either, and not told.
 func Lost(profiles []profile.Profile) []profile.Note {
 	var notes []profile.Note
@@ -231,6 +242,12 @@ func Lost(profiles []profile.Profile) []profile.Note {
 		}
 		if level := p.Survey.GroundLevel; level.Known && !sameDecimal(level.Value) {
 			note(p, "ground-level", "the ground level is rounded to 0.01 m")
+		}
+		switch at := p.Position; {
+		case at.Easting.Known != at.Northing.Known || at.EPSG > 0 && !at.Easting.Known:
+			note(p, "position", "a position in a grid is written only if easting and northing are known")
+		case !sameDecimal(at.Easting.Value) || !sameDecimal(at.Northing.Value):
+			note(p, "position", "the position in its grid is rounded to 0.01")
 		}
 		if len(p.Notes) > 0 {
 			note(p, "notes", profile.Plural(len(p.Notes), "note")+" on it are not written")

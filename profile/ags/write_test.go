@@ -41,6 +41,10 @@ func random(rnd *rand.Rand, name string) profile.Profile {
 			GroundLevel: profile.Known(float64(rnd.IntN(2000)-300) / 100), WaterTable: profile.Known(8 * rnd.Float64()),
 		}
 		p.Position = profile.Position{Latitude: profile.Known(-90 + 180*rnd.Float64()), Longitude: profile.Known(-180 + 360*rnd.Float64())}
+		if rnd.IntN(2) == 0 {
+			p.Position.Easting, p.Position.Northing = profile.Known(float64(rnd.IntN(1e8))/100), profile.Known(float64(-rnd.IntN(1e8))/100)
+			p.Position.EPSG = rnd.IntN(2) * 27700
+		}
 	}
 	z := 0.0
 	for range 1 + rnd.IntN(12) {
@@ -87,7 +91,7 @@ func sampleProfiles() []profile.Profile {
 		{Top: 1.75, Bottom: 2.25, Vs: 230, Soil: `Dense "blue" sand`},
 	}}
 	log.Survey.Date, log.Survey.Operator, log.Survey.GroundLevel = "2026-01-30", "Kestrel Logging", profile.Known(8.4)
-	log.Position = profile.Position{Latitude: profile.Known(52.4875), Longitude: profile.Known(-1.8176)}
+	log.Position = profile.Position{Latitude: profile.Known(52.4875), Longitude: profile.Known(-1.8176), Easting: profile.Known(412300.25), Northing: profile.Known(287650.5), EPSG: 27700}
 	cone := profile.Profile{Name: "H2", Survey: measured("seismic cone"), Layers: []profile.Layer{
 		{Top: 0, Bottom: 1.2, Vs: 120.5, Vp: 400, Given: profile.GivenVp},
 		{Top: 1.2, Bottom: 2.25, Vs: 180},
@@ -230,12 +234,14 @@ func TestWriteDate(t *testing.T) {
 func TestLost(t *testing.T) {
 	p := profile.Profile{Name: "Löss", Layers: []profile.Layer{{Bottom: 5, Vs: 200, Soil: "Löß, 5 µm – «fine»"}}, Notes: make([]profile.Note, 2)}
 	p.Survey.GroundLevel = profile.Known(4.125)
+	p.Position = profile.Position{Easting: profile.Known(1.125), Northing: profile.Known(2)}
 	var ids []string
 	for _, n := range Lost([]profile.Profile{p, {Name: "A", Layers: p.Layers[:0]}}) {
 		ids = append(ids, n.ID+": "+n.Text)
 	}
 	want := []string{"ascii: profile Löss: AGS4 is ASCII; other characters are replaced",
-		"ground-level: profile Löss: the ground level is rounded to 0.01 m", "notes: profile Löss: 2 notes on it are not written"}
+		"ground-level: profile Löss: the ground level is rounded to 0.01 m",
+		"position: profile Löss: the position in its grid is rounded to 0.01", "notes: profile Löss: 2 notes on it are not written"}
 	if diff := cmp.Diff(want, ids); diff != "" {
 		t.Errorf("(-want +got)\n%s", diff)
 	}

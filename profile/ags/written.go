@@ -66,7 +66,7 @@ func (v *velocities) layers(g *group) {
 		h := r.hole(c, s.loca)
 		var x reading
 		if len(c.get(s.value)) == 0 { // a profile without velocities
-			x = reading{row: c.here(), column: int32(c.placeOf(s.value).Column), valueOff: c.offset(s.value)}
+			x = reading{fields: fields{row: c.here(), valueOff: c.offset(s.value)}, column: int32(c.placeOf(s.value).Column)}
 			ok = v.interval(c, s, &x) && v.count(c.placeOf(s.value))
 		} else {
 			x, ok = v.reading(c, s, s.value, s.speed)
@@ -75,7 +75,7 @@ func (v *velocities) layers(g *group) {
 			continue
 		}
 		set := v.set(run{hole: h, group: g.name, id: c.text(columns[1])}, groupLayers, s, c.placeOf(s.value))
-		set.readings = append(set.readings, x)
+		set.push(x)
 	}
 }
 

@@ -45,6 +45,7 @@ func (r *reader) assemble() bool {
 	if !r.has(profile.ProfileName) {
 		t.names[t.stacks[0].name] = r.headerLine()
 	}
+	r.halfTold = map[spot]bool{}
 	own := r.own(t.names)
 	common := metadata(r.preamble.statements)
 	if !r.metadataFits(own, common) {
@@ -72,6 +73,7 @@ func (r *reader) assemble() bool {
 			r.applyOwn(&p, lines)
 			reading.Metadata = append(slices.Clip(common), metadata(lines)...)
 		}
+		r.positionOf(&p, s)
 		r.judge(&p, s, notes)
 		r.profiles = append(r.profiles, p)
 	}
@@ -96,7 +98,7 @@ func (r *reader) applyOwn(p *profile.Profile, lines []statement) {
 	for i := range lines {
 		r.applyTo(p, p.Name, keyOf(lines[i].key), &lines[i])
 	}
-	r.checkPosition(p, p.Name)
+
 }
 
 // judge validates a profile and gathers its notes.
@@ -133,6 +135,9 @@ func (r *reader) commonNotes() []profile.Note {
 	}
 	if first >= 0 {
 		notes = append(notes, profile.Note{ID: "column-not-read", Text: columnWord(len(unread)) + " not read: " + some(unread), Place: r.place(r.columns.list[first].spot)})
+	}
+	if mapped := r.mappedColumns(); len(mapped) > 0 {
+		notes = append(notes, profile.Note{ID: "mapped", Text: "read as given: " + some(mapped), Place: r.place(r.columns.list[0].spot)})
 	}
 	if given := r.columns.given; len(given) > 0 {
 		notes = append(notes, profile.Note{ID: "units-given", Text: "the file states no unit; given for it: " + some(given), Place: r.place(r.columns.list[0].spot)})

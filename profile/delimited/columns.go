@@ -2,8 +2,6 @@ package delimited
 
 import (
 	"slices"
-	"strconv"
-	"strings"
 
 	"shearbook/profile"
 )
@@ -14,9 +12,9 @@ const separators = "\t;,"
 // columns is the header of a table.
 type columns struct {
 	list  []column
-	index [profile.RefusalWord + 1]int // of each quantity in list; -1 if it has no column
-	given []string                     // "Vs (ft/s)" and so on, whose units Options gives
-	notes []profile.Note               // on columns named depth
+	index [profile.EPSG + 1]int // of each quantity in list; -1 if it has no column
+	given []string              // "Vs (ft/s)" and so on, whose units Options gives
+	notes []profile.Note        // on columns named depth
 }
 
 type column struct {
@@ -39,7 +37,25 @@ func (r *reader) readHeader() bool {
 		r.columns.list[i] = column{heading: parseHeading(string(c.text)), spot: r.scan.spotOf(c)}
 	}
 	r.dropTrailing()
-	return r.decideDepth() && r.indexColumns() && r.required() && r.readUnits()
+	if !r.mapColumns() {
+		return false
+	}
+	return r.isProfile() && r.decideDepth() && r.indexColumns() && r.required() && r.readUnits()
+}
+
+// isProfile tells of a header of measurements that velocities have yet to be
+// found from.
+func (r *reader) isProfile() bool {
+	for i := range r.columns.list {
+		if r.columns.list[i].quantity == profile.Vs {
+			return true
+		}
+	}
+	text, hint, measured := Measurements(r.headings())
+	if measured {
+		r.fault(r.headerSpot(), hint, "%s", text)
+	}
+	return !measured
 }
 
 // headerRow reads the first row that is not blank.
@@ -81,7 +97,7 @@ func (r *reader) chooseSeparator() bool {
 			first = bad
 			continue
 		}
-		if n := recognised(try.cells); n > most {
+		if n := r.recognised(try.cells); n > most {
 			most, r.scan.sep = n, sep
 		}
 	}
@@ -93,10 +109,10 @@ func (r *reader) chooseSeparator() bool {
 }
 
 // recognised rates a header: the columns that it names, then its cells.
-func recognised(cells []cell) int {
+func (r *reader) recognised(cells []cell) int {
 	n := len(cells)
 	for i := range cells {
-		if parseHeading(string(cells[i].text)).quantity != profile.Unknown {
+		if r.mapping.Heading(string(cells[i].text)) != profile.Unknown {
 			n += MaxColumns + 1
 		}
 	}
@@ -208,13 +224,9 @@ func (r *reader) required() bool {
 	depth := r.has(profile.Top) || r.has(profile.Bottom) || r.has(profile.Thickness)
 	vs := r.has(profile.Vs) || r.tested()
 	at := r.headerSpot()
-	switch {
-	case !vs && !depth:
-		r.fault(at, r.hintNoTable(), "this does not look like a table of layers: no column of depth and none of Vs in %s", r.seen())
-	case !vs:
-		r.fault(at, r.hintNoTable(), "no column of Vs in %s", r.seen())
-	case !depth:
-		r.fault(at, r.hintNoTable(), "no column of top, bottom or thickness in %s", r.seen())
+	if !vs || !depth {
+		text, hint := r.noTable(vs, depth)
+		r.fault(at, hint, "%s", text)
 	}
 	if r.has(profile.VsLower) != r.has(profile.VsUpper) {
 		q := profile.VsLower
@@ -265,49 +277,4 @@ func (r *reader) headerSpot() spot {
 		return spot{r.headerLine(), r.scan.grid.column}
 	}
 	return spot{r.headerLine(), 1}
-}
-
-// seen is what the header holds, for messages.
-func (r *reader) seen() string {
-	const most = 8
-	var seen []string
-	for i, c := range r.columns.list {
-		if i == most {
-			seen = append(seen, "…")
-			break
-		}
-		seen = append(seen, quote(c.name))
-	}
-	if len(seen) == 0 {
-		return "a row of blank cells"
-	}
-	return strings.Join(seen, ", ")
-}
-
-// hintNoTable says what to do with a header that is none: numbers were found
-// in its place, or a row further down looks like one.
-func (r *reader) hintNoTable() string {
-	for i := range r.columns.list {
-		if _, problem := metadataNumber(r.columns.list[i].name); problem == "" {
-			return "put a row with the names of the columns above it, such as top_m,bottom_m,vs_mps"
-		}
-	}
-	for i := range r.columns.list {
-		if c := &r.columns.list[i]; c.quantity == profile.Unknown && strings.Contains(plain(c.name), "velocity") {
-			return "is " + quote(c.name) + " the shear-wave velocity? then name it Vs"
-		}
-	}
-	ahead := r.scan
-	ahead.cells = nil
-	for range 50 {
-		for _, sep := range []byte(separators) {
-			try := ahead
-			try.sep, try.cells = sep, nil
-			if ok, bad := try.next(); ok && bad == nil && recognised(try.cells) > 2*MaxColumns {
-				return "line " + strconv.Itoa(try.end.line) + " looks like the header: begin the lines above it with #"
-			}
-		}
-		ahead.rawLine()
-	}
-	return hintTable
 }

@@ -98,6 +98,7 @@ func (r *reader) unitFromRow(c *column, row *scanner, i int) {
 // settleUnit takes the unit of a column from elsewhere if it has none, and
 // looks for contradictions if it has one.
 func (r *reader) settleUnit(c *column) {
+	r.mappedUnit(c)
 	for _, units := range []*Units{&r.stated, &r.given} {
 		u, ok := units.of(c.quantity)
 		switch {
@@ -122,6 +123,22 @@ func (r *reader) settleUnit(c *column) {
 		r.table.unitless = true
 	}
 	c.unit.Factor = 1
+}
+
+// mappedUnit takes the unit that a mapping gives for a column.
+func (r *reader) mappedUnit(c *column) {
+	if c.mapped == nil || c.mapped.unit == "" {
+		return
+	}
+	u, ok := unitOf(c.mapped.unit, c.quantity.Dimension())
+	switch {
+	case !ok: // it belongs to the heading
+	case c.unit.Name == "":
+		c.unit, c.unitText = u, c.mapped.unit
+		r.columns.given = append(r.columns.given, quote(c.name)+" in "+u.Name)
+	case c.unit != u:
+		r.fault(c.spot, "leave the unit out of the mapping, or correct the file", "column %s is in %s, but %s was given for it", quote(c.name), c.unit.Name, u.Name)
+	}
 }
 
 // hintUnit shows how to state the unit of a column.

@@ -49,8 +49,16 @@
 // # Lines above the header
 //
 // Known keys are name, method, date, location, operator, basis, ground level,
-// water table, depth reached, latitude, longitude and units; others are kept
+// water table, depth reached, latitude, longitude, easting, northing, epsg and
+// units; others are kept
 // as they are. A line "# [L2] water table: 3 m" holds for profile L2 alone.
+//
+// # Positions
+//
+// Latitude and longitude (degrees, WGS 84), easting and northing (in their
+// grid, in its own unit) and the EPSG code of the grid are read above the
+// header, or from columns of these names, in which a profile says one thing:
+// in its first row, and in others again or not at all.
 package delimited
 
 import (
@@ -77,6 +85,13 @@ type Options struct {
 	// ParseUnits: "ft, ft/s". Where the file states another unit, that is a
 	// fault.
 	Units string
+
+	// Map names columns that would not be recognised, each as
+	// "Vs=S-wave speed [m/s]": a quantity under any name that is read, = and a
+	// heading. The unit is for what the file states none for; where the file
+	// states another, that is a fault. A mapped column goes before others of
+	// its quantity, which are then not read.
+	Map []string
 }
 
 // Read returns the profiles of a table in the order of the file. The name of
@@ -87,6 +102,7 @@ type Options struct {
 // profile.Validate and carries the notes of profile.Doubts after its own:
 //
 //   - column-not-read: columns that were carried along unread.
+//   - mapped: columns that were read as Options.Map says.
 //   - units-given: units that the file does not state and Options does.
 //   - depth-as-top, depth-as-bottom: what a column named depth was taken for.
 //   - half-space-assumed: tops alone were given, so the last layer has no
@@ -102,6 +118,9 @@ func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
 	if r.given, err = ParseUnits(opt.Units); err != nil {
 		return nil, err
 	}
+	if r.mapping, err = ParseMap(opt.Map); err != nil {
+		return nil, err
+	}
 	r.read(data)
 	if err := r.err(); err != nil {
 		return nil, err
@@ -112,8 +131,9 @@ func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
 // reader is the state of reading one file.
 type reader struct {
 	collector
-	given    Units // by Options
-	stated   Units // by the file's "# units:" line
+	given    Units   // by Options
+	mapping  Mapping // by Options
+	stated   Units   // by the file's "# units:" line
 	scan     scanner
 	reading  profile.Reading // what the readings of all profiles share
 	preamble preamble
@@ -122,7 +142,8 @@ type reader struct {
 	table    table
 	profiles []profile.Profile
 
-	tableName string // of a profile that nothing in a spreadsheet's table names
+	tableName string        // of a profile that nothing in a spreadsheet's table names
+	halfTold  map[spot]bool // halves of positions that were told of
 }
 
 // read runs from the bytes to the profiles. Each step that returns false has

@@ -65,6 +65,10 @@ func (c *collector) trouble(t *trouble) { c.stop(t.spot, t.hint, "%s", t.text) }
 // add adds the faults of a profile.
 func (c *collector) add(faults profile.Faults) {
 	for _, f := range faults {
+		if f.More > 0 {
+			c.total += f.More
+			continue
+		}
 		c.fault(spot{f.Place.Line, f.Place.Column}, f.Hint, "%s", f.Text)
 	}
 }
@@ -75,7 +79,7 @@ func (c *collector) err() error {
 		return cmp.Or(cmp.Compare(a.Place.Line, b.Place.Line), cmp.Compare(a.Place.Column, b.Place.Column))
 	})
 	if more := c.total - len(c.faults); more > 0 {
-		c.faults = append(c.faults, profile.Faultf(profile.Place{File: c.file}, "", "and %s", count(more, "more fault")))
+		c.faults = append(c.faults, profile.MoreFaults(c.file, more))
 	}
 	return c.faults.Err()
 }

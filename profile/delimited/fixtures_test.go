@@ -7,6 +7,7 @@ import (
 	"math"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 
@@ -21,8 +22,8 @@ import (
 var update = flag.Bool("update", false, "rewrite testdata")
 
 // TestFixtures reads every table in testdata/*/*.txtar. An archive holds
-// tables x.csv, for some the units given for them in x.units, and in x.want
-// what comes out: the profiles, or the messages as they are shown to people.
+// tables x.csv, for some the units given for them in x.units and the mapping in
+// x.map, a line an item, and in x.want what comes out: the profiles, or the messages as they are shown to people.
 func TestFixtures(t *testing.T) {
 	files, err := filepath.Glob("testdata/*/*.txtar")
 	if err != nil || len(files) == 0 {
@@ -42,7 +43,7 @@ func testArchive(t *testing.T, file string) {
 	var rewritten []txtar.File
 	for _, c := range cases(archive) {
 		t.Run(c.name, func(t *testing.T) {
-			profiles, err := Read(c.name+".csv", c.data, Options{Units: c.units})
+			profiles, err := Read(c.name+".csv", c.data, Options{Units: c.units, Map: c.maps()})
 			if refused != (err != nil) {
 				t.Errorf("error = %v", err)
 			}
@@ -64,8 +65,8 @@ func testArchive(t *testing.T, file string) {
 
 // fixture is one table of an archive.
 type fixture struct {
-	name, units, want string
-	data              []byte
+	name, units, mapped, want string
+	data                      []byte
 }
 
 func cases(archive *txtar.Archive) []*fixture {
@@ -84,6 +85,8 @@ func cases(archive *txtar.Archive) []*fixture {
 			c.data = f.Data
 		case "units":
 			c.units = strings.TrimSpace(string(f.Data))
+		case "map":
+			c.mapped = string(f.Data)
 		case "want":
 			c.want = string(f.Data)
 		}
@@ -91,10 +94,18 @@ func cases(archive *txtar.Archive) []*fixture {
 	return list
 }
 
+// maps are the items of the mapping.
+func (c *fixture) maps() []string {
+	return slices.DeleteFunc(strings.Split(c.mapped, "\n"), func(line string) bool { return line == "" })
+}
+
 func (c *fixture) files() []txtar.File {
 	files := []txtar.File{{Name: c.name + ".csv", Data: c.data}}
 	if c.units != "" {
 		files = append(files, txtar.File{Name: c.name + ".units", Data: []byte(c.units + "\n")})
+	}
+	if c.mapped != "" {
+		files = append(files, txtar.File{Name: c.name + ".map", Data: []byte(c.mapped)})
 	}
 	return append(files, txtar.File{Name: c.name + ".want", Data: []byte(c.want)})
 }
@@ -131,6 +142,8 @@ func describeProfile(b *strings.Builder, p *profile.Profile) {
 		{"ground level", optionalText(s.GroundLevel)}, {"water table", optionalText(s.WaterTable)},
 		{"depth reached", optionalText(profile.Optional{Value: s.DepthReached, Known: s.DepthReached > 0})},
 		{"latitude", optionalText(p.Position.Latitude)}, {"longitude", optionalText(p.Position.Longitude)},
+		{"easting", optionalText(p.Position.Easting)}, {"northing", optionalText(p.Position.Northing)},
+		{"epsg", optionalText(profile.Optional{Value: float64(p.Position.EPSG), Known: p.Position.EPSG > 0})},
 	} {
 		if field.value != "" {
 			fmt.Fprintf(b, "%s: %s\n", field.name, field.value)

@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"errors"
 	"path/filepath"
+	"strings"
 	"testing"
 
 	"golang.org/x/tools/txtar"
@@ -31,6 +32,7 @@ func FuzzRead(f *testing.F) {
 	}
 	f.Add([]byte("\xff\xfet\x00o\x00p\x00"), "")
 	f.Add([]byte("#name:0\t0\nz,vs\n0,1"), "m,m/s")
+	f.Add([]byte("0"), strings.Repeat("0,", 23)) // no more faults of units than are told
 	f.Add([]byte("top_m,vs_mps\r0,1\r5,\xfc"), "m")
 	f.Fuzz(func(t *testing.T, data []byte, units string) {
 		profiles, err := Read("fuzz.csv", data, Options{Units: units})
@@ -81,4 +83,29 @@ func checkProfiles(t *testing.T, profiles []profile.Profile) {
 		t.Fatalf("written and read: %v\n%s", err, written(t, profiles))
 	}
 	equal(t, "written and read", again, profiles, asWritten)
+}
+
+// FuzzMap does the same with a mapping, an item a line.
+func FuzzMap(f *testing.F) {
+	for _, file := range []string{"testdata/shapes/mapping.txtar", "testdata/faults/mapping.txtar", "testdata/faults/otherkinds.txtar", "testdata/shapes/positions.txtar", "testdata/faults/positions.txtar"} {
+		archive, err := txtar.ParseFile(file)
+		if err != nil {
+			f.Fatal(err)
+		}
+		for _, c := range cases(archive) {
+			f.Add(c.data, c.mapped)
+		}
+	}
+	f.Fuzz(func(t *testing.T, data []byte, mapped string) {
+		c := fixture{mapped: mapped}
+		if _, err := ParseMap(c.maps()); err != nil {
+			return
+		}
+		profiles, err := Read("fuzz.csv", data, Options{Map: c.maps()})
+		if err != nil {
+			checkFaults(t, data, err)
+			return
+		}
+		checkProfiles(t, profiles)
+	})
 }

@@ -16,6 +16,8 @@ type Table struct {
 	Name   string // of a profile that no column and no statement names; the file's if ""
 	Column int    // column of the sheet, from 1, in which the first cell of a row stands
 
+	Mapping Mapping // of its headings; one that it does not have is let pass
+
 	text       []byte  // its rows with tabs between their cells
 	rows       []int32 // row of the sheet in which each line of text stands
 	statements []statement
@@ -72,13 +74,15 @@ func withoutControl(r rune) rune {
 	return r
 }
 
-// Read returns the profiles of the table. The reading says which file and
+// Read returns the profiles of the table. Of the options it takes the units;
+// the reading says which file and
 // sheet they come from; rows, columns and metadata are added to it.
 func (t *Table) Read(reading profile.Reading, opt Options) ([]profile.Profile, error) {
 	r := reader{
 		collector: collector{file: reading.File, sheet: reading.Sheet},
 		reading:   reading,
 		tableName: t.Name,
+		mapping:   t.Mapping,
 	}
 	var err error
 	if r.given, err = ParseUnits(opt.Units); err != nil {
@@ -108,11 +112,6 @@ func (g *grid) spot(line int, before []byte) spot {
 	row := g.rows[min(line, len(g.rows))-1]
 	return spot{int(row), g.column + bytes.Count(before, []byte{'\t'})}
 }
-
-// Heading returns what a column with this heading is taken for, Unknown if it
-// is not read. A column named depth and no more is taken for tops; what stands
-// in it may show that it holds bottoms.
-func Heading(text string) profile.Quantity { return parseHeading(text).quantity }
 
 // Statement reports whether key is one of the keys that are read above a
 // header.

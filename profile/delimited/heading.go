@@ -10,11 +10,13 @@ import (
 // heading is what the heading of a column says.
 type heading struct {
 	name     string // without the unit
+	text     string // all of it, single blanks between its words
 	quantity profile.Quantity
 	depth    bool // may be the top or the bottom: quantity is Top for now
 	unitText string
 	unit     profile.Unit // Name is "" if the heading states none
 	problem  string       // what is wrong with its unit
+	mapped   *mapItem     // what Options.Map says of it; nil if nothing
 }
 
 // longestHeading is how many bytes of a heading are looked at; a longer one
@@ -25,6 +27,12 @@ const longestHeading = 120
 // stands in brackets or after the name. What is not read is Unknown.
 func parseHeading(text string) heading {
 	text = strings.Join(strings.Fields(text), " ")
+	h := readHeading(text)
+	h.text = text
+	return h
+}
+
+func readHeading(text string) heading {
 	unread := heading{name: text}
 	if len(text) > longestHeading {
 		return unread
@@ -95,11 +103,14 @@ func (h *heading) bracketed(groups []string) {
 	}
 }
 
+// afterName are what may stand between a name and its unit.
+const afterName = " _,;:/-."
+
 // suffixed looks for a name followed by a unit, the longest name first:
 // vs_mps, "Vs, m/s", "depth m".
 func suffixed(text string) heading {
 	for i := len(text) - 1; i > 0; i-- {
-		if !strings.ContainsRune(" _,;:/-.", rune(text[i])) {
+		if !strings.ContainsRune(afterName, rune(text[i])) {
 			continue
 		}
 		h := named(text[:i])
@@ -108,7 +119,7 @@ func suffixed(text string) heading {
 		}
 		unit := strings.TrimLeft(text[i+1:], " _")
 		if u, ok := unitOf(unit, h.quantity.Dimension()); ok {
-			h.name = strings.TrimRight(text[:i], " _,;:/-.")
+			h.name = strings.TrimRight(text[:i], afterName)
 			h.unit, h.unitText = u, unit
 			return h
 		}

@@ -60,6 +60,11 @@ var names = map[profile.Quantity][]string{
 		"w", "wn", "water content", "water content w", "natural water content", "moisture content",
 	},
 	profile.RefusalWord: {"refusal", "refused", "spt refusal", "refusal of penetration"},
+	profile.Latitude:    {"latitude", "lat", "latitude deg", "lat deg", "latitude wgs84", "latitude wgs 84"},
+	profile.Longitude:   {"longitude", "lon", "long", "longitude deg", "lon deg", "longitude wgs84", "longitude wgs 84"},
+	profile.Easting:     {"easting", "easting m", "easting ft", "grid easting"},
+	profile.Northing:    {"northing", "northing m", "northing ft", "grid northing"},
+	profile.EPSG:        {"epsg", "epsg code"},
 }
 
 // bareDepths are headings that may mean the top or the bottom of a layer.

@@ -125,7 +125,6 @@ func (r *reader) apply() bool {
 			r.applyTo(&p.base, "", k, st)
 		}
 	}
-	r.checkPosition(&p.base, "")
 	return true
 }
 

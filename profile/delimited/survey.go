@@ -1,7 +1,6 @@
 package delimited
 
 import (
-	"strconv"
 	"strings"
 	"unicode"
 
@@ -24,6 +23,9 @@ const (
 	keyDepthReached key = "depth reached"
 	keyLatitude     key = "latitude"
 	keyLongitude    key = "longitude"
+	keyEasting      key = "easting"
+	keyNorthing     key = "northing"
+	keyEPSG         key = "epsg"
 	keyUnits        key = "units"
 )
 
@@ -57,6 +59,12 @@ func keyOf(text string) key {
 		return keyLatitude
 	case "longitude", "lon", "long":
 		return keyLongitude
+	case "easting", "grid easting":
+		return keyEasting
+	case "northing", "grid northing":
+		return keyNorthing
+	case "epsg", "epsg code":
+		return keyEPSG
 	case "units", "unit":
 		return keyUnits
 	}
@@ -98,10 +106,10 @@ func (r *reader) applyTo(p *profile.Profile, name string, k key, st *statement) 
 		} else if ok {
 			p.Survey.DepthReached = z
 		}
-	case keyLatitude:
-		p.Position.Latitude = r.degrees(k, st, 90, "N", "S")
-	case keyLongitude:
-		p.Position.Longitude = r.degrees(k, st, 180, "E", "W")
+	case keyLatitude, keyLongitude, keyEasting, keyNorthing, keyEPSG:
+		if problem, hint := placeBy(&p.Position, k.quantity(), st.value); problem != "" {
+			r.fault(st.at(), hint, "%s %s %s", k, quote(st.value), problem)
+		}
 	case keyUnits:
 		r.fault(st.at(), "state the units of the file once, for all profiles", "units are stated for one profile")
 	}
@@ -197,40 +205,6 @@ func metadataNumber(text string) (v float64, problem string) {
 		return numerals{comma: true}.parse([]byte(text))
 	}
 	return v, problem
-}
-
-// degrees reads a latitude or longitude in decimal degrees.
-func (r *reader) degrees(k key, st *statement, limit float64, positive, negative string) profile.Optional {
-	number, rest := cutNumber(st.value)
-	v, problem := metadataNumber(number)
-	rest = strings.TrimSpace(strings.TrimPrefix(strings.TrimSpace(rest), "°"))
-	switch {
-	case rest == "" || strings.EqualFold(rest, positive):
-	case strings.EqualFold(rest, negative):
-		v = -v
-	default:
-		problem = "more"
-	}
-	if problem != "" || v < -limit || v > limit {
-		r.fault(st.at(), "write decimal degrees, south and west negative", "%s %s is not an angle of at most %s degrees",
-			k, quote(st.value), strconv.Itoa(int(limit)))
-		return profile.Optional{}
-	}
-	return profile.Known(v)
-}
-
-// checkPosition looks for half of a position.
-func (r *reader) checkPosition(p *profile.Profile, name string) {
-	if p.Position.Latitude.Known == p.Position.Longitude.Known {
-		return
-	}
-	latitude, longitude := r.lineOf(name, keyLatitude), r.lineOf(name, keyLongitude)
-	switch {
-	case longitude == 0:
-		r.fault(spot{latitude, 1}, "state both, or neither", "latitude is stated without longitude")
-	case latitude == 0:
-		r.fault(spot{longitude, 1}, "state both, or neither", "longitude is stated without latitude")
-	}
 }
 
 // lineOf is the line that states a key of a profile, or of all of them; 0 if

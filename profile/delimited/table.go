@@ -34,6 +34,8 @@ type stack struct {
 	open        spot    // of the cell that says that this layer has no bottom; zero if it has one
 	openText    string  // of that cell
 	stand       bool    // its bottom looks like a stand-in: 999
+
+	placed *placement // what columns say of its position; nil if nothing
 }
 
 // readRows reads every layer of the file.
@@ -42,6 +44,11 @@ func (r *reader) readRows() bool {
 		return false
 	}
 	r.readNumerals()
+	return r.stackRows()
+}
+
+// stackRows reads every row that is left.
+func (r *reader) stackRows() bool {
 	r.table.names = map[string]int{}
 	r.reserve()
 	for {
@@ -138,6 +145,7 @@ func (r *reader) row() bool {
 	l := &r.table.layers[len(r.table.layers)-1]
 	r.layer(l)
 	r.pile(s, l)
+	r.position(s)
 	s.faulty = s.faulty || r.total > before
 	r.keep()
 	return true

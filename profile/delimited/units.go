@@ -10,7 +10,7 @@ import (
 // zero value has none.
 type Units struct {
 	byDimension [profile.Blows + 1]profile.Unit
-	byQuantity  [profile.RefusalWord + 1]profile.Unit
+	byQuantity  [profile.EPSG + 1]profile.Unit
 }
 
 const hintUnits = `write units as "m, m/s", or as "depth=ft, vs=ft/s, density=g/cm3"`
@@ -30,6 +30,9 @@ func ParseUnits(text string) (Units, error) {
 		}
 		if problem := u.add(item); problem != "" {
 			faults = append(faults, profile.Faultf(profile.Place{}, hintUnits, "units: %s", problem))
+			if len(faults) == MaxFaults {
+				break
+			}
 		}
 	}
 	return u, faults.Err()

@@ -205,20 +205,42 @@ func (r *reader) within(k string, low, high float64) profile.Optional {
 	return profile.Optional{Value: v, Known: ok}
 }
 
-var positionKeys = []string{"latitude", "longitude"}
+var positionKeys = []string{"latitude", "longitude", "easting", "northing", "epsg"}
 
 func (r *reader) position(p *profile.Position) {
 	at, before := r.tok.spot, r.Count()
 	found, ok := r.object("position", positionKeys, func(i int) {
-		if i == 0 {
-			p.Latitude = r.within("latitude", -90, 90)
-		} else {
-			p.Longitude = r.within("longitude", -180, 180)
+		switch k := positionKeys[i]; k {
+		case "latitude":
+			p.Latitude = r.within(k, -90, 90)
+		case "longitude":
+			p.Longitude = r.within(k, -180, 180)
+		case "easting":
+			p.Easting = r.within(k, -profile.MaxGrid, profile.MaxGrid)
+		case "northing":
+			p.Northing = r.within(k, -profile.MaxGrid, profile.MaxGrid)
+		case "epsg":
+			p.EPSG = r.epsg()
 		}
 	})
-	if ok && r.Count() == before && !(found.has(0) && found.has(1)) {
+	switch {
+	case !ok || r.Count() > before:
+	case found.has(0) != found.has(1) || !found.has(0) && !found.has(2) && !found.has(3):
 		r.fault(at, "state both, or leave the position out", "position states not both latitude and longitude")
+	case found.has(2) != found.has(3):
+		r.fault(at, "state both, or neither", "position states not both easting and northing")
 	}
+}
+
+// epsg reads the code of a grid.
+func (r *reader) epsg() int {
+	at := r.tok.spot
+	v, ok := r.number("epsg")
+	if ok && (v != math.Trunc(v) || v < 1 || v > profile.MaxEPSG) {
+		r.fault(at, "it is the number of the grid, such as 32631", "epsg %v is no code of a grid", v)
+		return 0
+	}
+	return int(v)
 }
 
 // WrittenFrom is the key of the metadatum in which Read keeps the source of a

@@ -32,7 +32,8 @@
 //     one of "measured", "inverted" and "correlated"; and depth_reached_m,
 //     ground_level_m and water_table_m.
 //   - position: latitude and longitude, degrees in WGS 84, south and west
-//     negative.
+//     negative; or easting and northing, in a grid and in its own unit, and
+//     epsg, the number of the grid in the EPSG registry; or all of them.
 //   - source: file and sha256 of the file that the profile was read from
 //     before it was written here.
 //   - metadata: a list of {"key": …, "value": …}, what that file stated of the

@@ -1,6 +1,7 @@
 package json
 
 import (
+	"bytes"
 	"math"
 	"slices"
 	"strings"
@@ -61,11 +62,14 @@ type layer struct {
 	profile.Layer
 	columns []int           // fields that the profile has so far, in the order of the file
 	cells   [16][]byte      // of this layer, as the file gives them, by field
-	row     []byte          // the cells joined
-	layers  []profile.Layer // of the profile so far
-	rows    []profile.Row
-	still   []spot // places of layers without vs_mps
-	blow    int    // the field of its blow counts; 0 before the first
+	layers  []profile.Layer // of the file so far; those of a profile share its room
+	rows    []profile.Row   // likewise
+	first   int             // of the profile, in layers and rows
+	pending int             // first row whose cells are no string yet
+	text    []byte          // the cells of the rows from pending on
+	ends    []int           // of each of them
+	still   []spot          // places of layers without vs_mps
+	blow    int             // the field of its blow counts; 0 before the first
 	value   func(i int)
 }
 
@@ -75,7 +79,9 @@ func (r *reader) layersOf(p *profile.Profile) {
 		r.layer.value = r.value
 	}
 	r.layer.blow = 0
-	r.layer.layers, r.layer.rows, r.layer.still = r.layer.layers[:0], r.layer.rows[:0], r.layer.still[:0]
+	r.layer.still = r.layer.still[:0]
+	r.reserve()
+	r.layer.first, r.layer.pending = len(r.layer.layers), len(r.layer.rows)
 	before := r.Count()
 	r.list("layers", func() {
 		if r.layers++; r.layers > MaxLayers {
@@ -85,13 +91,26 @@ func (r *reader) layersOf(p *profile.Profile) {
 		line := int(r.tok.line)
 		if r.readLayer() && r.Count() == before {
 			r.layer.layers = append(r.layer.layers, r.layer.Layer)
-			join(r.layer.layers)
-			r.layer.rows = append(r.layer.rows, profile.Row{Line: line, Cells: r.joined()})
+			join(r.layer.layers[r.layer.first:])
+			r.layer.rows = append(r.layer.rows, profile.Row{Line: line})
+			r.keepCells()
 		}
 	})
-	p.Layers = slices.Clone(r.layer.layers) // of exactly the length they need
-	p.Reading.Rows = slices.Clone(r.layer.rows)
+	r.flushCells()
+	n := len(r.layer.layers)
+	p.Layers = r.layer.layers[r.layer.first:n:n]
+	p.Reading.Rows = r.layer.rows[r.layer.first:n:n]
 	r.columnsOf(p.Reading)
+}
+
+// reserve makes room for as many layers as the file may have: one for each time
+// that it has the key that every layer has.
+func (r *reader) reserve() {
+	if r.layer.layers != nil {
+		return
+	}
+	n := min(bytes.Count(r.scan.text, []byte(`"top_m"`)), MaxLayers)
+	r.layer.layers, r.layer.rows = make([]profile.Layer, 0, n), make([]profile.Row, 0, n)
 }
 
 // readLayer reads one layer.
@@ -205,17 +224,29 @@ func join(layers []profile.Layer) {
 	}
 }
 
-// joined is the cells of the layer, for the columns so far.
-func (r *reader) joined() string {
-	row := r.layer.row[:0]
-	for i, column := range r.layer.columns {
+// keepCells keeps the cells of the layer, for the columns so far.
+func (r *reader) keepCells() {
+	l := &r.layer
+	for i, column := range l.columns {
 		if i > 0 {
-			row = append(row, profile.CellSeparator...)
+			l.text = append(l.text, profile.CellSeparator...)
 		}
-		row = append(row, r.layer.cells[column]...)
+		l.text = append(l.text, l.cells[column]...)
 	}
-	r.layer.row = row
-	return string(row)
+	if l.ends = append(l.ends, len(l.text)); len(l.text) >= 1<<16 {
+		r.flushCells()
+	}
+}
+
+// flushCells turns the kept cells into strings, many rows at a time.
+func (r *reader) flushCells() {
+	l := &r.layer
+	all, from := string(l.text), 0
+	for i, to := range l.ends {
+		l.rows[l.pending+i].Cells = all[from:to]
+		from = to
+	}
+	l.pending, l.text, l.ends = len(l.rows), l.text[:0], l.ends[:0]
 }
 
 // columnsOf gives a reading its columns, and blank cells to the rows above

@@ -53,6 +53,10 @@ func writable(profiles []profile.Profile) error {
 			return fmt.Errorf("two profiles have the name %s", profile.Quote(name))
 		case p.Position.Latitude.Known != p.Position.Longitude.Known:
 			return fmt.Errorf("profile %s states not both latitude and longitude", profile.Quote(name))
+		case p.Position.Easting.Known != p.Position.Northing.Known:
+			return fmt.Errorf("profile %s states not both easting and northing", profile.Quote(name))
+		case p.Position.EPSG != 0 && !p.Position.Latitude.Known && !p.Position.Easting.Known:
+			return fmt.Errorf("profile %s states a grid, but no position in it", profile.Quote(name))
 		}
 		names[name] = true
 		if faults := profile.Validate(p); len(faults) > 0 {
@@ -74,7 +78,7 @@ func (w printer) profile(p *profile.Profile) {
 	w.WriteString("{\n      \"name\": " + text(p.Name))
 	for _, m := range []member{
 		{"survey", survey(&p.Survey)},
-		{"position", object(member{"latitude", known(p.Position.Latitude)}, member{"longitude", known(p.Position.Longitude)})},
+		{"position", position(&p.Position)},
 		{"source", source(p.Reading)},
 	} {
 		if m.value != "" {
@@ -86,26 +90,27 @@ func (w printer) profile(p *profile.Profile) {
 	if p.NoVelocity {
 		w.WriteString(",\n      \"no_velocity\": true")
 	}
-	layers := make([]string, len(p.Layers))
 	blow := blowKey(p)
-	for i := range p.Layers {
-		layers[i] = layerText(&p.Layers[i], blow, p.NoVelocity)
-	}
-	w.list("layers", layers)
+	w.items("layers", len(p.Layers), func(i int) string { return layerText(&p.Layers[i], blow, p.NoVelocity) })
 	w.WriteString("\n    }")
 }
 
 // list writes a list, an item a line; nothing of a list without items.
 func (w printer) list(key string, items []string) {
-	if len(items) == 0 {
+	w.items(key, len(items), func(i int) string { return items[i] })
+}
+
+// items writes a list of n items, each made when its turn comes.
+func (w printer) items(key string, n int, item func(i int) string) {
+	if n == 0 {
 		return
 	}
 	w.WriteString(",\n      \"" + key + "\": [")
-	for i, item := range items {
+	for i := range n {
 		if i > 0 {
 			w.WriteByte(',')
 		}
-		w.WriteString("\n        " + item)
+		w.WriteString("\n        " + item(i))
 	}
 	w.WriteString("\n      ]")
 }
@@ -141,6 +146,20 @@ func survey(s *profile.Survey) string {
 		member{"depth_reached_m", known(profile.Optional{Value: s.DepthReached, Known: s.DepthReached > 0})},
 		member{"ground_level_m", known(s.GroundLevel)},
 		member{"water_table_m", known(s.WaterTable)},
+	)
+}
+
+func position(p *profile.Position) string {
+	code := ""
+	if p.EPSG > 0 {
+		code = strconv.Itoa(p.EPSG)
+	}
+	return object(
+		member{"latitude", known(p.Latitude)},
+		member{"longitude", known(p.Longitude)},
+		member{"easting", known(p.Easting)},
+		member{"northing", known(p.Northing)},
+		member{"epsg", code},
 	)
 }
 

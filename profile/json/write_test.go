@@ -52,6 +52,10 @@ func random(rnd *rand.Rand, name string) profile.Profile {
 			GroundLevel: profile.Known(-3 + 9*rnd.Float64()), WaterTable: profile.Known(8e-9 * rnd.Float64()),
 		}
 		p.Position = profile.Position{Latitude: profile.Known(-90 + 180*rnd.Float64()), Longitude: profile.Known(-180 + 360*rnd.Float64())}
+		if rnd.IntN(2) == 0 {
+			p.Position.Easting, p.Position.Northing = profile.Known(1e6*rnd.Float64()), profile.Known(-1e6*rnd.Float64())
+			p.Position.EPSG = rnd.IntN(2) * 32631
+		}
 		p.Notes = []profile.Note{{ID: "half-space-assumed", Text: "only tops are given"}}
 		p.Reading.Metadata = []profile.Metadatum{{Key: "Sensor", Value: "4.5 Hz"}, {Value: "a remark"}}
 	}

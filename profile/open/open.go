@@ -1,9 +1,9 @@
 // Package open reads a profile file of any kind that is read: it looks at
 // what the file begins with and calls the reader for it. In this version that
 // is a table of layers in text (package delimited) or in a workbook (package
-// spreadsheet), a borehole log in LAS (package las), SiteXML (package sitexml)
-// or our own JSON (package json); other kinds are named and refused, with a way
-// out.
+// spreadsheet), AGS4 (package ags), a borehole log in LAS (package las), SiteXML
+// (package sitexml) or our own JSON (package json); other kinds are named and
+// refused, with a way out.
 package open
 
 import (
@@ -15,46 +15,38 @@ import (
 
 	"shearbook/profile"
 	"shearbook/profile/delimited"
-	"shearbook/profile/spreadsheet"
 )
-
-// Options says how to read a file. The zero value reads what the file states.
-type Options struct {
-	// Units are for what the file states no unit for, as "ft, ft/s"; see
-	// delimited.ParseUnits.
-	Units string
-
-	// Map names the headings or curves of a file that would not be recognised,
-	// each as "Vs=DTS [us/ft]"; see ags.Options and las.Options. Other kinds of
-	// file refuse it.
-	Map []string
-}
 
 // Bytes reads the profiles in data. The name is that of the file; it stands
 // in messages and names a profile that has no other name. An error is a
 // profile.Faults.
 func Bytes(name string, data []byte, opt Options) ([]profile.Profile, error) {
-	if bytes.HasPrefix(data, []byte(zipped)) {
-		if len(opt.Map) > 0 {
-			return nil, unmapped(name)
-		}
-		return spreadsheet.Read(name, data, spreadsheet.Options{Units: opt.Units})
+	if len(opt.Correlate.Relations) > 0 {
+		return correlated(name, data, opt)
 	}
-	if kind, ok := sniff(data); ok {
-		if read := readers[kind.begins]; read != nil {
-			return read(name, data, opt)
-		}
-		return nil, fault(name, kind.hint, "the file is %s, which this version does not read", kind.what)
+	f, err := formOf(name, data)
+	if err != nil {
+		return nil, err
 	}
-	if len(opt.Map) > 0 {
-		return nil, unmapped(name)
+	if err := f.refuse(name, &opt); err != nil {
+		return nil, err
 	}
-	return delimited.Read(name, data, delimited.Options{Units: opt.Units})
+	return f.read(name, data, &opt)
 }
 
-// unmapped is the fault of a map given for a file that takes none.
-func unmapped(name string) error {
-	return fault(name, "name the column in its heading instead, as \"vs (m/s)\"", "only AGS4 and LAS files take a map")
+// formOf is the form of a file; an error names a kind that is not read.
+func formOf(name string, data []byte) (*form, error) {
+	if bytes.HasPrefix(data, []byte(zipped)) {
+		return &workbookForm, nil
+	}
+	kind, ok := sniff(data)
+	if !ok {
+		return &tableForm, nil
+	}
+	if f := forms[kind.begins]; f != nil {
+		return f, nil
+	}
+	return nil, fault(name, kind.hint, "the file is %s, which this version does not read", kind.what)
 }
 
 // File reads the profiles in a file.

@@ -30,6 +30,7 @@ func Losses(p *profile.Profile) []string {
 		{p.Survey.Location != "", "the location in words"},
 		{p.Survey.DepthReached > 0 && p.Survey.DepthReached != p.DepthModelled(), "the depth reached"},
 		{p.Survey.WaterTable.Known, "the water table"},
+		{p.Position.Easting.Known || p.Position.Northing.Known || p.Position.EPSG > 0, "the position in a grid"},
 		{len(p.Notes) > len(profile.Doubts(p)), "notes on how the profile was read"},
 	} {
 		if l.is {

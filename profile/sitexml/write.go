@@ -77,7 +77,7 @@ func writable(profiles []profile.Profile) error {
 			return fmt.Errorf("profile %s states no velocities, and SiteXML has no place for the rest", profile.Quote(name))
 		case !p.Position.Latitude.Known || !p.Position.Longitude.Known:
 			return fmt.Errorf("profile %s states no latitude and longitude, which SiteXML needs", profile.Quote(name))
-		case p.Position != profiles[0].Position:
+		case p.Position.Latitude != profiles[0].Position.Latitude || p.Position.Longitude != profiles[0].Position.Longitude:
 			return fmt.Errorf("profiles %s and %s lie at different positions; a SiteXML file is of one site: write a file for each",
 				profile.Quote(profiles[0].Name), profile.Quote(name))
 		}
