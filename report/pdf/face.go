@@ -4,6 +4,7 @@ import (
 	"encoding/binary"
 	"fmt"
 	"math"
+	"math/bits"
 	"slices"
 
 	"codeberg.org/go-fonts/liberation/liberationmonobold"
@@ -65,6 +66,7 @@ type face struct {
 	used      [1 << 16 / 64]uint64 // characters set, a bit each
 	latin     [0x250]int16         // advance in 1/1000 em + 1; 0 where not yet looked up
 	kernPairs []byte               // of the kern table, sorted, 6 bytes each
+	before    [1 << 16 / 64]uint16 // characters in use below each word of used; see number
 }
 
 // loadFace reads the directory of a TrueType file. The files are part of the
@@ -131,7 +133,7 @@ func (t *face) glyph(r rune) int {
 	return (g + be16(deltas, 2*low)) & 0xFFFF
 }
 
-// advance returns the width of r in 1/1000 em, rounded as fpdf writes it to
+// advance returns the width of r in 1/1000 em, rounded as it is written to
 // the file, so that a viewer sets the line as it was measured.
 func (t *face) advance(r rune) int {
 	if int(r) < len(t.latin) {
@@ -207,6 +209,20 @@ func (t *face) usedRunes() []rune {
 		}
 	}
 	return runes
+}
+
+// number gives the characters in use their numbers: 1 and on, in order.
+func (t *face) number() {
+	n := 0
+	for i, word := range t.used {
+		t.before[i] = uint16(n)
+		n += bits.OnesCount64(word)
+	}
+}
+
+// numberOf returns the number of a character in use.
+func (t *face) numberOf(r rune) uint16 {
+	return t.before[r>>6] + uint16(bits.OnesCount64(t.used[r>>6]&(1<<(r&63)-1))) + 1
 }
 
 // faces holds the faces that a document has asked for, and the characters

@@ -1,6 +1,7 @@
 package pdf
 
 import (
+	"bytes"
 	"fmt"
 	"io"
 	"slices"
@@ -36,6 +37,7 @@ type printer struct {
 	penDash  []float64
 	penSet   bool
 
+	line      []byte // what text writes into
 	furniture [][]op // header and footer of each page, from its upper left corner
 }
 
@@ -57,7 +59,12 @@ func (p *printer) print(w io.Writer, pages []*page) error {
 	p.pdf.SetLineJoinStyle("round")
 	p.metadata()
 	p.survey(pages)
-	p.addFonts()
+	for _, f := range p.s.fonts.loaded {
+		if f != nil {
+			f.number()
+		}
+	}
+	p.pdf.SetCompression(false) // finish packs what is to be packed
 	for i, pg := range pages {
 		p.pdf.AddPage()
 		p.forget()
@@ -66,7 +73,16 @@ func (p *printer) print(w io.Writer, pages []*page) error {
 			p.draw(o, 0, 0)
 		}
 	}
-	return p.pdf.Output(w)
+	var plain bytes.Buffer
+	if err := p.pdf.Output(&plain); err != nil {
+		return err
+	}
+	whole, err := finish(plain.Bytes(), p.embedded())
+	if err != nil {
+		return err
+	}
+	_, err = w.Write(whole)
+	return err
 }
 
 // metadata states what the document is. Strings are UTF-16 with a byte order
@@ -161,23 +177,6 @@ func (p *printer) use(font report.Font, text string) {
 	}
 }
 
-func (p *printer) addFonts() {
-	for font, f := range p.s.fonts.loaded {
-		if f != nil && len(f.usedRunes()) > 0 {
-			p.pdf.AddUTF8FontFromBytes(fontName(report.Font(font)), "", f.subset())
-		}
-	}
-}
-
-// fontName is the name of a face in the file.
-func fontName(f report.Font) string {
-	return [faceCount]string{
-		"LiberationSans", "LiberationSans-Bold", "LiberationSans-Italic", "LiberationSans-BoldItalic",
-		"LiberationSerif", "LiberationSerif-Bold", "LiberationSerif-Italic", "LiberationSerif-BoldItalic",
-		"LiberationMono", "LiberationMono-Bold",
-	}[f]
-}
-
 // page draws what stands on a page: frames behind, then the pieces, then the
 // notes at the foot.
 func (p *printer) page(pg *page) {
@@ -269,7 +268,7 @@ func (p *printer) outline(o *outlineOp, dy float64) {
 	for len(p.levels) > 0 && p.levels[len(p.levels)-1] >= o.level {
 		p.levels = p.levels[:len(p.levels)-1]
 	}
-	p.pdf.Bookmark(o.title, len(p.levels), max(0, dy-4))
+	p.pdf.Bookmark(utf16Text(o.title), len(p.levels), max(0, dy-4))
 	p.levels = append(p.levels, o.level)
 }
 
@@ -277,13 +276,41 @@ func (p *printer) outline(o *outlineOp, dy float64) {
 // restored what the page is set to.
 func (p *printer) forget() { p.fontSet, p.inkSet, p.penSet = false, false, false }
 
+// text shows text. fpdf is not asked to: it knows fonts only as whole files,
+// which cost it more than all the rest of a report.
 func (p *printer) text(x, y float64, text string, st style) {
+	p.ink(st.colour)
+	b := append(p.line[:0], "BT "...)
 	if !p.fontSet || p.font != st.font || p.size != st.size {
 		p.font, p.size, p.fontSet = st.font, st.size, true
-		p.pdf.SetFont(fontName(st.font), "", st.size)
+		b = append(b, '/')
+		b = append(b, fontKey(st.font)...)
+		b = append(b, ' ')
+		b = strconv.AppendFloat(b, st.size, 'f', 2, 64)
+		b = append(b, " Tf "...)
 	}
-	p.ink(st.colour)
-	p.pdf.Text(x, y, text)
+	b = strconv.AppendFloat(b, x, 'f', 2, 64)
+	b = append(b, ' ')
+	b = strconv.AppendFloat(b, p.s.sheet.height-y, 'f', 2, 64)
+	b = append(b, " Td ("...)
+	f := p.s.fonts.get(st.font)
+	for _, r := range text {
+		n := f.numberOf(r)
+		b = appendEscaped(appendEscaped(b, byte(n>>8)), byte(n))
+	}
+	p.line = append(b, ") Tj ET"...)
+	p.pdf.RawWriteStr(string(p.line))
+}
+
+// appendEscaped appends a byte of a string.
+func appendEscaped(b []byte, c byte) []byte {
+	switch c {
+	case '(', ')', '\\':
+		return append(b, '\\', c)
+	case '\r':
+		return append(b, `\r`...)
+	}
+	return append(b, c)
 }
 
 // ink sets the colour of text and areas.

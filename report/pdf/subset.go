@@ -6,14 +6,12 @@ import (
 )
 
 // subset returns the face as a TrueType file that holds only the characters
-// in use. fpdf cuts fonts as well, but reads the whole of a face twice to do
-// so: several milliseconds each, and it writes into the array it was given.
-// What it is handed here is small, and its own.
+// in use, and the glyph of each of them in it.
 //
 // The layout is that of the OpenType specification, version 1.9: glyph 0 and
 // the components of compound glyphs come along, glyphs are numbered anew, and
 // every glyph has its own entry in hmtx.
-func (t *face) subset() []byte {
+func (t *face) subset() (file []byte, glyphs []int) {
 	runes := t.usedRunes()
 	old, renumbered := t.closure(runes)
 
@@ -29,16 +27,19 @@ func (t *face) subset() []byte {
 	}
 	loca = binary.BigEndian.AppendUint32(loca, uint32(len(glyf)))
 
+	for _, r := range runes {
+		glyphs = append(glyphs, renumbered[t.glyph(r)])
+	}
 	count := uint16(len(old))
 	return assemble(map[string][]byte{
-		"OS/2": t.tables["OS/2"], "name": t.tables["name"], "post": t.tables["post"][:32],
-		"cvt ": t.tables["cvt "], "fpgm": t.tables["fpgm"], "prep": t.tables["prep"], "gasp": t.tables["gasp"],
+		"post": t.tables["post"][:32],
+		"cvt ": t.tables["cvt "], "fpgm": t.tables["fpgm"], "prep": t.tables["prep"],
 		"cmap": characterMap(t, runes, renumbered),
 		"glyf": glyf, "loca": loca, "hmtx": hmtx,
 		"head": patch16(t.tables["head"], 50, 1),
 		"hhea": patch16(t.tables["hhea"], 34, count),
 		"maxp": patch16(t.tables["maxp"], 4, count),
-	})
+	}), glyphs
 }
 
 // closure lists the glyphs of the characters and of their components, in
@@ -165,8 +166,7 @@ func patch16(table []byte, at int, v uint16) []byte {
 	return table
 }
 
-// assemble joins tables into a file. Checksums are left zero: fpdf reads the
-// tables and computes those of the file it embeds.
+// assemble joins tables into a file.
 func assemble(tables map[string][]byte) []byte {
 	var tags []string
 	for tag, data := range tables {
@@ -177,16 +177,41 @@ func assemble(tables map[string][]byte) []byte {
 	slices.Sort(tags)
 	out := make([]byte, 12+16*len(tags))
 	binary.BigEndian.PutUint32(out, 0x00010000)
-	binary.BigEndian.PutUint16(out[4:], uint16(len(tags)))
+	n := len(tags)
+	search, selector := 1, 0
+	for search*2 <= n {
+		search, selector = search*2, selector+1
+	}
+	for i, v := range []int{n, 16 * search, selector, 16 * (n - search)} {
+		binary.BigEndian.PutUint16(out[4+2*i:], uint16(v))
+	}
+	head := 0
 	for i, tag := range tags {
-		entry := out[12+16*i:]
+		entry, at := out[12+16*i:], len(out)
 		copy(entry, tag)
-		binary.BigEndian.PutUint32(entry[8:], uint32(len(out)))
+		binary.BigEndian.PutUint32(entry[8:], uint32(at))
 		binary.BigEndian.PutUint32(entry[12:], uint32(len(tables[tag])))
+		if tag == "head" {
+			head = at
+		}
 		out = append(out, tables[tag]...)
+		if tag == "head" {
+			binary.BigEndian.PutUint32(out[at+8:], 0) // as it stands while sums are taken
+		}
 		for len(out)%4 != 0 {
 			out = append(out, 0)
 		}
+		binary.BigEndian.PutUint32(out[12+16*i+4:], tableSum(out[at:]))
 	}
+	binary.BigEndian.PutUint32(out[head+8:], 0xB1B0AFBA-tableSum(out))
 	return out
+}
+
+// tableSum is the checksum of a table, of a length that 4 divides.
+func tableSum(table []byte) uint32 {
+	sum := uint32(0)
+	for ; len(table) >= 4; table = table[4:] {
+		sum += binary.BigEndian.Uint32(table)
+	}
+	return sum
 }
