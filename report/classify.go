@@ -67,6 +67,9 @@ func Classify(p *profile.Profile, code *siteclass.Code, facts Facts) (siteclass.
 	return d, nil
 }
 
+// constantVelocity is the ID of the relation that continues the last velocity.
+const constantVelocity = "constant-velocity"
+
 // Average30 returns the average in m/s over 30 m below a datum, of the
 // profile extended as facts say where it is too short; nil if there is none.
 func Average30(p *profile.Profile, datum float64, facts Facts) *float64 {
@@ -74,7 +77,16 @@ func Average30(p *profile.Profile, datum float64, facts Facts) *float64 {
 		return nil
 	}
 	layers := p.Layers
-	if last := layers[len(layers)-1]; last.Bottom < datum+30-vs30.Touching && facts.Extend != "" {
+	last := &layers[len(layers)-1]
+	switch short := last.Bottom < datum+30-vs30.Touching; {
+	case short && datum == 0 && facts.Extend == constantVelocity: // the same sum, without the words
+		t, err := vs30.TravelTime(layers, 0, last.Bottom)
+		if err != nil {
+			return nil
+		}
+		v := 30 / (t + (30-last.Bottom)/last.VsAt(last.Bottom))
+		return &v
+	case short && facts.Extend != "":
 		var err error
 		if layers, _, err = Extended(p, facts.Extend, datum, 30); err != nil {
 			return nil

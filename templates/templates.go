@@ -11,6 +11,12 @@ import _ "embed"
 //go:embed standard.md
 var Standard string
 
+// Batch is the body of the summary of a batch. Its workings are those of
+// package report/batch, over the tables of the batch.
+//
+//go:embed batch.md
+var Batch string
+
 // StarterNotebook is the notebook of a new site folder.
 //
 //go:embed starter/notebook.md
@@ -20,3 +26,9 @@ var StarterNotebook string
 //
 //go:embed starter/line-1.csv
 var StarterProfile string
+
+// Review is the body of the memo of a review, below the front matter. Its
+// workings are those of report/review.
+//
+//go:embed review.md
+var Review string

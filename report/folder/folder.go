@@ -14,6 +14,7 @@ import (
 
 	"shearbook/profile"
 	"shearbook/report"
+	"shearbook/report/evidence"
 	"shearbook/report/pdf"
 )
 
@@ -33,9 +34,27 @@ const (
 	Images   = "images"
 )
 
+// The files of a review's memo, beside figures/ and images/.
+const (
+	MemoMarkdown = "memo.md"
+	MemoHTML     = "memo.html"
+	MemoPDF      = "memo.pdf"
+	MemoResults  = "memo.json"
+)
+
 // Files prints a document and its results in every format. The error is a
 // *pdf.MissingGlyphs where the fonts cannot print a character.
 func Files(d *report.Document, results []report.Result, opt pdf.Options) ([]File, error) {
+	return files(d, results, func(w io.Writer) error { return pdf.Write(w, d, opt) })
+}
+
+// WithEvidence does what Files does, for a report whose PDF carries the files
+// it was made from, results.json and a manifest of them.
+func WithEvidence(d *report.Document, results []report.Result, b evidence.Bundle, opt pdf.Options) ([]File, error) {
+	return files(d, results, func(w io.Writer) error { return writePDF(w, d, b, opt) })
+}
+
+func files(d *report.Document, results []report.Result, writePDF func(io.Writer) error) ([]File, error) {
 	var files []File
 	add := func(name string, write func(io.Writer) error) error {
 		var b bytes.Buffer
@@ -48,7 +67,7 @@ func Files(d *report.Document, results []report.Result, opt pdf.Options) ([]File
 	err := errors.Join(
 		add(Markdown, func(w io.Writer) error { return report.Markdown(w, d, report.MarkdownOptions{}) }),
 		add(HTML, func(w io.Writer) error { return report.HTML(w, d, report.HTMLOptions{}) }),
-		add(PDF, func(w io.Writer) error { return pdf.Write(w, d, opt) }),
+		add(PDF, writePDF),
 		add(Results, func(w io.Writer) error { return report.WriteResults(w, results) }),
 	)
 	for b := range d.All() {
@@ -113,7 +132,8 @@ func replaceable(dir string) error {
 	}
 	for _, e := range entries {
 		switch e.Name() {
-		case Markdown, HTML, PDF, Results, Figures, Images:
+		case Markdown, HTML, PDF, Results, Figures, Images,
+			MemoMarkdown, MemoHTML, MemoPDF, MemoResults:
 		default:
 			return fmt.Errorf("%s holds %s, which is not of a report, and would be replaced as a whole", dir, e.Name())
 		}

@@ -7,6 +7,7 @@ import (
 	"go.yaml.in/yaml/v4"
 
 	"shearbook/profile"
+	"shearbook/report/evidence"
 	"shearbook/vs30/siteclass"
 	"shearbook/vs30/siteclass/codefile"
 )
@@ -86,7 +87,7 @@ func (ev *evaluation) findCodes() {
 
 // readTable reads a jurisdiction's own table, nil where it is at fault.
 func (ev *evaluation) readTable(e CodeEntry) *siteclass.Code {
-	data, err := ev.opt.ReadFile(e.File)
+	data, err := ev.readFile(e.File, evidence.CodeTable)
 	if err != nil {
 		ev.add(e.place, "name a file in the notebook's folder", "code: %s cannot be read: %v", e.File, profile.FileError(err))
 		return nil

@@ -21,11 +21,15 @@ func evaluateData(ev *evaluation, c call) []report.Block {
 	m.rest()
 	var blocks []report.Block
 	for _, s := range sites {
-		if s.profile.Reading != nil {
+		if s.profile.Reading != nil && !ev.nb.Header.WithoutData {
 			blocks = append(blocks, readingBlocks(s)...)
 		}
 	}
-	return append(blocks, ev.provenance(), ev.digests(sites))
+	if ev.nb.Header.WithoutData {
+		blocks = append(blocks, para("The profile files are withheld: neither their text nor the files are part of this report. "+
+			"Their digests below tell whether a file is the one that was read."))
+	}
+	return append(blocks, ev.provenance(), ev.digestList())
 }
 
 // readingBlocks is a profile in the words of its file.
@@ -82,32 +86,6 @@ func alignOf(q profile.Quantity) report.Align {
 		return report.AlignLeft
 	}
 	return report.AlignDecimal
-}
-
-// digests lists the files that the report was made from.
-func (ev *evaluation) digests(sites []*site) *report.Table {
-	t := &report.Table{
-		Caption: words("Files"),
-		Columns: []report.TableColumn{column("File", report.AlignLeft), column("Bytes", report.AlignRight), wide("SHA-256")},
-		Compact: true,
-	}
-	add := func(name string, size int64, sum string) {
-		r := row(name, fmt.Sprint(size), "")
-		r.Cells[2] = []report.Inline{report.Code(sum)}
-		t.Rows = append(t.Rows, r)
-	}
-	add(ev.nb.File, int64(len(ev.nb.Source)), digest(ev.nb.Source))
-	for _, t := range ev.own {
-		add(t.file, int64(len(t.data)), digest(t.data))
-	}
-	seen := map[string]bool{}
-	for _, s := range sites {
-		if r := s.profile.Reading; r != nil && !seen[r.File] {
-			seen[r.File] = true
-			add(r.File, r.Size, r.SHA256)
-		}
-	}
-	return t
 }
 
 // provenance says what made the report.

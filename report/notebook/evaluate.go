@@ -1,8 +1,6 @@
 package notebook
 
 import (
-	"crypto/sha256"
-	"encoding/hex"
 	"errors"
 	"path"
 	"strconv"
@@ -11,6 +9,7 @@ import (
 	"shearbook/profile"
 	"shearbook/profile/open"
 	"shearbook/report"
+	"shearbook/report/evidence"
 	"shearbook/vs30/siteclass"
 )
 
@@ -22,6 +21,8 @@ type Options struct {
 
 	Version string // printed in the appendix: "shearbook 1.0.0"
 	Command string // printed in the appendix: the command that made the report
+
+	Own []OwnWorking // workings of the caller's, which go before those of the same name
 }
 
 // Report is an evaluated notebook.
@@ -29,6 +30,8 @@ type Report struct {
 	Document *report.Document
 	Results  []report.Result // one for each profile and code that a working decided, in the order of the notebook
 	Letter   bool            // print on Letter paper, not A4
+
+	Evidence evidence.Bundle // the notebook, every file that was read for it, and results.json
 }
 
 // maxFaults is how many faults of a notebook are told before the rest is
@@ -65,7 +68,12 @@ func Evaluate(nb *Notebook, opt Options) (*Report, error) {
 	if ev.doc.Title == "" {
 		ev.doc.Title = firstHeading(ev.doc.Blocks)
 	}
-	return &Report{Document: ev.doc, Results: ev.results, Letter: h.Letter}, nil
+	bundle, err := ev.bundle()
+	if err != nil {
+		return nil, err
+	}
+	ev.printDigests(bundle.Manifest)
+	return &Report{Document: ev.doc, Results: ev.results, Letter: h.Letter, Evidence: bundle}, nil
 }
 
 // evaluation is the state of evaluating one notebook.
@@ -82,6 +90,9 @@ type evaluation struct {
 	results []report.Result
 	named   map[string]Quantity // results that calc and average named
 
+	files       []evidence.File // read for the notebook, each once
+	digestLists []*report.Table // of the appendix, filled when all is known
+
 	figureNames map[string]bool
 	imageNames  map[string]bool
 	footnotes   map[string]int // number of a note, by its text
@@ -92,7 +103,8 @@ type evaluation struct {
 func (ev *evaluation) load() {
 	files := map[string][]profile.Profile{}
 	for _, e := range ev.nb.Header.Profiles {
-		key := strings.Join(append([]string{e.File, e.Units}, e.Map...), "\x00")
+		opt := e.Options()
+		key := e.File + "\x00" + opt.Key()
 		if _, ok := files[key]; !ok {
 			files[key] = ev.read(e)
 		}
@@ -104,12 +116,12 @@ func (ev *evaluation) load() {
 
 // read reads one profile file and adds its faults to the notebook's.
 func (ev *evaluation) read(e ProfileEntry) []profile.Profile {
-	data, err := ev.opt.ReadFile(e.File)
+	data, err := ev.readFile(e.File, evidence.Profile)
 	if err != nil {
 		ev.add(e.place, "name a file in the notebook's folder", "profile %q: %s cannot be read: %v", e.Key, e.File, profile.FileError(err))
 		return nil
 	}
-	profiles, err := open.Bytes(e.File, data, open.Options{Units: e.Units, Map: e.Map})
+	profiles, err := open.Bytes(e.File, data, e.Options())
 	var faults profile.Faults
 	switch {
 	case errors.As(err, &faults):
@@ -256,12 +268,6 @@ func unused(taken map[string]bool, file, base, ext string) string {
 	}
 	taken[name] = true
 	return name
-}
-
-// digest returns the SHA-256 of data in lower-case hexadecimal.
-func digest(data []byte) string {
-	sum := sha256.Sum256(data)
-	return hex.EncodeToString(sum[:])
 }
 
 // fileName makes a plain file name of a profile's name.

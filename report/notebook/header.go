@@ -8,6 +8,7 @@ import (
 	"go.yaml.in/yaml/v4"
 
 	"shearbook/profile"
+	"shearbook/profile/open"
 	"shearbook/report"
 	"shearbook/vs30/siteclass"
 )
@@ -33,6 +34,8 @@ type Header struct {
 	Units  System // units: SI or US
 	Letter bool   // paper: A4 or Letter
 
+	WithoutData bool // data: attached to report.pdf, or withheld from it
+
 	Codes    []CodeEntry      // code: one id, one file of a table, or a list; the first is the code of the report
 	Datum    profile.Optional // datum: m below ground level from which to average
 	Extend   string           // extend: "constant-velocity", or "" to refuse a profile that is too short
@@ -48,15 +51,28 @@ type ProfileEntry struct {
 	File    string   // file, beside the notebook
 	Profile string   // profile: its name inside the file; "" where the file holds one
 	Units   string   // units the file does not state, as `m, m/s`
-	Map     []string // map: columns of an AGS4 or LAS file, each as "Vs=DTS [us/ft]"
+	Map     []string // map: columns that are not recognised, each as "Vs=DTS [us/ft]"
+
+	// Read says how to read the file beside Units and Map: step and bounds, m;
+	// carry up, m; log datum, m above ground level; n60; all holes; correlate,
+	// unit weight, energy ratio.
+	Read open.Options
 
 	Survey   profile.Survey   // what the notebook states; the rest comes from the file
 	Position profile.Position // likewise
 	place    profile.Place
 }
 
-// parseHeader reads the front matter and adds what is wrong with it.
-func parseHeader(f *faultList, front string) Header {
+// Options returns how to read the file of the profile.
+func (e *ProfileEntry) Options() open.Options {
+	opt := e.Read
+	opt.Units, opt.Map = e.Units, e.Map
+	return opt
+}
+
+// parseHeader reads the front matter and adds what is wrong with it; own says
+// that it need not name a profile.
+func parseHeader(f *faultList, front string, own bool) Header {
 	m := parseMapping(f, "the front matter", front, 1)
 	if len(f.faults) > 0 {
 		return Header{}
@@ -72,11 +88,12 @@ func parseHeader(f *faultList, front string) Header {
 	}
 	h.site(&m)
 	h.Letter = m.word("paper", []string{"A4", "Letter"}) == "Letter"
+	h.WithoutData = m.word("data", []string{"attached", "withheld"}) == "withheld"
 	h.Units, _ = ParseSystem(m.word("units", []string{"SI", "US"}))
 	h.Ground = parseGround(m.inside("ground"))
 	h.profilePlace = m.at(m.get("profiles"))
 	h.Profiles = parseProfiles(m.inside("profiles"))
-	if len(h.Profiles) == 0 && len(f.faults) == 0 {
+	if len(h.Profiles) == 0 && len(f.faults) == 0 && !own {
 		f.add(h.profilePlace, "add a line `profiles: {L1: {file: line-1.csv}}`", "the front matter names no profile")
 	}
 	if h.Datum.Known && h.Datum.Value < 0 {
@@ -149,6 +166,7 @@ func parseProfiles(m mapping) []ProfileEntry {
 func (e *ProfileEntry) read(in *mapping) {
 	e.File, e.Profile, e.Units = in.text("file"), in.text("profile"), in.text("units")
 	e.Map = in.texts("map")
+	e.Read = in.readOptions()
 	e.Survey = profile.Survey{
 		Method: in.text("method"), Date: in.text("date"), Operator: in.text("operator"), Location: in.text("location"),
 		GroundLevel: in.value("ground level", profile.Length, "4.2 m"),
@@ -159,7 +177,69 @@ func (e *ProfileEntry) read(in *mapping) {
 		e.Survey.Basis, _ = profile.ParseBasis(word)
 	}
 	e.Position = in.position()
+	e.Read.Correlate = in.correlation(e.Survey.WaterTable)
 	in.rest()
+}
+
+// readOptions returns the keys that say how to read a file.
+func (m *mapping) readOptions() open.Options {
+	return open.Options{
+		Step:     m.depth("step", "0.5 m"),
+		Bounds:   m.depths("bounds", "5 m"),
+		CarryUp:  m.depth("carry up", "6 m"),
+		LogDatum: m.value("log datum", profile.Length, "0.6 m").Value,
+		N60:      m.truth("n60"),
+		AllHoles: m.truth("all holes"),
+	}
+}
+
+// depth returns the value of a key as a depth or thickness above zero, in m.
+func (m *mapping) depth(key, example string) float64 {
+	n := m.get(key)
+	if n == nil || n.Tag == "!!null" {
+		return 0
+	}
+	return m.depthOf(n, key, example)
+}
+
+func (m *mapping) depthOf(n *yaml.Node, key, example string) float64 {
+	z := m.valueOf(n, key, profile.Length, example)
+	if z.Known && z.Value <= 0 {
+		m.add(m.at(n), "write it as `"+key+": "+example+"`", "%s of %s is not above zero", key, m.what)
+	}
+	return z.Value
+}
+
+// depths returns the value of a key as a list of depths, in m.
+func (m *mapping) depths(key, example string) []float64 {
+	n := m.get(key)
+	if n == nil || n.Tag == "!!null" {
+		return nil
+	}
+	if n.Kind == yaml.ScalarNode {
+		return []float64{m.depthOf(n, key, example)}
+	}
+	var list []float64
+	for _, item := range n.Content {
+		if n.Kind != yaml.SequenceNode {
+			m.add(m.at(n), "write it as `"+key+": [5 m, 12 m]`", "%s of %s is not a list of depths", key, m.what)
+			return nil
+		}
+		list = append(list, m.depthOf(item, key, example))
+	}
+	return list
+}
+
+// truth reads yes or no; a key that is not there is no.
+func (m *mapping) truth(key string) bool {
+	switch strings.ToLower(m.text(key)) {
+	case "", "no", "false":
+		return false
+	case "yes", "true":
+		return true
+	}
+	m.add(m.at(m.get(key)), "write yes or no", "%s of %s is %q", key, m.what, m.text(key))
+	return false
 }
 
 // parseGround reads what the notebook states of the ground beside its

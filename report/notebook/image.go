@@ -12,6 +12,7 @@ import (
 
 	"shearbook/profile"
 	"shearbook/report"
+	"shearbook/report/evidence"
 )
 
 // Limits of an image in a notebook.
@@ -28,7 +29,7 @@ func (c *converter) image(n *ast.Image) []report.Block {
 		c.add(at, "save it beside the notebook and name the file", "image %q is not a file", name)
 		return nil
 	}
-	data, err := c.opt.ReadFile(name)
+	data, err := c.readFile(name, evidence.Image)
 	if err != nil {
 		c.add(at, "name a PNG or JPEG file in the notebook's folder", "image %q cannot be read: %v", name, profile.FileError(err))
 		return nil

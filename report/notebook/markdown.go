@@ -179,13 +179,17 @@ func (c *converter) fence(n *ast.FencedCodeBlock) []report.Block {
 	}
 	name, rest, _ := strings.Cut(info, " ")
 	body := c.lines(n)
+	own, isOwn := c.ownNamed(name)
 	working, ok := workings[name]
-	if !ok {
+	if !ok && !isOwn {
 		return one(&report.CodeBlock{Language: info, Text: body})
 	}
 	at := c.nb.at(n.Pos())
 	if rest != "" {
 		c.add(at, "write keys on lines of their own inside the fence", "working %s has %q beside its name", name, strings.TrimSpace(rest))
+	}
+	if isOwn {
+		return c.evaluateOwn(own, call{name: name, body: body, at: at})
 	}
 	return working.evaluate(c.evaluation, call{name: name, body: body, at: at})
 }

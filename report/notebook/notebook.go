@@ -32,6 +32,11 @@ type Notebook struct {
 
 // Parse reads a notebook. The error is a profile.Faults.
 func Parse(file string, source []byte) (*Notebook, error) {
+	return parse(file, source, false)
+}
+
+// parse reads a notebook; own says that it need not name a profile.
+func parse(file string, source []byte, own bool) (*Notebook, error) {
 	f := &faultList{file: file}
 	nb := &Notebook{File: file, Source: source}
 	switch {
@@ -51,7 +56,7 @@ func Parse(file string, source []byte) (*Notebook, error) {
 			"the notebook has no front matter")
 		return nil, f.faults
 	}
-	nb.Header = parseHeader(f, front)
+	nb.Header = parseHeader(f, front, own)
 	return nb, f.faults.Err()
 }
 

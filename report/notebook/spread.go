@@ -20,7 +20,7 @@ var spreadWorking = Working{
 		{"sigma", "standard deviation of ln Vs of every layer, as 0.15; those of the file if left out"},
 		{"average sigma", "standard deviation of ln of the average itself, as 0.10, instead of those of layers"},
 		{"boundaries", "standard error of the depth of each boundary, as 0.5 m; none if left out"},
-		{"correlation", "independent, full, or toro: how the errors of the layers go together; independent if left out"},
+		{"correlation", "independent, full, or toro: how the errors of the layers go together; if left out, independent, but full where the velocities are estimated by correlations"},
 		{"equivalents", "a list of profiles that fit one survey about equally well, drawn from in place of sigmas"},
 		{"layering", "random to draw the boundaries anew in every profile (Toro 1995); fixed if left out"},
 		{"realisations", "how many profiles are drawn; 100000 if left out"},
@@ -36,6 +36,7 @@ type spreadKeys struct {
 	sigma, average float64 // 0 where not given
 	boundaries     float64 // m
 	correlation    spread.Rule
+	ruled          bool // the notebook states the correlation
 	random         bool // layering
 	draw           spread.Options
 	figures        bool
@@ -53,7 +54,9 @@ func evaluateSpread(ev *evaluation, c call) []report.Block {
 		figures:    m.word("figure", []string{"yes", "no"}) != "no",
 		at:         c.at,
 	}
-	switch m.word("correlation", []string{"independent", "full", "toro"}) {
+	rule := m.word("correlation", []string{"independent", "full", "toro"})
+	k.ruled = rule != ""
+	switch rule {
 	case "full":
 		k.correlation = spread.Full
 	case "toro":
@@ -86,6 +89,9 @@ func (m *mapping) positive(key string, limit float64) float64 {
 
 // spreadBlocks is all of it for one profile.
 func (ev *evaluation) spreadBlocks(s *site, k spreadKeys) []report.Block {
+	if !k.ruled && s.estimatedBy() != "" {
+		k.correlation = spread.Full // the error of a correlation is common to all layers
+	}
 	depths := ev.depths(s, profile.Optional{})
 	if len(depths) == 0 {
 		return nil
@@ -214,6 +220,7 @@ func (ev *evaluation) bandRow(how string, sigma float64, b spread.Band, after st
 
 // layerSpread carries the sigmas of the layers into the average.
 func (ev *evaluation) layerSpread(s *site, layers []profile.Layer, thickness float64, notes []profile.Note, classes spread.Classes, k spreadKeys) ([]report.Block, []spread.Share) {
+	layers, carried := s.carrySigma(layers)
 	model := spread.Model{Layers: layers, From: s.datum, Thickness: thickness}
 	if k.sigma > 0 {
 		model.Sigmas = make([]float64, len(layers))
@@ -254,6 +261,9 @@ func (ev *evaluation) layerSpread(s *site, layers []profile.Layer, thickness flo
 	t.Rows = append(t.Rows, ev.bandRow(fmt.Sprintf("%s profiles drawn, seed %d", fixed(float64(len(sample.Velocities)), 0), sample.Seed), sample.SigmaLn, sample.Band,
 		" ± "+fixed(sample.MedianError/ev.system.velocity().Factor, 1)))
 	t.Notes = append(t.Notes, words(ev.sigmaSource(s, k)), words("The errors of the layers are taken as lognormal. Drawing: "+spread.ToroSource+" ("+spread.ToroStanding+"); ± is the error of drawing no more. The median drawn lies a little below the average, because slow errors cost more travel time than fast ones save."))
+	if carried && k.sigma == 0 {
+		t.Notes = append(t.Notes, words("The layer by which the profile is extended takes the sigma of the one above it."))
+	}
 	for _, n := range notes {
 		if n.ID == "extended" {
 			t.Notes = append(t.Notes, words("Where the profile is extended the scatter of the relation, as its source gives it, is added to the formula; drawing varies the measured layers."))
@@ -286,6 +296,9 @@ func (ev *evaluation) correlation(rule spread.Rule, layers []profile.Layer, from
 func (ev *evaluation) sigmaSource(s *site, k spreadKeys) string {
 	if k.sigma > 0 {
 		return "Sigma of ln Vs of every layer: " + shortest(k.sigma, 3) + ", as the notebook states."
+	}
+	if by := s.estimatedBy(); by != "" {
+		return "Sigmas of ln Vs: those of the correlations that the velocities are estimated by (" + by + "). The error of a correlation is common to all layers, so full correlation is what holds unless the notebook states another."
 	}
 	return "Sigmas of ln Vs: those that " + s.entry.File + " states for the layers."
 }

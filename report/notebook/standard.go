@@ -13,10 +13,10 @@ import (
 
 // Standard is what the standard template's front matter is filled with.
 type Standard struct {
+	Profile           string // of the file, the one to report; "" for every one
 	Codes             []string
 	CodeFiles         []string         // files of tables of their own, as ReadFile knows them
-	Units             string           // that the file does not state
-	Map               []string         // of its columns
+	Read              open.Options     // how to read the file
 	Datum, Foundation profile.Optional // m below ground level
 	Project           string
 	PreparedBy        string
@@ -27,12 +27,18 @@ type Standard struct {
 // faults and in the appendix.
 const StandardFile = "standard report template"
 
-// NewStandard returns the standard notebook of every profile of a file. The
-// error is a profile.Faults.
+// NewStandard returns the standard notebook of every profile of a file, or of
+// the one that is named. The error is a profile.Faults.
 func NewStandard(file string, data []byte, s Standard) (*Notebook, error) {
-	profiles, err := open.Bytes(file, data, open.Options{Units: s.Units, Map: s.Map})
+	profiles, err := open.Bytes(file, data, s.Read)
 	if err != nil {
 		return nil, err
+	}
+	if s.Profile != "" {
+		profiles = slices.DeleteFunc(profiles, func(p profile.Profile) bool { return p.Name != s.Profile })
+		if len(profiles) == 0 {
+			return nil, profile.Faults{profile.Faultf(profile.Place{File: file}, "check the name", "the file holds no profile %s", profile.Quote(s.Profile))}
+		}
 	}
 	if len(profiles) > MaxStandardProfiles {
 		return nil, profile.Faults{profile.Faultf(profile.Place{File: file},
@@ -75,16 +81,34 @@ func (s Standard) frontMatter(file string, profiles []profile.Profile) string {
 	b.WriteString("profiles:\n")
 	for _, p := range profiles {
 		b.WriteString("  " + quote(p.Name) + ": {file: " + quote(file) + ", profile: " + quote(p.Name))
-		if s.Units != "" {
-			b.WriteString(", units: " + quote(s.Units))
-		}
-		if len(s.Map) > 0 {
-			b.WriteString(", map: [" + quoteAll(s.Map) + "]")
-		}
+		b.WriteString(readKeys(&s.Read))
 		b.WriteString("}\n")
 	}
 	b.WriteString("---\n\n")
 	return b.String()
+}
+
+// readKeys are the keys of a profile that say how to read its file.
+func readKeys(o *open.Options) string {
+	var b strings.Builder
+	key := func(is bool, name, value string) {
+		if is {
+			b.WriteString(", " + name + ": " + value)
+		}
+	}
+	var bounds []string
+	for _, z := range o.Bounds {
+		bounds = append(bounds, metreText(z))
+	}
+	key(o.Units != "", "units", quote(o.Units))
+	key(len(o.Map) > 0, "map", "["+quoteAll(o.Map)+"]")
+	key(o.Step != 0, "step", metreText(o.Step))
+	key(len(bounds) > 0, "bounds", "["+strings.Join(bounds, ", ")+"]")
+	key(o.CarryUp != 0, "carry up", metreText(o.CarryUp))
+	key(o.LogDatum != 0, "log datum", metreText(o.LogDatum))
+	key(o.N60, "n60", "yes")
+	key(o.AllHoles, "all holes", "yes")
+	return b.String() + correlationKeys(&o.Correlate)
 }
 
 func metreText(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) + " m" }
