@@ -32,7 +32,7 @@ func Visible(s string) string {
 // hidden reports whether Visible shows r by its number.
 func hidden(r rune) bool {
 	switch {
-	case r == '\n' || r == '\t':
+	case ' ' <= r && r <= '~', r == '\n', r == '\t': // nearly every rune there is
 		return false
 	case unicode.IsControl(r), unicode.Is(unicode.Bidi_Control, r), r == '\u2028', r == '\u2029':
 		return true
