@@ -1,7 +1,7 @@
 package extend
 
 import (
-	"fmt"
+	"strconv"
 
 	"shearbook/profile"
 )
@@ -42,7 +42,7 @@ func lastVelocity(g *ground) result {
 	last := &g.layers[len(g.layers)-1]
 	v := last.VsAt(last.Bottom)
 	added := g.thickness - g.depth
-	return result{velocity: g.thickness / (g.depth/g.average + added/v), below: v, how: fmt.Sprintf(
-		"below it the deepest velocity, %.4g m/s, is taken to go on unchanged over %.4g m, %.0f %% of the averaging depth",
-		v, added, 100*added/g.thickness)}
+	return result{velocity: g.thickness / (g.depth/g.average + added/v), below: v, how: "below it the deepest velocity, " + four(v) +
+		" m/s, is taken to go on unchanged over " + four(added) + " m, " +
+		strconv.FormatFloat(100*added/g.thickness, 'f', 0, 64) + " % of the averaging depth"}
 }

@@ -106,9 +106,8 @@ func (r *Relation) doubts(g *ground) []profile.Note {
 			g.average, r.MinVelocity)})
 	}
 	if fall, falls := fallAtBottom(g.layers, g.from); falls {
-		notes = append(notes, profile.Note{ID: "falling-at-the-bottom", Text: fmt.Sprintf(
-			"the velocity falls at the bottom of the profile, from %.4g to %.4g m/s at %.4g m; the ground below may be slower still",
-			fall.Above, fall.Below, fall.Depth)})
+		notes = append(notes, profile.Note{ID: "falling-at-the-bottom", Text: "the velocity falls at the bottom of the profile, from " +
+			four(fall.Above) + " to " + four(fall.Below) + " m/s at " + four(fall.Depth) + " m; the ground below may be slower still"})
 	}
 	return notes
 }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 
 	"shearbook/profile"
 	"shearbook/vs30"
@@ -206,10 +207,18 @@ func (r *Relation) note(e *Estimate, how string) profile.Note {
 	if e.SigmaLn > 0 {
 		sigma = fmt.Sprintf("sigma of ln %.2g", e.SigmaLn)
 	}
-	return profile.Note{ID: "extended", Text: fmt.Sprintf(
-		"the profile ends %.4g m below ground level; %s (%s, %s; %s); "+
-			"it puts the ground below the profile at %.4g m/s, and is too high where that is slower",
-		e.Reached, how, r.Cite, r.Standing, sigma, e.Below)}
+	return profile.Note{ID: "extended", Text: "the profile ends " + four(e.Reached) + " m below ground level; " + how +
+		" (" + r.Cite + ", " + string(r.Standing) + "; " + sigma + "); it puts the ground below the profile at " +
+		four(e.Below) + " m/s, and is too high where that is slower"}
+}
+
+// four writes a number with four significant digits, as fmt does with %.4g.
+func four(x float64) string {
+	var room [32]byte
+	if b, ok := vs30.AppendFour(room[:0], x); ok {
+		return string(b)
+	}
+	return strconv.FormatFloat(x, 'g', 4, 64)
 }
 
 // Cut returns the layers down to depth m below ground level: those that start

@@ -86,6 +86,7 @@ func asce7_22() *Code {
 		},
 		Correlated: "20.3 then looks at the classes of v̄s, 1.3·v̄s and v̄s/1.3 (one source)",
 		decide:     decideASCE7_22,
+		bandsAlone: true,
 	}
 }
 
@@ -118,8 +119,8 @@ func (r *ruling) shallowData() {
 	if reach < enough && !equal(reach, enough) {
 		text = "the code takes its default classes where the data end above 50 ft, unless the geology justifies another; an extension is not its rule"
 	}
-	r.note("extension-rule", "the data reach %s below the datum; %s (20.3)", r.length(r.reach()), text)
-	r.use(FromMemory, "the rule for data that end above 100 ft (20.3)")
+	r.say("extension-rule", "the data reach "+r.length(r.reach())+" below the datum; "+text+" (20.3)")
+	r.rest(FromMemory, "the rule for data that end above 100 ft (20.3)")
 }
 
 // spread lists the classes of 1.3·v̄s, v̄s and v̄s/1.3 where the velocities are

@@ -120,6 +120,10 @@ type Code struct {
 	// own is not bands.
 	decide func(*Code, Site) (Decision, error)
 
+	// bandsAlone says of a decide that it is the ordinary rule where the layers
+	// are the profile's own and not correlated.
+	bandsAlone bool
+
 	ready *prepared // what prepare found; nil if it was not called
 }
 

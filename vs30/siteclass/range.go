@@ -119,11 +119,20 @@ func snap(v, bound float64) float64 {
 func number(v float64) string { return digits(v, 6) }
 
 // short writes a value for a note, with at most four significant digits.
-func short(v float64) string { return digits(v, 4) }
+func short(v float64) string {
+	var room [32]byte
+	return string(appendShort(room[:0], v))
+}
 
 // numberBeside writes v with as many digits as it takes, from four to twelve,
 // to look different from other.
 func numberBeside(v, other float64) string {
+	var room [32]byte
+	return string(appendBeside(room[:0], v, other))
+}
+
+// moreBeside is numberBeside where four digits do not tell the two apart.
+func moreBeside(v, other float64) string {
 	for n := 4; n < 12; n++ {
 		if s := digits(v, n); s != digits(other, n) {
 			return s

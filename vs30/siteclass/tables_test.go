@@ -267,7 +267,7 @@ type leaf struct {
 // that follow from others.
 var prose = map[string]bool{"Title": true, "Edition": true, "Region": true, "Table": true, "Source": true,
 	"Parameter": true, "DepthText": true, "DatumNote": true, "Notes": true, "Short": true, "Correlated": true,
-	"Default": true, "Several": true, "Adoption": true, "Superseded": true, "ready": true,
+	"Default": true, "Several": true, "Adoption": true, "Superseded": true, "ready": true, "bandsAlone": true,
 	"Name": true, "Also": true, "Text": true, "decide": true, "Own": true, "Dimension": true, "Factor": true}
 
 func leaves(v reflect.Value, path string) []leaf {

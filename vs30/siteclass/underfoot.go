@@ -1,9 +1,7 @@
 package siteclass
 
 import (
-	"fmt"
 	"math"
-	"strings"
 
 	"shearbook/profile"
 	"shearbook/vs30"
@@ -113,20 +111,10 @@ func (r *ruling) halfSpace() {
 
 // reversals notes where the velocity falls with depth inside the average.
 func (r *ruling) reversals() {
-	found := vs30.Reversals(r.layers, r.datum, r.bottom())
-	if len(found) == 0 {
-		return
+	text, first := AppendReversal(nil, r.layers, r.datum, r.bottom())
+	if first >= 0 {
+		r.d.Notes = append(r.d.Notes, profile.Note{ID: "reversal", Text: string(text), Place: r.place(&r.layers[first])})
 	}
-	const most = 3
-	var falls []string
-	for _, f := range found[:min(most, len(found))] {
-		falls = append(falls, fmt.Sprintf("from %s to %s m/s at %s", numberBeside(f.Above, f.Below), numberBeside(f.Below, f.Above), metres(f.Depth)))
-	}
-	text := "the velocity falls with depth: " + strings.Join(falls, ", ")
-	if more := len(found) - most; more > 0 {
-		text += fmt.Sprintf(", and %d more", more)
-	}
-	r.d.Notes = append(r.d.Notes, profile.Note{ID: "reversal", Text: text, Place: r.place(&r.layers[found[0].Layer])})
 }
 
 // reach returns how far below the datum, in m, the survey itself goes.
