@@ -18,10 +18,11 @@ import (
 
 // classifyFlags are the flags of classify.
 type classifyFlags struct {
-	codes, codeFiles                 []string
-	datum, foundation, extend, units string
-	format                           string
-	maps                             []string
+	codes, codeFiles          []string
+	datum, foundation, extend string
+	format, book              string
+	force                     bool
+	read                      readFlags
 }
 
 func newClassify(s streams) *cobra.Command {
@@ -37,7 +38,8 @@ start from.`,
 		Example: `  shearbook classify line-1.csv --code asce-7-16
   shearbook classify *.csv --code ec8-2004,ntc-2018 --datum 2.5m
   shearbook classify - --code nbcc-2015 --format json < line-1.csv
-  shearbook classify line-1.csv --code-file local.yaml`,
+  shearbook classify line-1.csv --code-file local.yaml
+  shearbook classify log.las --code ec8-2004 --map "Vs=DTS [us/ft]" --step 0.5m`,
 		Args: arguments(1, -1, "at least one profile file"),
 		RunE: func(_ *cobra.Command, args []string) error { return classify(s, f, args) },
 	}
@@ -46,9 +48,10 @@ start from.`,
 	fl.StringVar(&f.datum, "datum", "", "`depth` to average from: 2.5m")
 	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
 	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
-	fl.StringVar(&f.units, "units", "", "`units` the file does not state: \"m, m/s\"")
-	fl.StringArrayVar(&f.maps, "map", nil, "`name` in AGS4 or LAS: \"Vs=DTS [us/ft]\"")
+	f.read.define(fl)
 	fl.StringVar(&f.format, "format", "text", "`text or json`")
+	fl.StringVar(&f.book, "xlsx", "", "`file` to write the answers to as a workbook too")
+	fl.BoolVar(&f.force, "force", false, "replace that workbook if it is there")
 	codeFilesFlag(c, &f.codeFiles)
 	completeCodes(c)
 	completeWords(c, "extend", report.Extensions()...)
@@ -59,14 +62,23 @@ start from.`,
 // classify is the whole of `shearbook classify`. Nothing is printed where
 // any profile is at fault.
 func classify(s streams, f classifyFlags, names []string) error {
-	facts, codes, err := f.read()
+	facts, codes, err := f.check()
 	if err != nil {
 		return err
+	}
+	opt, err := f.read.options()
+	if err != nil {
+		return err
+	}
+	if f.book != "" && !f.force {
+		if err := mustBeNew(f.book); err != nil {
+			return err
+		}
 	}
 	var faults profile.Faults
 	var found []classified
 	for _, name := range names {
-		profiles, err := openProfiles(s.in, name, open.Options{Units: f.units, Map: f.maps})
+		profiles, err := openProfiles(s.in, name, opt)
 		if err != nil {
 			if faults, err = join(faults, err); err != nil {
 				return err
@@ -86,6 +98,11 @@ func classify(s streams, f classifyFlags, names []string) error {
 	}
 	if len(faults) > 0 {
 		return faults
+	}
+	if f.book != "" {
+		if err := writeWhole(f.book, f.force, func(w io.Writer) error { return writeClassBook(w, found) }); err != nil {
+			return err
+		}
 	}
 	if f.format == "json" {
 		var results []report.Result
@@ -130,8 +147,8 @@ type classified struct {
 	vs30     *float64
 }
 
-// read checks the flags.
-func (f classifyFlags) read() (facts report.Facts, codes []*siteclass.Code, err error) {
+// check checks the flags.
+func (f classifyFlags) check() (facts report.Facts, codes []*siteclass.Code, err error) {
 	if len(f.codes) == 0 && len(f.codeFiles) == 0 {
 		return facts, nil, misuse("add --code asce-7-16, or another of `shearbook codes`", "classify needs a code")
 	}

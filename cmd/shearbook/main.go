@@ -7,6 +7,7 @@
 //	                                the standard report of a profile
 //	shearbook classify PROFILE… --code asce-7-16,ec8-2004
 //	                                the classes, on the terminal
+//	shearbook convert IN OUT        a profile file in another format
 //	shearbook codes [ID]            the codes, or one code's table
 //
 // Exit status: 0 done; 1 the input is at fault; 2 the command was misused;

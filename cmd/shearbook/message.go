@@ -28,6 +28,10 @@ const (
 	look    = 3 // done, and something must be looked at
 )
 
+// errLook is the answer of a command that did what it was asked and found
+// something to be looked at. Nothing more is said of it.
+var errLook = errors.New("something must be looked at")
+
 // usageError is a misuse of the command.
 type usageError struct {
 	err  error
@@ -60,6 +64,8 @@ func tell(w io.Writer, err error) int {
 	var faults profile.Faults
 	var withHint hinted
 	switch {
+	case errors.Is(err, errLook):
+		return look
 	case errors.As(err, &usage):
 		say(w, usage.Error(), usage.hint)
 		return misused

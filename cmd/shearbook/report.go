@@ -23,9 +23,11 @@ import (
 // reportFlags are the flags of report.
 type reportFlags struct {
 	out, paper, print, extend string
+	withoutData               bool
 	standard                  notebook.Standard // what the standard template is filled with
 	codeFiles                 []string
 	datum, foundation         string
+	read                      readFlags
 }
 
 func newReport(s streams) *cobra.Command {
@@ -37,7 +39,7 @@ func newReport(s streams) *cobra.Command {
 report.pdf, results.json, and the figures as SVG. Without --out they go into
 a folder beside the notebook, named after it. Given a profile file and a code,
 or a file with a jurisdiction's own table, it does the same through the
-standard template.`,
+standard template. report.pdf carries the files it was made from.`,
 		Example: `  shearbook report ferry-road/notebook.md
   shearbook report line-1.csv --code asce-7-16
   shearbook report line-1.csv --code ec8-2004 --units "ft, ft/s" --out report`,
@@ -51,9 +53,9 @@ standard template.`,
 	fl.StringVar(&f.paper, "paper", "", "`A4 or Letter`")
 	fl.StringVar(&f.print, "print-units", "", "`SI or US`, to print in")
 	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
+	fl.BoolVar(&f.withoutData, "without-data", false, "leave the profile files out of report.pdf")
 	fl.StringSliceVar(&f.standard.Codes, "code", nil, "`ID`s of codes, for a profile file")
-	fl.StringVar(&f.standard.Units, "units", "", "`units` the file does not state: \"m, m/s\"")
-	fl.StringArrayVar(&f.standard.Map, "map", nil, "`name` in AGS4 or LAS: \"Vs=DTS [us/ft]\"")
+	f.read.define(fl)
 	fl.StringVar(&f.datum, "datum", "", "`depth` to average from: 2.5m")
 	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
 	fl.StringVar(&f.standard.Project, "project", "", "`name`, for a profile file")
@@ -68,7 +70,7 @@ standard template.`,
 }
 
 // forProfileOnly are the flags that a notebook says itself.
-var forProfileOnly = []string{"code", "map", "code-file", "units", "datum", "foundation-depth", "project", "prepared-by", "date"}
+var forProfileOnly = append([]string{"code", "map", "code-file", "units", "datum", "foundation-depth", "project", "prepared-by", "date"}, readFlagNames[2:]...)
 
 // writeReport is the whole of `shearbook report`.
 func writeReport(s streams, c *cobra.Command, f reportFlags, source string) error {
@@ -101,7 +103,7 @@ func writeReport(s streams, c *cobra.Command, f reportFlags, source string) erro
 	if made.Letter {
 		opt.Paper = pdf.Letter
 	}
-	files, err := folder.Files(made.Document, made.Results, opt)
+	files, err := folder.WithEvidence(made.Document, made.Results, made.Evidence, opt)
 	if err != nil {
 		return src.relocate(placeGlyphs(err, nb))
 	}
@@ -144,6 +146,9 @@ func (f reportFlags) override(h *notebook.Header) error {
 		}
 		h.Units = system
 	}
+	if f.withoutData {
+		h.WithoutData = true
+	}
 	if f.extend != "" {
 		if err := checkExtend(f.extend); err != nil {
 			return err
@@ -157,7 +162,7 @@ func (f reportFlags) override(h *notebook.Header) error {
 // files lie.
 func canonical(c *cobra.Command, base string) string {
 	text := "shearbook report " + base
-	for _, name := range append([]string{"extend", "paper", "print-units"}, forProfileOnly...) {
+	for _, name := range append([]string{"extend", "paper", "print-units", "without-data"}, forProfileOnly...) {
 		fl := c.Flags().Lookup(name)
 		if !fl.Changed {
 			continue
@@ -165,6 +170,12 @@ func canonical(c *cobra.Command, base string) string {
 		values := []string{fl.Value.String()}
 		if list, ok := fl.Value.(pflag.SliceValue); ok {
 			values = list.GetSlice()
+		}
+		if fl.Value.Type() == "bool" {
+			if fl.Value.String() == "true" {
+				text += " --" + name
+			}
+			continue
 		}
 		for _, value := range values {
 			if name == "code-file" {
@@ -282,6 +293,9 @@ func (src *source) notebook(c *cobra.Command, f reportFlags) (*notebook.Notebook
 		return nil, err
 	}
 	if f.standard.Foundation, err = depthFlag("foundation-depth", f.foundation); err != nil {
+		return nil, err
+	}
+	if f.standard.Read, err = f.read.options(); err != nil {
 		return nil, err
 	}
 	return notebook.NewStandard(src.base, src.data, f.standard)

@@ -47,7 +47,7 @@ locally adopted building code.`,
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return usageError{err, "`" + c.CommandPath() + " --help` lists the flags"}
 	})
-	root.AddCommand(newNew(s), newReport(s), newClassify(s), newCodes(s), newWorkings(s))
+	root.AddCommand(newNew(s), newReport(s), newClassify(s), newBatch(s), newConvert(s), newCodes(s), newCorrelations(s), newWorkings(s), newReview(s))
 	root.InitDefaultCompletionCmd()
 	return root
 }

@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"maps"
 	"slices"
-	"strings"
 	"unicode/utf8"
 
 	"golang.org/x/text/encoding/charmap"
@@ -73,8 +72,8 @@ func (h *Head) ready() {
 	r := &h.r
 	r.scan.text, r.scan.cells = nil, nil
 	for _, st := range r.preamble.statements {
-		if inside, _, ok := strings.Cut(strings.TrimPrefix(st.text, "["), "]"); ok && strings.HasPrefix(st.text, "[") {
-			h.scoped = append(h.scoped, inside)
+		if name, rest, _ := scoped(st.text, nil); rest != "" {
+			h.scoped = append(h.scoped, name)
 		}
 	}
 }
@@ -110,8 +109,8 @@ type HeadColumn struct {
 // Notes returns the notes on the columns, which all profiles share.
 func (h *Head) Notes() []profile.Note { return h.r.commonNotes() }
 
-// Scoped returns the names of profiles that lines "# [name] key: value" are
-// about.
+// Scoped returns the names of profiles that lines "# [name] key: value" with a
+// key that is read are about.
 func (h *Head) Scoped() []string { return h.scoped }
 
 // Base returns what the head states of every profile: survey, position and
