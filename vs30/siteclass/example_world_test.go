@@ -235,7 +235,7 @@ func ExampleCode_Decide_kds41_17() {
 	//   peat, total thickness: 0 m > 3 m: no (KDS 17 10 00, 4.2.1.2)
 	//   high-plasticity clay, total thickness: 0 m > 7 m: no (KDS 17 10 00, 4.2.1.2)
 	//   soft to medium clay, total thickness: 0 m > 36 m: no (KDS 17 10 00, 4.2.1.2)
-	//   depth of the bedrock, H: 10 m < 3 m: no (4.1.1(1)①)
+	//   depth of the bedrock, H: 10 m < 3 m: no (4.1.1(1) item 1)
 	//   depth of the bedrock, H: 10 m > 20 m: no (KDS 17 10 00, 4.2.1.2)
 	//   Vs,soil over 10 m: 225 m/s ≤ 120 m/s: no (KDS 17 10 00, 4.2.1.2)
 	//   depth of the bedrock, H: 10 m ≥ 1 m: yes (KDS 17 10 00, 4.2.1.2)

@@ -35,7 +35,7 @@ func kds41_17() *Code {
 
 		//  Deep ground first, as its S5 rests on better than memory.
 		Rules: []Rule{
-			{Class: "S1", Asks: []Ask{bedrock(below(3))}, Clause: "4.1.1(1)①", Standing: OneSource},
+			{Class: "S1", Asks: []Ask{bedrock(below(3))}, Clause: "4.1.1(1) item 1", Standing: OneSource},
 			{Class: "S4", Asks: []Ask{bedrock(above(20)), vsSoil(atLeast(180))}, Standing: OneSource},
 			{Class: "S5", Asks: []Ask{bedrock(above(20)), vsSoil(below(180))}, Standing: OneSource},
 			{Class: "S5", Asks: []Ask{vsSoil(atMost(120))}, Standing: FromMemory},
@@ -45,7 +45,7 @@ func kds41_17() *Code {
 
 		Terms: []Term{
 			{ID: "bedrock", Text: "bedrock of Vs ≥ 760 m/s", Range: atLeast(760), Unit: profile.MetrePerSecond, Clause: "1.2", Standing: Checked},
-			{ID: "deep-bedrock", Text: "where bedrock is deeper than 30 m the mean of the top 30 m may serve as Vs,soil", Range: atMost(30), Unit: profile.Metre, Clause: "4.1.1(1)②", Standing: OneSource},
+			{ID: "deep-bedrock", Text: "where bedrock is deeper than 30 m the mean of the top 30 m may serve as Vs,soil", Range: atMost(30), Unit: profile.Metre, Clause: "4.1.1(1) item 2", Standing: OneSource},
 			{ID: "table-s1", Text: "S1 by the table of KDS 17 10 00 alone, H < 1 m", Range: below(1), Unit: profile.Metre, Clause: "KDS 17 10 00, 4.2.1.2", Standing: FromMemory},
 			{ID: "stiff-deep", Text: "H > 20 m with Vs,soil ≥ 360 m/s, for which Fv is multiplied by 0.80", Range: atLeast(360), Unit: profile.MetrePerSecond, Clause: "4.2.2(2)", Standing: OneSource},
 		},
@@ -70,7 +70,7 @@ func kds41_17() *Code {
 				Limits: []Criterion{{Property: Thickness, Range: above(36), Unit: profile.Metre}}},
 		},
 
-		Default:      "where the data are not enough and S5 cannot be, S4 may be used (4.1.1(1)③)",
+		Default:      "where the data are not enough and S5 cannot be, S4 may be used (4.1.1(1) item 3)",
 		DefaultClass: "S4",
 		Several:      "one representative factor is taken, the mean of the places or the worst; on a steep slope the worst (4.2.3)",
 
@@ -122,7 +122,7 @@ func (r *ruling) kdsNotes(found []Found) {
 		if c.ruled([]Found{{Of: "H", Value: 20}, found[1]}) == "S2" {
 			other = "S2"
 		}
-		r.note("table-alone", "bedrock at %s, less than 3 m, may be treated as S1 (4.1.1(1)①); by the table of KDS 17 10 00 alone, whose S1 ends at 1 m (from memory), the class would be %s",
+		r.note("table-alone", "bedrock at %s, less than 3 m, may be treated as S1 (4.1.1(1) item 1); by the table of KDS 17 10 00 alone, whose S1 ends at 1 m (from memory), the class would be %s",
 			r.length(h.Value), other)
 	}
 	if stiff := c.term("stiff-deep"); r.d.Class == "S4" && stiff.Range.Contains(r.velocity) {
