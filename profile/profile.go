@@ -126,6 +126,31 @@ type Survey struct {
 	WaterTable   Optional // m below ground level
 }
 
+// Override puts what another survey states over what s states, and leaves the
+// rest.
+func (s *Survey) Override(by Survey) {
+	for _, t := range []struct {
+		to   *string
+		from string
+	}{{&s.Method, by.Method}, {&s.Date, by.Date}, {&s.Operator, by.Operator}, {&s.Location, by.Location}} {
+		if t.from != "" {
+			*t.to = t.from
+		}
+	}
+	if by.Basis != BasisNotStated {
+		s.Basis = by.Basis
+	}
+	if by.DepthReached > 0 {
+		s.DepthReached = by.DepthReached
+	}
+	if by.GroundLevel.Known {
+		s.GroundLevel = by.GroundLevel
+	}
+	if by.WaterTable.Known {
+		s.WaterTable = by.WaterTable
+	}
+}
+
 // Optional is a number that may not be known.
 type Optional struct {
 	Value float64

@@ -158,7 +158,7 @@ func (ev *evaluation) pick(e ProfileEntry, of []profile.Profile) *profile.Profil
 	}
 	p := *found
 	p.Name = e.Key
-	overlay(&p.Survey, e.Survey)
+	p.Survey.Override(e.Survey)
 	if e.Position.Latitude.Known {
 		p.Position = e.Position
 	}
@@ -175,30 +175,6 @@ func newDoubts(p, asRead *profile.Profile) []profile.Note {
 		}
 	}
 	return fresh
-}
-
-// overlay puts what the notebook states over what the file states.
-func overlay(s *profile.Survey, over profile.Survey) {
-	for _, f := range []struct {
-		to   *string
-		from string
-	}{{&s.Method, over.Method}, {&s.Date, over.Date}, {&s.Operator, over.Operator}, {&s.Location, over.Location}} {
-		if f.from != "" {
-			*f.to = f.from
-		}
-	}
-	if over.Basis != profile.BasisNotStated {
-		s.Basis = over.Basis
-	}
-	if over.DepthReached > 0 {
-		s.DepthReached = over.DepthReached
-	}
-	if over.GroundLevel.Known {
-		s.GroundLevel = over.GroundLevel
-	}
-	if over.WaterTable.Known {
-		s.WaterTable = over.WaterTable
-	}
 }
 
 // refs returns footnote references for notes; a note that was mentioned

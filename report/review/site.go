@@ -176,32 +176,8 @@ func (f *intake) entry(name string, e *notebook.ProfileEntry) {
 	as := of[i]
 	p := as
 	p.Name = e.Key
-	overlay(&p.Survey, e.Survey)
+	p.Survey.Override(e.Survey)
 	f.sub.Profiles = append(f.sub.Profiles, Entry{Profile: &p, AsRead: &as})
-}
-
-// overlay puts what the notebook states over what the file states.
-func overlay(s *profile.Survey, over profile.Survey) {
-	for _, t := range []struct {
-		to   *string
-		from string
-	}{{&s.Method, over.Method}, {&s.Date, over.Date}, {&s.Operator, over.Operator}, {&s.Location, over.Location}} {
-		if t.from != "" {
-			*t.to = t.from
-		}
-	}
-	if over.Basis != profile.BasisNotStated {
-		s.Basis = over.Basis
-	}
-	if over.DepthReached > 0 {
-		s.DepthReached = over.DepthReached
-	}
-	if over.GroundLevel.Known {
-		s.GroundLevel = over.GroundLevel
-	}
-	if over.WaterTable.Known {
-		s.WaterTable = over.WaterTable
-	}
 }
 
 // results takes a results.json: each result is a claim.
