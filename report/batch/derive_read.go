@@ -49,20 +49,31 @@ var SourceColumns = []Column{
 // takes the memory of one row. The row holds until the next one is asked for.
 // An error, which names the line, is the last thing that is given.
 func Rows(file string, in io.Reader) iter.Seq2[*Row, error] {
-	return func(yield func(*Row, error) bool) {
+	return records(file, in, Columns, (*parser).row)
+}
+
+// FaultRows are the rows of a faults.csv, as Rows are those of a summary.csv.
+func FaultRows(file string, in io.Reader) iter.Seq2[*Fault, error] {
+	return records(file, in, FaultColumns, (*parser).faultRow)
+}
+
+// records are the records of a table with its header, each put into the same T
+// by read.
+func records[T any](file string, in io.Reader, columns []Column, read func(*parser, *T)) iter.Seq2[*T, error] {
+	return func(yield func(*T, error) bool) {
 		t := newTable(file, in)
-		if err := t.header(Columns); err != nil {
+		if err := t.header(columns); err != nil {
 			yield(nil, err)
 			return
 		}
-		t.rows(yield)
+		each(t, read, yield)
 	}
 }
 
-// rows gives the rows behind the header.
-func (t *table) rows(yield func(*Row, error) bool) {
-	var r Row
-	p := parser{table: t, before: make([]string, len(Columns))}
+// each gives the records behind the header.
+func each[T any](t *table, read func(*parser, *T), yield func(*T, error) bool) {
+	var r T
+	p := parser{table: t, before: make([]string, max(len(Columns), len(FaultColumns)))}
 	for {
 		record, err := t.read()
 		if err == io.EOF {
@@ -70,7 +81,7 @@ func (t *table) rows(yield func(*Row, error) bool) {
 		}
 		if err == nil {
 			p.cells, p.err = record, nil
-			p.row(&r)
+			read(&p, &r)
 			err = p.err
 		}
 		if err != nil {
@@ -78,43 +89,6 @@ func (t *table) rows(yield func(*Row, error) bool) {
 			return
 		}
 		if !yield(&r, nil) {
-			return
-		}
-	}
-}
-
-// FaultRows are the rows of a faults.csv, as Rows are those of a summary.csv.
-func FaultRows(file string, in io.Reader) iter.Seq2[*Fault, error] {
-	return func(yield func(*Fault, error) bool) {
-		t := newTable(file, in)
-		if err := t.header(FaultColumns); err != nil {
-			yield(nil, err)
-			return
-		}
-		t.faults(yield)
-	}
-}
-
-// faults gives the faults behind the header.
-func (t *table) faults(yield func(*Fault, error) bool) {
-	var f Fault
-	p := parser{table: t, before: make([]string, len(FaultColumns))}
-	for {
-		record, err := t.read()
-		if err == io.EOF {
-			return
-		}
-		if err == nil {
-			p.cells, p.err = record, nil
-			f = Fault{Severity: p.text(0), Place: profile.Place{File: p.text(1), Line: p.whole(2), Column: p.whole(3), Cell: p.text(4)},
-				Profile: p.text(5), Code: p.text(6), ID: p.text(7), Text: p.text(8), Hint: p.text(9)}
-			err = p.err
-		}
-		if err != nil {
-			yield(nil, err)
-			return
-		}
-		if !yield(&f, nil) {
 			return
 		}
 	}
@@ -143,6 +117,11 @@ func (p *parser) row(r *Row) {
 		},
 		Problem: p.text(atProblem), Report: p.text(atReport),
 	}
+}
+
+func (p *parser) faultRow(f *Fault) {
+	*f = Fault{Severity: p.text(0), Place: profile.Place{File: p.text(1), Line: p.whole(2), Column: p.whole(3), Cell: p.text(4)},
+		Profile: p.text(5), Code: p.text(6), ID: p.text(7), Text: p.text(8), Hint: p.text(9)}
 }
 
 func (p *parser) text(i int) string {

@@ -101,7 +101,7 @@ func (o *overview) eachRow(dir string, f func(*Row)) error {
 		return err
 	}
 	defer in.Close()
-	t.rows(func(r *Row, wrong error) bool {
+	each(t, (*parser).row, func(r *Row, wrong error) bool {
 		if err = wrong; err == nil {
 			f(r)
 		}
@@ -219,7 +219,7 @@ func (o *overview) readFaults(dir string) error {
 		return err
 	}
 	defer in.Close()
-	t.faults(func(f *Fault, wrong error) bool {
+	each(t, (*parser).faultRow, func(f *Fault, wrong error) bool {
 		if err = wrong; err != nil {
 			return false
 		}
