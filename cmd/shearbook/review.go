@@ -32,12 +32,12 @@ func newReview(s streams) *cobra.Command {
 	c := &cobra.Command{
 		Use:   "review SUBMISSION",
 		Short: "Recompute what a submission claims, and say what does not follow",
-		Long: `review takes a site folder, a report.pdf, a table of claims (CSV with file, code,
-class and average) or a profile file with --claimed-… flags. It never evaluates
-the applicant's notebook: it takes the data, applies the code of --code, and
-says whether the claims follow. With --out it writes a memo. --list prints every
-rule, its weight, source and limits; --rules takes a department's own. Exit
-status: 0 where everything agrees, 3 where not.`,
+		Long: `review takes a site folder, a report.pdf, a table of claims (CSV with file,
+code, class and average) or a profile file with --claimed-… flags. It never
+evaluates the applicant's notebook: it takes the data, applies the code of
+--code, and says whether the claims follow. With --out it writes a memo. --list
+prints every rule, its weight, source and limits; --rules takes a department's
+own. Exit status: 0 where everything agrees, 3 where not.`,
 		Example: `  shearbook review ferry-road --code asce-7-16 --out memo
   shearbook review claims.csv --code ec8-2004
   shearbook review line-1.csv --claimed-class D --claimed-average 287m/s \
@@ -149,7 +149,7 @@ func (f reviewFlags) options() (opt review.Options, err error) {
 		return opt, err
 	}
 	c := &opt.Claim
-	c.Profile, c.Class, c.Code = f.profile, f.claimedClass, f.claimedCode
+	c.Profile, c.Class, c.Code = f.profile, f.claimedClass, review.CodeID(f.claimedCode)
 	if c.Average, err = claimFlag("claimed-average", f.claimedAverage, profile.Velocity, "287m/s"); err != nil {
 		return opt, err
 	}

@@ -32,6 +32,7 @@ type Mismatch struct {
 	Claimed string // the digest that the manifest lists
 	Found   string // the digest of what is there, or that the pages print
 	Text    string // what is wrong, lower case, without a full stop; names in it are made visible
+	Resaved bool   // of altered pages: the file has the marks of having been saved again, or added to, as a whole
 }
 
 // Check holds the attachments, the pages and the digests that they print
@@ -51,7 +52,7 @@ func (e *Evidence) Check() []Mismatch {
 	}
 	c.printed()
 	if !e.samePages {
-		c.found = append(c.found, Mismatch{Kind: PagesAltered, Claimed: e.Manifest.Pages.SHA256,
+		c.found = append(c.found, Mismatch{Kind: PagesAltered, Claimed: e.Manifest.Pages.SHA256, Resaved: e.resaved,
 			Text: "the pages are not byte for byte those that were written with the manifest: they were changed, or another program has saved the file again"})
 	}
 	slices.SortStableFunc(c.found, func(a, b Mismatch) int { return int(a.Kind) - int(b.Kind) })

@@ -129,6 +129,7 @@ type Evidence struct {
 
 	unlisted  int  // of Files, at the end
 	samePages bool // byte for byte those the manifest was made for
+	resaved   bool // the file was saved again, or something was added behind it
 }
 
 // File returns an attachment, and false if there is none of that name.

@@ -68,7 +68,40 @@ func Read(pdf []byte) (*Evidence, error) {
 		return nil, explain(err)
 	}
 	e.samePages = e.Manifest.Pages.holds(f)
+	e.resaved = !e.samePages && e.Manifest.Pages.rewritten(pdf)
 	return e, nil
+}
+
+// ReadPages takes the text of the pages alone out of a PDF that need not be a
+// report of ours. The error is that of Read.
+func ReadPages(pdf []byte) ([]Page, error) {
+	if len(pdf) > MaxSize || !bytes.HasPrefix(pdf, []byte("%PDF-")) {
+		return nil, refuse(askAgain, "it is not a PDF of at most %d MiB", MaxSize>>20)
+	}
+	f, err := open(pdf)
+	if err != nil {
+		return nil, explain(err)
+	}
+	if f.trailer["Encrypt"] != nil {
+		return nil, refuse("save it without a password, or "+askAgain, "the PDF is encrypted")
+	}
+	pages, err := f.pages()
+	if err != nil {
+		return nil, explain(err)
+	}
+	return pages, nil
+}
+
+// rewritten reports whether a file looks like the pages saved again by
+// another program, or added to behind their end, and not like the same file
+// with some of its bytes changed in their place: then the pages still end
+// where they ended, and are others.
+func (p Pages) rewritten(pdf []byte) bool {
+	if p.Size <= 0 || p.Size > int64(len(pdf)) {
+		return true
+	}
+	first := pdf[:p.Size]
+	return Digest(first) == p.SHA256 || !bytes.HasSuffix(bytes.TrimRight(first, "\r\n"), []byte("%%EOF"))
 }
 
 // explain makes an Error of what went wrong inside.

@@ -129,10 +129,12 @@ func (f *intake) claims(base string, data []byte) {
 	columns := f.columns(base, header)
 	r := csv.NewReader(bytes.NewReader(data))
 	r.Comma, r.Comment, r.FieldsPerRecord, r.ReuseRecord = comma, '#', -1, true
-	if _, err := r.Read(); err != nil {
+	first, err := r.Read()
+	if err != nil {
 		f.fault(at, "the table of claims cannot be read: %v", err)
 		return
 	}
+	wide := len(first)
 	for {
 		cells, err := r.Read()
 		switch {
@@ -146,7 +148,7 @@ func (f *intake) claims(base string, data []byte) {
 			f.fault(profile.Place{File: base, Line: line}, "the table holds more than %d claims; review it in parts", MaxClaims)
 			return
 		}
-		f.row(base, r, columns, cells)
+		f.row(base, r, wide, columns, cells)
 	}
 }
 
@@ -178,8 +180,8 @@ func (f *intake) columns(base string, header []string) []column {
 	return columns
 }
 
-// row makes a claim of one row.
-func (f *intake) row(base string, r *csv.Reader, columns []column, cells []string) {
+// row makes a claim of one row, below a header of wide cells.
+func (f *intake) row(base string, r *csv.Reader, wide int, columns []column, cells []string) {
 	c := Claim{Entry: -1}
 	file, units := "", ""
 	c.Place.File = base
@@ -210,9 +212,27 @@ func (f *intake) row(base string, r *csv.Reader, columns []column, cells []strin
 			}
 		}
 	}
-	if good {
-		f.claimOn(c, file, units)
+	for i := wide; i < len(cells); i++ {
+		if strings.TrimSpace(cells[i]) != "" {
+			at := profile.Place{File: base}
+			at.Line, at.Column = r.FieldPos(i)
+			f.add(profile.Faultf(at, `put a cell with a separator in it between quotes: "1,200 ft/s"`, "the row has more cells than the header"))
+			good = false
+			break
+		}
 	}
+	if !good {
+		f.unread(c, "the row cannot be read")
+		return
+	}
+	f.claimOn(c, file, units)
+}
+
+// unread keeps a claim that cannot be read, so that it is listed. Why it
+// cannot is a fault of its own.
+func (f *intake) unread(c Claim, problem string) {
+	c.Entry, c.problem = -1, problem
+	f.sub.Claims = append(f.sub.Claims, c)
 }
 
 // hints say how a cell is written.
@@ -232,7 +252,7 @@ func (c *Claim) set(col column, cell string) error {
 	case "profile":
 		c.Profile = cell
 	case "code":
-		c.Code = cell
+		c.Code = CodeID(cell)
 	case "class":
 		c.Class = cell
 	case "average":
@@ -294,6 +314,7 @@ func (f *intake) claimOn(c Claim, file, units string) {
 	at := c.Place.Place
 	if file == "" {
 		f.add(profile.Faultf(at, "add a column `file` with the profile's file, beside the table", "the row names no file"))
+		f.unread(c, "the row names no file")
 		return
 	}
 	name := clean(file)
@@ -307,10 +328,12 @@ func (f *intake) claimOn(c Claim, file, units string) {
 		i = f.indexOf(of, c.Profile)
 	case len(of) > 1:
 		f.add(profile.Faultf(at, "add a column `profile` with its name", "%s holds %d profiles and the row does not say which it is about", profile.Quote(name), len(of)))
+		f.unread(c, "the row does not say which profile it is about")
 		return
 	}
 	if i < 0 {
 		f.add(profile.Faultf(at, "check the name", "%s holds no profile %s", profile.Quote(name), profile.Quote(c.Profile)))
+		f.unread(c, errNoProfile.Error())
 		return
 	}
 	c.Profile = of[i].Name

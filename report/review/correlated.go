@@ -18,6 +18,8 @@ var relations = []relation{
 	{"Imai & Tonouchi (1982), 97.0 N^0.314", 97.0, 0.314},
 	{"Imai (1977), 91 N^0.337", 91, 0.337},
 	{"Ohta & Goto (1978), 85.35 N^0.348", 85.35, 0.348},
+	{"Specifications for Highway Bridges Part V (Japan), clay, 100 N^(1/3)", 100, 1. / 3},
+	{"Specifications for Highway Bridges Part V (Japan), sand, 80 N^(1/3)", 80, 1. / 3},
 	{"Seed, Idriss & Arango (1983), 56.4 N^0.5 (from memory)", 56.4, 0.5},
 	{"Seed & Idriss (1981), 61.4 N^0.5 (from memory)", 61.4, 0.5},
 	{"Sykora & Stokoe (1983), 100.5 N^0.29 (from memory)", 100.5, 0.29},

@@ -2,8 +2,10 @@ package review
 
 import (
 	"fmt"
+	"strings"
 
 	"shearbook/profile"
+	"shearbook/report"
 )
 
 // depthRules are about how deep a survey can see, and how finely.
@@ -18,18 +20,18 @@ func depthRules() []Rule {
 		{ID: "wavelength", Weight: Explain, check: wavelength, Practice: true,
 			Summary: "A surface-wave profile is used deeper than its longest wavelength over a divisor",
 			Source:  "Park, Miller & Xia (1999), from memory; Foti et al. (2018), Bull Earthq Eng 16:2367–2420",
-			Limits:  []Limit{{"divisor", 2, "", "of the longest wavelength; 3 is the cautious one"}}},
+			Limits:  []Limit{{"divisor", 2, "", "of the longest wavelength; 3 is the cautious one", 0}}},
 		{ID: "receiver-depth", Weight: Explain, check: receiverDepth,
 			Summary: "A survey in a hole is used below its deepest receiver",
 			Source:  "ASTM D7400, D4428: velocities are timed between or above receivers"},
 		{ID: "thin-layer", Weight: Explain, check: thinLayers, Practice: true,
 			Summary: "A surface-wave profile has a top layer thinner than its shortest wavelength over a divisor (twice the spacing of receivers, where no wavelength is stated)",
 			Source:  "Foti et al. (2018), Bull Earthq Eng 16:2367–2420; the divisor is common practice",
-			Limits:  []Limit{{"divisor", 3, "", "of the shortest wavelength"}}},
+			Limits:  []Limit{{"divisor", 3, "", "of the shortest wavelength", 0}}},
 		{ID: "fine-at-depth", Weight: Note, check: fineAtDepth, Practice: true,
 			Summary: "A surface-wave profile has a layer that is thin against its depth, which the method cannot tell from its neighbours",
 			Source:  "Foti et al. (2018), Bull Earthq Eng 16:2367–2420, on resolution falling with depth; the share is common practice",
-			Limits:  []Limit{{"share", 10, "%", "of the depth of its middle, the least that is not told"}}},
+			Limits:  []Limit{{"share", 10, "%", "of the depth of its middle, the least that is not told", 0}}},
 		{ID: "interface-at-depth", Weight: Note, check: interfaceAtDepth, Practice: true,
 			Summary: "A boundary lies at exactly the averaging depth: the average just misses what lies below",
 			Source:  "common practice: nature does not know the depth of a code"},
@@ -39,7 +41,7 @@ func depthRules() []Rule {
 // belowReached tells averages that use what was not reached.
 func belowReached(x *examination) {
 	x.eachProfile(func(e *Entry, from, to float64) {
-		reached := e.Profile.Survey.DepthReached
+		reached := e.reached()
 		if used := min(to, e.Profile.DepthModelled()); reached > 0 && used > reached+profile.Joint && to > reached+profile.Joint {
 			x.add(e.layer(layerAt(e.Profile, reached)), fmt.Sprintf("the average uses velocities down to %s, and the survey reached %s", metres(to), metres(reached)),
 				"reached "+metres(reached), "used to "+metres(to))
@@ -66,9 +68,37 @@ func extensionSaid(x *examination) {
 		for _, n := range c.Decision.Notes {
 			if n.ID == "extended" {
 				x.add(c.place(), n.Text, c.Claim.Stated.Extend, "")
+				x.otherRelations(c)
 			}
 		}
 	})
+}
+
+// otherRelations tells a class that hangs on the relation by which a profile
+// was carried on.
+func (x *examination) otherRelations(c *Case) {
+	hold, give := 0, map[string]int{}
+	var classes []string
+	facts := c.Claim.Stated.facts()
+	for _, facts.Extend = range report.Extensions() {
+		d, err := report.Classify(c.Entry.Profile, c.Code, facts)
+		if err != nil {
+			continue // the relation does not hold here
+		}
+		hold++
+		if give[d.Class]++; give[d.Class] == 1 {
+			classes = append(classes, d.Class)
+		}
+	}
+	if len(classes) < 2 {
+		return
+	}
+	var parts []string
+	for _, class := range classes {
+		parts = append(parts, fmt.Sprintf("class %s under %d", class, give[class]))
+	}
+	x.add(c.place(), fmt.Sprintf("the class hangs on the relation by which the profile is carried on: of the %d that hold here, %s", hold, strings.Join(parts, ", ")),
+		c.Claim.Stated.Extend, "class "+c.Decision.Class)
 }
 
 // wavelength tells surface-wave profiles that are used too deep.
@@ -76,7 +106,7 @@ func wavelength(x *examination) {
 	x.eachProfile(func(e *Entry, from, to float64) {
 		longest, ok := length(e.Profile, longestWavelength...)
 		reach := longest / x.limit("divisor")
-		if ok && methodOf(e.Profile) != refraction && to > reach*(1+noise) {
+		if ok && e.method() != refraction && to > reach*(1+noise) {
 			x.add(e.layer(layerAt(e.Profile, reach)), fmt.Sprintf("a longest wavelength of %s lets a profile be known to about %s (a half; a third is %s), and the average uses it to %s",
 				metres(longest), metres(reach), metres(longest/3), metres(to)), "used to "+metres(to), metres(reach))
 		}
@@ -97,7 +127,7 @@ func receiverDepth(x *examination) {
 // thinLayers tells top layers that a surface-wave survey cannot resolve.
 func thinLayers(x *examination) {
 	x.each(func(e *Entry) {
-		if methodOf(e.Profile) != surfaceWaves || e.Profile.NoVelocity {
+		if e.method() != surfaceWaves || e.Profile.NoVelocity {
 			return
 		}
 		shortest, ok := length(e.Profile, shortestWavelength...)
@@ -119,7 +149,7 @@ func thinLayers(x *examination) {
 // fineAtDepth tells thin layers of surface-wave profiles.
 func fineAtDepth(x *examination) {
 	x.eachProfile(func(e *Entry, from, to float64) {
-		if methodOf(e.Profile) != surfaceWaves {
+		if e.method() != surfaceWaves {
 			return
 		}
 		for i := range e.Profile.Layers {

@@ -10,7 +10,7 @@ func evidenceRules() []Rule {
 			Summary: "The evidence inside a report does not fit together: an attachment, a printed digest or the pages are not those of its manifest",
 			Source:  "the manifest of the report"},
 		{ID: "evidence-loose", Weight: Explain, check: looseEvidence,
-			Summary: "A report carries an attachment that its manifest does not list, or lists a file whose digest no page prints",
+			Summary: "A report carries an attachment that its manifest does not list, lists a file whose digest no page prints, was saved again, or carries no evidence at all",
 			Source:  "the manifest of the report"},
 		{ID: "results", Weight: Answer, check: resultsDiffer,
 			Summary: "Another figure of results.json than the class and the average does not follow from the data",
@@ -18,8 +18,8 @@ func evidenceRules() []Rule {
 		{ID: "text", Weight: Answer, check: textDiffers,
 			Summary: "The text of the report does not say what its own results.json says",
 			Source:  "the results.json of the submission"},
-		{ID: "text-mention", Weight: Explain, check: textMentions,
-			Summary: "The text of the report names, in passing, a site class that its results.json gives nowhere",
+		{ID: "text-mention", Weight: Note, check: textMentions,
+			Summary: "The prose of the report names a site class or an average that its results.json gives nowhere; it may be that of other ground",
 			Source:  "the results.json of the submission"},
 	}
 }

@@ -136,6 +136,11 @@ func Example_results() {
 	tell("results", s)
 	// Output:
 	// differs
+	// answer: results.json: results.json does not carry the words on the confirmation of the class by an engineer
+	//   claimed "", found "The design site class must be confirmed by a licensed engineer under the locally adopted building code before it is used for design."
+	// answer: results.json:1:14, L1: results.json says another list of notes than the data give
+	//   claimed "", found "datum-assumed"
+	// answer: results.json:1:14, L1: results.json lacks what the data give: edition, route, standing, depth_m, datum_m, depth_reached_m, velocity, margin, steps
 	// answer: results.json:1:14, L1: results.json says another Vs30 than the data give
 	//   claimed "280.7 m/s", found "270.676691729 m/s"
 }

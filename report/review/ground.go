@@ -25,9 +25,9 @@ func groundRules() []Rule {
 			Source:  "what the code that is applied says of velocities that were not measured"},
 		{ID: "correlated-as-measured", Weight: Answer, check: correlatedAsMeasured,
 			Summary: "Velocities are passed as measured that are estimates: their own basis says so, or a published relation of the stated N gives every one of them",
-			Source: "Imai & Tonouchi (1982); Imai (1977); Ohta & Goto (1978), N alone; Seed, Idriss & Arango (1983), " +
+			Source: "Imai & Tonouchi (1982); Imai (1977); Ohta & Goto (1978), N alone; Specifications for Highway Bridges Part V (Japan); Seed, Idriss & Arango (1983), " +
 				"Seed & Idriss (1981), Sykora & Stokoe (1983), these three from memory",
-			Limits: []Limit{{"layers", 3, "", "with N, all of which a relation must meet"}, {"within", 0.5, "%", "of the relation's velocity"}}},
+			Limits: []Limit{{"layers", 3, "", "with N, all of which a relation must meet", 0}, {"within", 0.5, "%", "of the relation's velocity", 0}}},
 	}
 }
 
@@ -48,7 +48,9 @@ func notAssessed(x *examination) {
 func rockUnderSoil(x *examination) {
 	x.eachCase(func(c *Case) {
 		for _, r := range c.Decision.Conditions {
-			barred := func(class string) bool { return plainClass(class) == plainClass(c.Claim.Class) }
+			barred := func(class string) bool {
+				return plainClass(class) == plainClass(undescribed(plainClass(c.Claim.Class)))
+			}
 			if c.Err == nil && r.State == siteclass.Met && r.Condition.Kind == siteclass.Barred && slices.ContainsFunc(r.Condition.Bars, barred) {
 				x.addUnder(c.Code.Edition+", "+r.Condition.Clause, c.place(),
 					"the code bars the claimed class here: "+r.Condition.Text, "class "+c.Claim.Class, "class "+c.Decision.Class)

@@ -186,7 +186,7 @@ func WriteRules(w io.Writer, set Ruleset) error {
 	for _, r := range set.rules() {
 		j := ruleJSON{r.ID, r.Weight, r.Summary, r.Source, r.Practice, []limitJSON{}}
 		for _, l := range r.Limits {
-			j.Limits = append(j.Limits, limitJSON(l))
+			j.Limits = append(j.Limits, limitJSON{l.Name, l.Value, l.Unit, l.Meaning})
 		}
 		rules = append(rules, j)
 	}

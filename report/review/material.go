@@ -15,16 +15,16 @@ func materialRules() []Rule {
 		{ID: "poisson", Weight: Explain, check: poisson,
 			Summary: "Vp/Vs is below that of a Poisson's ratio of zero; below 1.1547 it is impossible, and the file is not read",
 			Source:  "linear elasticity: ν = (r² − 2) / (2 (r² − 1)), r = Vp/Vs",
-			Limits:  []Limit{{"Vp/Vs", 1.4142, "", "the least that is not told"}}},
+			Limits:  []Limit{{"Vp/Vs", 1.4142, "", "the least that is not told", 0}}},
 		{ID: "saturation", Weight: Explain, check: saturation, Practice: true,
 			Summary: "Vp says that a layer is saturated above the stated water table, or that it is not below it",
 			Source:  "ASTM D7400 on P waves in saturated soil (about 1,450 m/s, 4,750 ft/s)",
-			Limits: []Limit{{"Vp", 1450, "m/s", "from which soil is saturated"},
-				{"Vs", 600, "m/s", "up to which a layer counts as soil"}}},
+			Limits: []Limit{{"Vp", 1450, "m/s", "from which soil is saturated", 0},
+				{"Vs", 600, "m/s", "up to which a layer counts as soil", 0}}},
 		{ID: "soil-window", Weight: Explain, check: soilWindow, Practice: true,
 			Summary: "The velocity lies far outside what handbooks give for the described soil",
 			Source:  "velocity windows of handbooks, from memory",
-			Limits:  []Limit{{"slack", 20, "%", "beyond the window"}}},
+			Limits:  []Limit{{"slack", 20, "%", "beyond the window", 0}}},
 	}
 }
 

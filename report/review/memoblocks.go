@@ -2,7 +2,9 @@ package review
 
 import (
 	"fmt"
+	"slices"
 	"strings"
+	"unicode"
 
 	"shearbook/profile"
 	"shearbook/report"
@@ -192,11 +194,13 @@ func (w *writer) finding(f *Finding) report.ListItem {
 	return item
 }
 
+// capital is text with its first letter in upper case; a symbol such as v̄s stays
+// as it is.
 func capital(text string) string {
-	if text == "" {
+	r := []rune(text)
+	if len(r) == 0 || len(r) > 1 && unicode.Is(unicode.Mn, r[1]) {
 		return text
 	}
-	r := []rune(text)
 	return strings.ToUpper(string(r[:1])) + string(r[1:])
 }
 
@@ -265,12 +269,27 @@ func (w *writer) basis() []report.Block {
 	}
 	say("The data are taken as they were handed in: whether they are the site's own cannot be seen from them.")
 	say("What the submission states of the ground, of the datum and of the foundation is taken as stated.")
+	if len(w.Submission.Printed) > 0 {
+		say("Of the text of the report (" + w.texts() + ") these were held against results.json, each with its own profile and code: the boxes and tables of the summary, the table of several codes, the table of several profiles, the sentence that gives a class, and the digests. " +
+			"Not compared were the tables of layers and of steps, the class tables, the figures, and the prose, of which classes and averages that stand nowhere in results.json are told as notes.")
+	}
 	say("A cause that is named for a claim is a computation that gives just this claim; it is not proof of how the claim came about.")
 	say("Rules that are marked as common practice, or as from memory, rest on no source that was checked, and warn alone.")
 	for _, c := range w.codes() {
 		say(c.Edition + ": standing of its table: " + c.Standing.String() + ".")
 	}
 	return []report.Block{list}
+}
+
+// texts names the files whose text was read.
+func (w *writer) texts() string {
+	var names []string
+	for _, p := range w.Submission.Printed {
+		if !slices.Contains(names, p.File) {
+			names = append(names, p.File)
+		}
+	}
+	return strings.Join(names, ", ")
 }
 
 // codes are the codes that were applied, each once.

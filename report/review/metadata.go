@@ -96,8 +96,8 @@ const (
 )
 
 // methodOf recognises the kind of survey from its stated method.
-func methodOf(p *profile.Profile) method {
-	text := strings.ToLower(p.Survey.Method)
+func methodOf(text string) method {
+	text = strings.ToLower(text)
 	contains := func(words ...string) bool {
 		for _, w := range words {
 			if strings.Contains(text, w) {

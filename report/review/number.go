@@ -49,11 +49,9 @@ func ParseNumber(text string, d profile.Dimension, unit profile.Unit) (Number, e
 	if len(text) > longestNumber {
 		return Number{}, fmt.Errorf("%s is too long for a number", profile.Quote(text))
 	}
-	cut := strings.IndexFunc(text, func(r rune) bool { return !strings.ContainsRune("+-.0123456789", r) })
-	number, word := text, ""
-	if cut >= 0 {
-		number, word = text[:cut], strings.TrimSpace(text[cut:])
-	}
+	number := numeral(text)
+	word := strings.TrimSpace(text[len(number):])
+	number = strings.ReplaceAll(number, ",", "")
 	switch {
 	case word != "":
 		u, ok := profile.ParseUnit(word, d)
@@ -65,6 +63,41 @@ func ParseNumber(text string, d profile.Dimension, unit profile.Unit) (Number, e
 		return Number{}, fmt.Errorf("%s states no unit (%s)", profile.Quote(text), strings.Join(profile.UnitNames(d), ", "))
 	}
 	return printed(number, unit)
+}
+
+// numeral is the number that a text begins with: digits with their sign and
+// point, commas before each third digit ("1,200"), an exponent ("2.469e2").
+// A comma that stands elsewhere is none of it.
+func numeral(text string) string {
+	digits := func(at int) int {
+		n := at
+		for n < len(text) && '0' <= text[n] && text[n] <= '9' {
+			n++
+		}
+		return n
+	}
+	cut := strings.IndexFunc(text, func(r rune) bool { return !strings.ContainsRune("+-.0123456789", r) })
+	if cut < 0 {
+		return text
+	}
+	if first := digits(0); text[cut] == ',' && first == cut && 0 < first && first <= 3 && text[0] != '0' {
+		for cut < len(text) && text[cut] == ',' && digits(cut+1) == cut+4 {
+			cut += 4
+		}
+		if cut < len(text) && text[cut] == '.' {
+			cut = digits(cut + 1)
+		}
+	}
+	if cut > 0 && cut < len(text) && (text[cut] == 'e' || text[cut] == 'E') {
+		from := cut + 1
+		if from < len(text) && (text[from] == '+' || text[from] == '-') {
+			from++
+		}
+		if end := digits(from); end > from {
+			return text[:end]
+		}
+	}
+	return text[:cut]
 }
 
 // printed is the plain decimal number of a text in a unit.

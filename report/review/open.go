@@ -145,7 +145,8 @@ func (f *intake) folder(root *os.Root, book string) error {
 		case 1:
 			book = books[0]
 		default:
-			return hinted{fmt.Errorf("%s holds %d notebooks", f.sub.Name, len(books)), "name one of them: " + strings.Join(books[:min(len(books), 5)], ", ")}
+			f.add(profile.Faultf(profile.Place{File: f.sub.Name}, "name one of them", "the folder holds %d notebooks, and a review takes one: name %s", len(books), strings.Join(books[:min(len(books), 5)], " or ")))
+			return nil
 		}
 	}
 	data, err := f.get(book, "notebook", notebook.MaxSize)
@@ -154,7 +155,7 @@ func (f *intake) folder(root *os.Root, book string) error {
 		return nil
 	}
 	f.site(book, data)
-	f.report(reportBeside(book, names, dirs))
+	f.report(reportBeside(root, book, names, dirs))
 	return nil
 }
 
@@ -215,13 +216,19 @@ func (f *intake) notebooks(names []string) []string {
 }
 
 // reportBeside is the folder of the report of a notebook, "" where it lies
-// beside the notebook itself, "." where there is none.
-func reportBeside(book string, names, dirs []string) string {
+// beside the notebook itself, "." where there is none: the folder of the
+// notebook's own name, or else the first with a results.json in it.
+func reportBeside(root *os.Root, book string, names, dirs []string) string {
 	if own := folder.NameFor(book); slices.Contains(dirs, own) {
 		return own
 	}
 	if slices.Contains(names, folder.Results) {
 		return ""
+	}
+	for _, d := range dirs {
+		if info, err := root.Stat(filepath.Join(d, folder.Results)); err == nil && info.Mode().IsRegular() {
+			return d
+		}
 	}
 	for _, d := range dirs {
 		if strings.HasSuffix(d, "report") {
@@ -244,6 +251,10 @@ func (f *intake) report(dir string) {
 	}
 	name = path.Join(dir, folder.Markdown)
 	if data, err := f.get(name, "report", MaxPrinted); err == nil {
+		f.markdown(name, data)
+	}
+	name = path.Join(dir, folder.HTML)
+	if data, err := f.get(name, "report", MaxBytes); err == nil {
 		f.markdown(name, data)
 	}
 	name = path.Join(dir, folder.PDF)

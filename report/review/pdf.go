@@ -3,6 +3,7 @@ package review
 import (
 	"errors"
 	"path"
+	"slices"
 	"strings"
 
 	"shearbook/profile"
@@ -32,14 +33,17 @@ func (f *intake) pdf(base string, data []byte) error {
 }
 
 // pdfBeside takes the PDF of a report that lies beside its site: its own
-// evidence must fit together, and be that of the folder. A PDF without
-// evidence is let pass.
+// evidence must fit together, and be that of the folder; its pages are
+// compared as the other texts of the report are. One without evidence is
+// told.
 func (f *intake) pdfBeside(name, dir string, data []byte) {
 	e, err := evidence.Read(data)
 	if err != nil {
+		f.pdfWithout(name, data, err)
 		return
 	}
 	f.mismatches(name, e)
+	f.pages(name, e.Pages)
 	for _, m := range e.Manifest.Files {
 		if len(f.sub.Digests) >= maxDigests {
 			return
@@ -52,17 +56,39 @@ func (f *intake) pdfBeside(name, dir string, data []byte) {
 	}
 }
 
-// mismatches takes what does not fit together in the PDF.
+// pdfWithout takes the PDF of a report that carries no evidence.
+func (f *intake) pdfWithout(name string, data []byte, why error) {
+	pages, err := evidence.ReadPages(data)
+	text := "carries no evidence"
+	if err != nil {
+		text += ", and its pages cannot be read"
+	}
+	f.evident(Fault{Fault: profile.Faultf(profile.Place{File: name}, "", "%s %s: %v", path.Base(name), text, why), Lesser: err == nil})
+	f.pages(name, pages)
+}
+
+// evident adds a part of the submission that does not fit together with
+// another.
+func (f *intake) evident(fault Fault) {
+	if fault.Evidence = true; len(f.sub.Faults) < MaxFaults {
+		f.sub.Faults = append(f.sub.Faults, fault)
+	}
+}
+
+// mismatches takes what does not fit together in the PDF. Pages that were
+// saved again are to be explained where nothing else is amiss.
 func (f *intake) mismatches(base string, e *evidence.Evidence) {
-	for _, m := range e.Check() {
-		if len(f.sub.Faults) == MaxFaults {
-			return
+	found := e.Check()
+	lesser := func(m evidence.Mismatch) bool { return m.Kind == evidence.Unlisted || m.Kind == evidence.NotPrinted }
+	amiss := slices.ContainsFunc(found, func(m evidence.Mismatch) bool { return m.Kind != evidence.PagesAltered && !lesser(m) })
+	for _, m := range found {
+		fault := Fault{Fault: profile.Faultf(profile.Place{File: base}, "", "%s", m.Text), Lesser: lesser(m),
+			Page: m.Page, Claimed: m.Claimed, Found: m.Found}
+		if m.Kind == evidence.PagesAltered && m.Resaved && !amiss {
+			fault.Lesser = true
+			fault.Text = "the PDF was saved again or signed after it was written: its attachments, digests and text fit together, and its drawings were not compared"
 		}
-		f.sub.Faults = append(f.sub.Faults, Fault{
-			Fault:    profile.Faultf(profile.Place{File: base}, "", "%s", m.Text),
-			Evidence: true, Lesser: m.Kind == evidence.Unlisted || m.Kind == evidence.NotPrinted,
-			Page: m.Page, Claimed: m.Claimed, Found: m.Found,
-		})
+		f.evident(fault)
 	}
 }
 
@@ -99,8 +125,13 @@ func (f *intake) evidence(base string, e *evidence.Evidence) {
 	} else {
 		f.fault(profile.Place{File: base}, "the report carries no %s", evidence.ResultsName)
 	}
+	f.pages(base, e.Pages)
+}
+
+// pages takes the text of pages.
+func (f *intake) pages(base string, pages []evidence.Page) {
 	total := 0
-	for _, page := range e.Pages {
+	for _, page := range pages {
 		p := Printed{File: base, Page: page.Number}
 		for _, l := range page.Lines {
 			if total += len(l.Text); total > MaxPrinted {

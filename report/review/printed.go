@@ -66,13 +66,18 @@ func (x *examination) text(answers bool) {
 	if len(x.Printed) == 0 || len(x.Results) == 0 {
 		return
 	}
-	in := &inText{answers: answers, known: x.knownClasses(), velocities: map[string]Number{}, labelled: map[string]bool{},
-		classes: map[string]int{}, words: map[string]bool{}, averages: x.averages(), values: x.values()}
-	for i := range x.Printed {
-		x.read(in, &x.Printed[i])
-	}
-	if answers {
-		x.unprinted(in)
+	known, averages, values := x.knownClasses(), x.averages(), x.values()
+	for from := 0; from < len(x.Printed); {
+		to := from // the pieces of one file follow each other
+		in := &inText{answers: answers, known: known, velocities: map[string]Number{}, labelled: map[string]bool{},
+			classes: map[string]int{}, words: map[string]bool{}, averages: averages, values: values, bound: x.bindings(!answers)}
+		for ; to < len(x.Printed) && x.Printed[to].File == x.Printed[from].File; to++ {
+			x.read(in, &x.Printed[to])
+		}
+		if answers {
+			x.unprinted(in, x.Printed[from].File)
+		}
+		from = to
 	}
 }
 
@@ -86,6 +91,7 @@ type inText struct {
 	words      map[string]bool   // all that are short
 	averages   string            // the first few of results.json
 	values     []float64         // m/s, every average of results.json, sorted
+	bound      *bindings
 }
 
 // Limits of what is compared of a text.
@@ -98,17 +104,25 @@ const (
 // read goes through one piece of text.
 func (x *examination) read(in *inText, p *Printed) {
 	words := p.words()
+	in.bound.bind(p)
 	for k, w := range words {
 		if len(w.text) <= longestClass {
-			in.words[strings.TrimRight(w.text, ".,;:")] = true
-		}
-		if class, ok := classAt(words, k, in.known); ok {
-			in.classes[class]++
-			if in.classes[class] <= maxSame && in.answers == isAnswer(words, k) && !x.claimsClass(class) {
-				x.add(p.place(w), "the text names a site class that results.json gives nowhere", "class "+class, "class "+strings.Join(x.claimedClasses(), ", "))
+			text := strings.TrimRight(w.text, ".,;:")
+			in.words[text] = true
+			if class, ok := p.knownClass(text, in.known); ok {
+				in.words[class] = true
 			}
 		}
-		if n, ok := velocityAt(words, k); ok && in.answers {
+		if in.answers {
+			x.readCell(in, w.text)
+		}
+		if class, ok := classAt(p, words, k, in.known); ok {
+			in.classes[class]++
+			if in.classes[class] <= maxSame && in.answers == p.isAnswer(words, k) && !x.claimsClass(class) && !in.bound.told[w.line] {
+				x.add(p.place(w), in.what()+" names a site class that results.json gives nowhere", "class "+class, "class "+strings.Join(x.claimedClasses(), ", "))
+			}
+		}
+		if n, ok := velocityAt(words, k); ok {
 			x.readVelocity(in, p, words, k, n)
 		}
 	}
@@ -120,21 +134,42 @@ func (x *examination) readVelocity(in *inText, p *Printed, words []word, k int, 
 	if len(in.velocities) < maxVelocities {
 		in.velocities[n.Text] = n
 	}
-	if !labelled(words, k) || in.labelled[n.Text] || len(in.labelled) == maxVelocities {
+	answer, ok := labelled(words, k)
+	if !ok || answer != in.answers || in.labelled[n.Text] || len(in.labelled) == maxVelocities || in.bound.told[words[k].line] {
 		return
 	}
 	in.labelled[n.Text] = true
 	from, _ := slices.BinarySearch(in.values, n.Value-2*n.Half)
 	if !among(in.values[from:], n) {
-		x.add(p.place(words[k]), "the text prints an average that results.json gives nowhere", n.Text, in.averages)
+		x.add(p.place(words[k]), in.what()+" prints an average that results.json gives nowhere", n.Text, in.averages)
+	}
+}
+
+// what is what is compared: the answers of the text, or its prose.
+func (in *inText) what() string {
+	if in.answers {
+		return "the text"
+	}
+	return "the prose"
+}
+
+// readCell notes a bare number below a heading of averages.
+func (x *examination) readCell(in *inText, text string) {
+	unit := in.bound.average
+	if first, _ := utf8.DecodeRuneInString(text); unit.Name == "" || !unicode.IsDigit(first) || len(text) > longestClass {
+		return
+	}
+	n, err := printed(strings.ReplaceAll(text, ",", ""), unit)
+	if err == nil && len(in.velocities) < maxVelocities {
+		in.velocities[n.Text] = n
 	}
 }
 
 // isAnswer reports whether the class at word k stands as an answer of the
-// report, in a line of its own or as "is site class D"; prose may name other
-// classes for comparison.
-func isAnswer(words []word, k int) bool {
-	return words[k].text == "Site" && (k == 0 || words[k-1].line != words[k].line) || k > 0 && words[k-1].text == "is"
+// report, in the row of a summary's box; prose may name other classes for
+// comparison. On a page the box has another form; see bindings.
+func (p *Printed) isAnswer(words []word, k int) bool {
+	return p.Page == 0 && words[k].text == "Site" && strings.ContainsAny(p.Text[words[k].line-1], "|\t") && (k == 0 || words[k-1].line != words[k].line)
 }
 
 // among reports whether a number stands for one of the values, which are
@@ -152,15 +187,15 @@ func among(values []float64, n Number) bool {
 }
 
 // unprinted tells the results that the text does not print.
-func (x *examination) unprinted(in *inText) {
+func (x *examination) unprinted(in *inText, file string) {
 	velocities := slices.SortedFunc(maps.Values(in.velocities), func(a, b Number) int { return cmp.Compare(a.Value, b.Value) })
 	for i := range x.Results {
 		r := &x.Results[i]
 		if r.Average.Known() && !prints(velocities, r.Average.Value) {
-			x.add(r.Place, "the text of the report prints the average of this result nowhere", r.Average.in(r.Average.Value), "")
+			x.add(r.Place, "the text of "+file+" prints the average of this result nowhere", r.Average.in(r.Average.Value), "")
 		}
 		if class := plainClass(r.Class); r.Class != "" && in.classes[class] == 0 && !in.words[r.Class] && !strings.ContainsRune(r.Class, ' ') {
-			x.add(r.Place, "the text of the report prints the class of this result nowhere", "class "+r.Class, "")
+			x.add(r.Place, "the text of "+file+" prints the class of this result nowhere", "class "+r.Class, "")
 		}
 	}
 }
@@ -232,12 +267,13 @@ func (x *examination) knownClasses() map[string]bool {
 				known[plainClass(b.Class)] = true
 			}
 		}
+		known[plainClass(r.Class)] = true
 	}
 	return known
 }
 
 // classAt reads "site class D" at word k.
-func classAt(words []word, k int, known map[string]bool) (string, bool) {
+func classAt(p *Printed, words []word, k int, known map[string]bool) (string, bool) {
 	if k+2 >= len(words) || !strings.EqualFold(words[k].text, "site") || !strings.EqualFold(words[k+1].text, "class") {
 		return "", false
 	}
@@ -245,8 +281,22 @@ func classAt(words []word, k int, known map[string]bool) (string, bool) {
 	if first, _ := utf8.DecodeRuneInString(text); !unicode.IsUpper(first) {
 		return "", false
 	}
+	return p.knownClass(text, known)
+}
+
+// knownClass is the known class that a word names. On a page the numbers of
+// footnotes hang on it.
+func (p *Printed) knownClass(text string, known map[string]bool) (string, bool) {
 	class := plainClass(text)
-	return class, known[class]
+	if known[class] || p.Page == 0 {
+		return class, known[class]
+	}
+	for end := len(class); end > 0 && strings.IndexByte("0123456789,", class[end-1]) >= 0; end-- {
+		if known[class[:end-1]] {
+			return class[:end-1], true
+		}
+	}
+	return class, false
 }
 
 // velocityAt reads "246.9 m/s" at word k.
@@ -270,13 +320,16 @@ func velocityAt(words []word, k int) (Number, bool) {
 }
 
 // labelled reports whether the velocity at word k stands as an average of the
-// report: "Average velocity 246.9 m/s", "average velocity of 246.9 m/s".
-func labelled(words []word, k int) bool {
+// report: as an answer in "Average velocity 246.9 m/s", and in prose in "an
+// average velocity of 246.9 m/s".
+func labelled(words []word, k int) (answer, ok bool) {
 	at := k - 1
-	if at >= 0 && words[at].text == "of" {
+	prose := at >= 0 && words[at].text == "of"
+	if prose {
 		at--
 	}
-	return at >= 1 && words[at].text == "velocity" && strings.EqualFold(words[at-1].text, "average")
+	ok = at >= 1 && words[at].text == "velocity" && strings.EqualFold(words[at-1].text, "average")
+	return ok && !prose && words[at-1].text == "Average", ok
 }
 
 // digests compares every printed digest with its file.

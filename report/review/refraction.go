@@ -3,6 +3,7 @@ package review
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"shearbook/profile"
 	"shearbook/vs30"
@@ -27,26 +28,48 @@ func refractionRules() []Rule {
 		{ID: "few-receivers", Weight: Explain, check: fewReceivers, Practice: true,
 			Summary: "A layer of a refraction profile arrives first over less than a number of receivers",
 			Source:  "intercept times of horizontal layers; the number of receivers is common practice",
-			Limits:  []Limit{{"receivers", 2, "", "that must see the layer first"}}},
+			Limits:  []Limit{{"receivers", 2, "", "that must see the layer first", 0}}},
 		{ID: "refraction-spread", Weight: Explain, check: refractionSpread,
 			Summary: "A refraction spread is short against the depth it is used for",
 			Source:  "ASTM D5777, from memory: three to five times the depth of interest",
-			Limits:  []Limit{{"times", 3, "", "the depth that is used"}}},
+			Limits:  []Limit{{"times", 3, "", "the depth that is used", 0}}},
 	}
 }
 
 // eachRefraction calls f for every profile of a refraction survey.
 func (x *examination) eachRefraction(f func(*Entry)) {
 	x.each(func(e *Entry) {
-		if methodOf(e.Profile) == refraction && !e.Profile.NoVelocity && len(e.Profile.Layers) <= maxCompared {
+		if e.method() == refraction && !e.Profile.NoVelocity && len(e.Profile.Layers) <= maxCompared {
 			f(e)
 		}
 	})
 }
 
+// refracted are the layers with the velocity of the waves that were refracted
+// in place of Vs: that of P waves where the method says so and every layer
+// states it.
+func (e *Entry) refracted() []profile.Layer {
+	layers := e.Profile.Layers
+	if !pRefraction(e.methodText()) || slices.ContainsFunc(layers, func(l profile.Layer) bool { return !l.Has(profile.GivenVp) || l.Vp <= 0 }) {
+		return layers
+	}
+	layers = slices.Clone(layers)
+	for i := range layers {
+		layers[i].Vs, layers[i].VsBottom = layers[i].Vp, 0
+	}
+	return layers
+}
+
+// pRefraction reports whether a method is refraction of P waves: "P-wave
+// refraction", "seismic refraction (P)", and not "P and S refraction".
+func pRefraction(method string) bool {
+	words := wordSet(method)
+	return (words["p"] || words["vp"] || words["compressional"]) && !words["s"] && !words["sh"] && !words["shear"]
+}
+
 func refractionReversal(x *examination) {
 	x.eachRefraction(func(e *Entry) {
-		falls := vs30.Reversals(e.Profile.Layers, 0, math.Inf(1))
+		falls := vs30.Reversals(e.refracted(), 0, math.Inf(1))
 		if len(falls) == 0 {
 			return
 		}
@@ -112,7 +135,7 @@ func firstArrivals(layers []profile.Layer) []branch {
 
 func hiddenLayer(x *examination) {
 	x.eachRefraction(func(e *Entry) {
-		layers := e.Profile.Layers
+		layers := e.refracted()
 		seen := map[int]bool{}
 		for _, b := range firstArrivals(layers) {
 			seen[b.layer] = true
@@ -137,7 +160,7 @@ func fewReceivers(x *examination) {
 		if !limited {
 			end = math.Inf(1)
 		}
-		for _, b := range firstArrivals(e.Profile.Layers) {
+		for _, b := range firstArrivals(e.refracted()) {
 			seen := min(b.end, end) - b.start
 			if need := x.limit("receivers") * spacing; seen < need {
 				x.add(e.layer(b.layer), fmt.Sprintf("the wave of this layer arrives first over %s of the spread, fewer than %s receivers at %s",
@@ -150,7 +173,7 @@ func fewReceivers(x *examination) {
 func refractionSpread(x *examination) {
 	x.eachProfile(func(e *Entry, from, to float64) {
 		spread, ok := length(e.Profile, spreadLength...)
-		if need := x.limit("times") * to; ok && methodOf(e.Profile) == refraction && spread < need {
+		if need := x.limit("times") * to; ok && e.method() == refraction && spread < need {
 			x.add(e.at(), fmt.Sprintf("a spread of %s is short for a depth of %s: %s times the depth is %s", metres(spread), metres(to), short(x.limit("times"), 2), metres(need)),
 				metres(spread), metres(need))
 		}

@@ -24,14 +24,16 @@ const (
 // Result is what a results.json says of one profile under one code. Its
 // numbers are kept as they are printed there.
 type Result struct {
-	Profile, Code, Class, Basis string
-	Source                      Digest
+	Profile, Code, Edition, Class, Basis string
+	Source                               Digest
 
 	Average, Depth, Vs30, Reached, Datum, Margin Number
 
 	Extend     string // relation that the notes name; "" if none
 	Unassessed []string
 	Place      Place
+
+	raw *resultJSON // nil of one that was not read
 }
 
 // resultJSON is one entry of results.json, as far as it is looked at.
@@ -42,6 +44,7 @@ type resultJSON struct {
 		SHA256 string `json:"sha256"`
 	} `json:"source"`
 	Code    string      `json:"code"`
+	Edition string      `json:"edition"`
 	Class   string      `json:"class"`
 	Basis   string      `json:"basis"`
 	Average json.Number `json:"velocity_mps"`
@@ -50,9 +53,23 @@ type resultJSON struct {
 	Reached json.Number `json:"depth_reached_m"`
 	Datum   json.Number `json:"datum_m"`
 	Margin  *struct {
+		ToClass string      `json:"to_class"`
+		Bound   json.Number `json:"bound"`
+		Unit    string      `json:"unit"`
 		Percent json.Number `json:"percent"`
 	} `json:"margin"`
-	Notes []struct {
+	Route    string `json:"route"`
+	Standing string `json:"standing"`
+	Velocity *struct {
+		Value json.Number `json:"value"`
+		Unit  string      `json:"unit"`
+	} `json:"velocity"`
+	Steps *[]struct {
+		Text  string `json:"text"`
+		Holds bool   `json:"holds"`
+	} `json:"steps"`
+	Averages []report.Average `json:"averages"`
+	Notes    []struct {
 		ID   string `json:"id"`
 		Text string `json:"text"`
 	} `json:"notes"`
@@ -93,6 +110,7 @@ func readResults(file string, data []byte) ([]Result, error) {
 		r.Place.Line, r.Place.Column = here.to(start + int64(bytes.IndexByte(data[start:], '{')))
 		r.Place.Profile = r.Profile
 		r.Source.Place = r.Place
+		r.raw = &raw
 		results = append(results, r)
 	}
 	if _, err := dec.Token(); err != nil {
@@ -168,7 +186,7 @@ func (m *mark) to(offset int64) (line, column int) {
 
 // result checks one entry and keeps its numbers as they are printed.
 func (j *resultJSON) result() (Result, error) {
-	r := Result{Profile: j.Profile, Code: j.Code, Class: j.Class, Basis: j.Basis, Unassessed: j.Unassessed,
+	r := Result{Profile: j.Profile, Code: j.Code, Edition: j.Edition, Class: j.Class, Basis: j.Basis, Unassessed: j.Unassessed,
 		Source: Digest{File: j.Source.File, SHA256: j.Source.SHA256}}
 	percent := profile.Unit{Name: "%", Dimension: profile.Percent, Factor: 1}
 	margin := json.Number("")
@@ -219,6 +237,9 @@ func relationIn(text string) string {
 // resultsDiffer compares the rest of results.json with what the data give
 // under the code that it names.
 func resultsDiffer(x *examination) {
+	if x.Confirmation != nil && len(x.Results) > 0 && oneSpaced(*x.Confirmation) != oneSpaced(report.Caution) {
+		x.add(Place{Place: profile.Place{File: x.Results[0].Place.File}}, "results.json does not carry the words on the confirmation of the class by an engineer", *x.Confirmation, report.Caution)
+	}
 	for i := range x.cases {
 		c := &x.cases[i]
 		r := c.Claim.result
@@ -240,6 +261,7 @@ func resultsDiffer(x *examination) {
 			}
 		}
 		vs30 := report.Average30(c.Entry.Profile, d.Datum, facts)
+		x.wholeResult(c, report.NewResult(c.Entry.Profile, d, vs30))
 		if vs30 == nil {
 			vs30 = new(float64)
 		}

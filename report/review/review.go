@@ -34,6 +34,10 @@ type Submission struct {
 	Faults   []Fault   // what could not be read, or does not fit together
 	Results  []Result  // of a results.json
 
+	// Confirmation is the caution that a results.json carries; nil where none
+	// was read.
+	Confirmation *string
+
 	// Tables are the class tables that the submission brings along.
 	Tables []*siteclass.Code
 
@@ -61,6 +65,31 @@ type Entry struct {
 	Profile *profile.Profile
 	AsRead  *profile.Profile // the same as its file has it, before the notebook's statements were put over it
 	Place   profile.Place    // where the submission names it
+
+	// Unmapped is the same without the notebook's map of columns, where there
+	// is a map and the file can be read without; nil elsewhere.
+	Unmapped *profile.Profile
+}
+
+// method is the kind of survey by the file's own words, or the notebook's
+// where the file has none.
+func (e *Entry) method() method { return methodOf(e.methodText()) }
+
+func (e *Entry) methodText() string {
+	if e.AsRead != nil && e.AsRead.Survey.Method != "" {
+		return e.AsRead.Survey.Method
+	}
+	return e.Profile.Survey.Method
+}
+
+// reached is the depth in m that the survey reached, the lesser of what the
+// file and the notebook state; 0 where neither does.
+func (e *Entry) reached() float64 {
+	reached := e.Profile.Survey.DepthReached
+	if e.AsRead != nil && e.AsRead.Survey.DepthReached > 0 && (reached == 0 || e.AsRead.Survey.DepthReached < reached) {
+		reached = e.AsRead.Survey.DepthReached
+	}
+	return reached
 }
 
 // Stated is what a submission states of the ground and of the average.
@@ -88,7 +117,8 @@ type Claim struct {
 	Basis   string // that the velocities are said to have: a profile.Basis word; "" if nothing is said
 	Place   Place
 
-	result *Result // of a results.json that makes the claim; nil elsewhere
+	result  *Result // of a results.json that makes the claim; nil elsewhere
+	problem string  // why the claim cannot be read; "" where it can
 }
 
 // File is a file of a submission.
@@ -207,12 +237,19 @@ func Examine(s *Submission, desk Desk) *Review {
 	return r
 }
 
-// outcome is the answer: differs where a finding must be answered, unchecked
-// where a claim could not be recomputed or there is none.
+// outcome is the answer: differs where a claim does not follow, whatever
+// weight the rules have, or a finding must be answered; unchecked where a
+// claim could not be recomputed or there is none.
 func (x *examination) outcome() Outcome {
 	unchecked := len(x.cases) == 0
-	for _, c := range x.cases {
-		unchecked = unchecked || c.whyUnchecked() != ""
+	tolerance := x.desk.tolerance()
+	for i := range x.cases {
+		switch c := &x.cases[i]; {
+		case c.whyUnchecked() != "":
+			unchecked = true
+		case !c.Agrees(tolerance):
+			return Differs
+		}
 	}
 	for _, f := range x.findings {
 		switch {
@@ -234,6 +271,12 @@ func (c *Claim) saysSomething() bool { return c.Class != "" || c.Average.Known()
 // errNoProfile is the error of a claim on a profile that was not handed in.
 var errNoProfile = errors.New("the submission holds no such profile, or its file cannot be read")
 
+// unreadable is the error of a claim that cannot be read; where it stands and
+// why is a fault of its own.
+type unreadable struct{ text string }
+
+func (e unreadable) Error() string { return e.text }
+
 // recompute decides the class of the profile that a claim is about.
 func (d *Desk) recompute(s *Submission, claim Claim) Case {
 	c := Case{Claim: claim, Code: d.Code}
@@ -246,6 +289,10 @@ func (d *Desk) recompute(s *Submission, claim Claim) Case {
 	}
 	if c.Code == nil {
 		c.Code = c.Under
+	}
+	if claim.problem != "" {
+		c.Err = unreadable{claim.problem}
+		return c
 	}
 	if claim.Entry < 0 || claim.Entry >= len(s.Profiles) {
 		c.Err = errNoProfile

@@ -48,6 +48,9 @@ type Rule struct {
 	// Unchecked says that what the rule finds keeps a claim from being
 	// checked, and does not contradict it.
 	Unchecked bool
+	// Fixed says that the weight cannot be changed: the outcome is about just
+	// what the rule finds.
+	Fixed bool
 
 	check func(*examination)
 }
@@ -58,6 +61,7 @@ type Limit struct {
 	Value   float64
 	Unit    string // "" for a plain number
 	Meaning string
+	Most    float64 // that a reviewer may set; 0 where there is no such bound
 }
 
 // String returns the limit as "divisor 2" or "slack 20 %".
@@ -157,6 +161,20 @@ func (x *examination) causes(of func() []Cause) []Cause {
 // add states a finding of the rule that is being applied.
 func (x *examination) add(at Place, text, claimed, found string, causes ...Cause) {
 	x.addUnder("", at, text, claimed, found, causes...)
+}
+
+// addAs is add with a weight of its own, where the rule's is heavier.
+func (x *examination) addAs(w Weight, at Place, text, claimed, found string, causes ...Cause) {
+	x.addUnderAs(w, "", at, text, claimed, found, causes...)
+}
+
+// addUnderAs is addUnder with a weight of its own, where the rule's is
+// heavier.
+func (x *examination) addUnderAs(w Weight, clause string, at Place, text, claimed, found string, causes ...Cause) {
+	was := x.rule.Weight
+	x.rule.Weight = min(was, w)
+	x.addUnder(clause, at, text, claimed, found, causes...)
+	x.rule.Weight = was
 }
 
 // addUnder is add with a clause of a code in place of the rule's source.

@@ -103,14 +103,15 @@ func Example_unchecked() {
 }
 
 // 20 m in 5/150 + 15/250 = 0.0933333 s; with 250 m/s carried on over 10 m
-// more, 30 / 0.1333333 = 225 m/s.
+// more, 30 / 0.1333333 = 225 m/s. By chance (5·150 + 15·250)/20 is 225 m/s too.
 func Example_extensionUnsaid() {
 	const short = "top (m),bottom (m),vs (m/s)\n0,5,150\n5,20,250\n"
 	tell("extension-unsaid", submission(short, claim("ec8-2004", "C", "225 m/s")))
 	// Output:
 	// answer: site: the profile ends above the averaging depth, and nothing says how it was carried on
 	//   claimed "class C, 225 m/s, under ec8-2004", found "layers down to 20 m, of 30 m that the code needs"
-	//   likely: the deepest velocity carried on to the averaging depth without a word (225.0 m/s)
+	//   likeliest: the deepest velocity carried on to the averaging depth without a word (225.0 m/s)
+	//   or: the arithmetic mean by thickness of what was reached (225.0 m/s)
 }
 
 func Example_extension() {

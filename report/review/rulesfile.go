@@ -199,6 +199,10 @@ func (r *rulesReader) weight(rule *Rule, n *yaml.Node) {
 		r.fault(n, "write answer, explain, note or off", "the weight of rule %s is %s", rule.ID, profile.Quote(n.Value))
 		return
 	}
+	if rule.Fixed && w != rule.Weight {
+		r.fault(n, "leave it out", "rule %s keeps its weight: a claim that does not follow, or cannot be checked, is the outcome itself", rule.ID)
+		return
+	}
 	if w != rule.Weight {
 		r.change(rule.ID, "weight", rule.Weight.String(), w.String())
 	}
@@ -225,6 +229,10 @@ func (r *rulesReader) limit(rule *Rule, key, n *yaml.Node) {
 	v, err := strconv.ParseFloat(number, 64)
 	if n.Kind != yaml.ScalarNode || err != nil || unit != "" && unit != l.Unit || !(v >= 0 && v <= largest) {
 		r.fault(n, fmt.Sprintf("write it as `%s: %s`", l.Name, strings.TrimPrefix(l.String(), l.Name+" ")), "%s of rule %s is %s", l.Name, rule.ID, profile.Quote(n.Value))
+		return
+	}
+	if l.Most > 0 && v > l.Most {
+		r.fault(n, fmt.Sprintf("write at most %s %s", short(l.Most, 6), l.Unit), "%s of rule %s is %s, with which anything would agree", l.Name, rule.ID, profile.Quote(n.Value))
 		return
 	}
 	if l.Name == "divisor" && v == 0 {

@@ -38,7 +38,8 @@ func TestRulesFile(t *testing.T) {
 	set, err := review.ReadRules("rules.yaml", []byte(`
 department: Building Department of Exampleton
 rules:
-  average: {tolerance: 2 %, weight: explain}
+  average: {tolerance: 2 %}
+  datum: note
   wavelength: {divisor: 3}
   margin: off
 `))
@@ -49,7 +50,7 @@ rules:
 	for _, c := range set.Changes {
 		got = append(got, c.String())
 	}
-	want := []string{"average: tolerance 0 % → 2 %", "average: weight answer → explain", "wavelength: divisor 2 → 3", "margin: weight note → off"}
+	want := []string{"average: tolerance 0 % → 2 %", "datum: weight explain → note", "wavelength: divisor 2 → 3", "margin: weight note → off"}
 	if !slices.Equal(got, want) || set.Department != "Building Department of Exampleton" {
 		t.Errorf("%q, %q", got, set.Department)
 	}
@@ -58,10 +59,10 @@ rules:
 	if r := review.Examine(s, review.Desk{Rules: set}); r.Outcome != review.Agrees {
 		t.Errorf("%s", r.Outcome)
 	}
-	// Beyond it the finding weighs no more than the department says.
+	// Beyond it the claim does not follow.
 	s = submission(threeLayers, claim("ec8-2004", "", "285 m/s"))
-	if f := finding(t, review.Examine(s, review.Desk{Rules: set}), "average"); f.Weight != review.Explain {
-		t.Errorf("%s", f.Weight)
+	if r := review.Examine(s, review.Desk{Rules: set}); r.Outcome != review.Differs {
+		t.Errorf("%s", r.Outcome)
 	}
 	if review.Rules()[1].Limits[0].Value != 0 {
 		t.Error("the built-in rules were changed")
@@ -77,8 +78,11 @@ func TestRulesFaults(t *testing.T) {
 		{"rules:\n  average: {tolerance: -1 %}\n", `rules.yaml:2:24: tolerance of rule average is "-1 %"`, "write it as `tolerance: 0 %`"},
 		{"rules:\n  wavelength: {divisor: 0}\n", "rules.yaml:2:25: divisor of rule wavelength is zero", "write a number above zero"},
 		{"rules: {class: heavy}\n", `rules.yaml:1:16: the weight of rule class is "heavy"`, "write answer, explain, note or off"},
+		{"rules: {average: note}\n", "rules.yaml:1:18: rule average keeps its weight: a claim that does not follow, or cannot be checked, is the outcome itself", "leave it out"},
+		{"rules: {unchecked: off}\n", "rules.yaml:1:20: rule unchecked keeps its weight: a claim that does not follow, or cannot be checked, is the outcome itself", "leave it out"},
+		{"rules: {average: {tolerance: 11 %}}\n", `rules.yaml:1:30: tolerance of rule average is "11 %", with which anything would agree`, "write at most 10 %"},
 		{"rule: {}\n", `rules.yaml:1:1: the file has no key "rule"`, `did you mean "rules"?`},
-		{"rules: {class: off, class: note}\n", `rules.yaml:1:21: rules states "class" twice`, "keep one of them"},
+		{"rules: {margin: off, margin: note}\n", `rules.yaml:1:22: rules states "margin" twice`, "keep one of them"},
 		{"", "rules.yaml: the file is empty", "begin with `rules:`; `shearbook review --list` prints them"},
 	} {
 		_, err := review.ReadRules("rules.yaml", []byte(p.text))

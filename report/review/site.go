@@ -3,6 +3,7 @@ package review
 import (
 	"crypto/sha256"
 	"encoding/hex"
+	"encoding/json"
 	"errors"
 	"fmt"
 	"io/fs"
@@ -177,7 +178,41 @@ func (f *intake) entry(name string, e *notebook.ProfileEntry) {
 	p := as
 	p.Name = e.Key
 	p.Survey.Override(e.Survey)
-	f.sub.Profiles = append(f.sub.Profiles, Entry{Profile: &p, AsRead: &as})
+	for _, n := range profile.Doubts(&p) { // what the notebook's own statements raise
+		if !slices.ContainsFunc(as.Notes, func(had profile.Note) bool { return had.ID == n.ID && had.Text == n.Text }) {
+			p.Notes = append(p.Notes[:len(p.Notes):len(p.Notes)], n)
+		}
+	}
+	f.sub.Profiles = append(f.sub.Profiles, Entry{Profile: &p, AsRead: &as, Unmapped: f.unmapped(e, as.Name)})
+}
+
+// unmapped reads a profile without the notebook's map; nil where there is no
+// map, or the file cannot be read without it.
+func (f *intake) unmapped(e *notebook.ProfileEntry, name string) *profile.Profile {
+	opt := e.Options()
+	if len(opt.Map) == 0 {
+		return nil
+	}
+	opt.Map = nil
+	key := e.File + "\x00" + opt.Key()
+	had, ok := f.profiles[key]
+	if !ok {
+		data, err := f.read(e.File)
+		if err != nil {
+			return nil
+		}
+		if had, err = open.Bytes(e.File, data, opt); err != nil {
+			had = nil
+		}
+		for i := range had {
+			f.layers += len(had[i].Layers)
+		}
+		f.profiles[key] = had
+	}
+	if i := slices.IndexFunc(had, func(p profile.Profile) bool { return p.Name == name }); i >= 0 {
+		return &had[i]
+	}
+	return nil
 }
 
 // results takes a results.json: each result is a claim.
@@ -189,6 +224,12 @@ func (f *intake) results(name string, data []byte) {
 		return
 	}
 	f.sub.Results = results
+	var top struct {
+		Confirmation string `json:"confirmation"`
+	}
+	if json.Unmarshal(data, &top) == nil {
+		f.sub.Confirmation = &top.Confirmation
+	}
 	for i := range results {
 		r := &results[i]
 		if r.Source.SHA256 != "" {
@@ -220,11 +261,15 @@ func (s *Submission) entryNamed(name string) int {
 // markdown takes the text of a report.
 func (f *intake) markdown(name string, data []byte) {
 	f.keep(name, "report", data)
-	if len(data) > MaxPrinted {
+	text := string(data)
+	if strings.HasSuffix(name, ".html") { // most of it may be drawings
+		text = strings.Join(plainHTML(strings.ToValidUTF8(text, "\ufffd")), "\n")
+	}
+	if len(text) > MaxPrinted {
 		f.fault(profile.Place{File: name}, "the text of the report is longer than %d MiB", MaxPrinted>>20)
 		return
 	}
-	p := Printed{File: name, Text: strings.Split(string(data), "\n")}
+	p := Printed{File: name, Text: strings.Split(text, "\n")}
 	f.sub.Printed = append(f.sub.Printed, p)
 	for _, d := range p.digests() {
 		if d.File == folder.Results {

@@ -2,6 +2,7 @@ package review
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"shearbook/profile"
@@ -16,6 +17,9 @@ func surveyRules() []Rule {
 		{ID: "stated-otherwise", Weight: Explain, check: statedOtherwise,
 			Summary: "The notebook states something else of the survey than the profile's own file",
 			Source:  "the profile's own file", Practice: true},
+		{ID: "mapped-column", Weight: Answer, check: mappedColumn, Practice: true,
+			Summary: "The notebook's map takes another column for the shear-wave velocity than the one that the file calls so",
+			Source:  "the profile's own file"},
 		{ID: "doubt", Weight: Explain, check: doubts, Practice: true,
 			Summary: "The profile is doubtful in itself: a single layer, velocities in what looks like another unit, layers below the depth reached",
 			Source:  "common practice"},
@@ -67,6 +71,25 @@ func statedOtherwise(x *examination) {
 		if file.Basis != profile.BasisNotStated {
 			tell("basis", file.Basis.String(), over.Basis.String())
 		}
+	})
+}
+
+// mappedColumn tells velocities that a map takes from elsewhere.
+func mappedColumn(x *examination) {
+	x.each(func(e *Entry) {
+		if e.Unmapped == nil || e.Profile.NoVelocity {
+			return
+		}
+		own := e.Unmapped
+		if own.NoVelocity || slices.EqualFunc(own.Layers, e.Profile.Layers, func(a, b profile.Layer) bool { return same(a.Vs, b.Vs) && same(a.VsBottom, b.VsBottom) }) {
+			return
+		}
+		at, taken, given := 0, e.Profile.Layers, own.Layers
+		for at < min(len(taken), len(given))-1 && same(taken[at].Vs, given[at].Vs) {
+			at++
+		}
+		x.add(e.at(), fmt.Sprintf("the notebook's map takes another column for the shear-wave velocity than the file's own: layer %d has %s in place of %s", at+1, speed(taken[at].Vs), speed(given[at].Vs)),
+			speed(taken[at].Vs), speed(given[at].Vs))
 	})
 }
 

@@ -201,7 +201,7 @@ func Example_copied() {
 	s.Profiles = append(s.Profiles, review.Entry{Profile: &other})
 	tell("copied", s)
 	// Output:
-	// answer: site.csv, elsewhere: the layers are those of profile "site" with every velocity times 1.1 (site.csv)
+	// answer: site.csv, elsewhere: the layers are those of profile "site" (site.csv) with every velocity times 1.1
 	//   claimed "", found "3 layers"
 }
 
@@ -234,18 +234,51 @@ func Example_text() {
 	average, _ := review.ParseNumber("270.6767 m/s", profile.Velocity, profile.Unit{})
 	s.Results = []review.Result{{Profile: "site", Code: "ec8-2004", Class: "C", Average: average}}
 	s.Printed = []review.Printed{{File: "report.md", Text: []string{
-		"Profile site is site class **B** under EN 1998-1,", "with an average velocity of 370.7 m/s (1216.2 ft/s).", "A stiffer one might be in site class A."}}}
+		"Profile site is site class **B** under EN 1998-1:2004 with AC:2009 and", "A1:2013, 3.1.2, with an average velocity of 370.7 m/s (1216.2 ft/s) over 30 m.", "", "A stiffer one might be in site class A."}}}
 	tell("text", s)
 	tell("text-mention", s)
 	// Output:
-	// answer: report.md:1: the text names a site class that results.json gives nowhere
+	// answer: report.md:1, site: the text gives another class than results.json for this profile under ec8-2004
 	//   claimed "class B", found "class C"
-	// answer: report.md:2: the text prints an average that results.json gives nowhere
-	//   claimed "370.7 m/s", found "270.7 m/s"
-	// answer: the submission: the text of the report prints the average of this result nowhere
+	// answer: report.md:1, site: the text gives another average than results.json for this profile under ec8-2004
+	//   claimed "370.7 m/s", found "270.68 m/s"
+	// answer: the submission: the text of report.md prints the average of this result nowhere
 	//   claimed "270.6767 m/s", found ""
-	// answer: the submission: the text of the report prints the class of this result nowhere
+	// answer: the submission: the text of report.md prints the class of this result nowhere
 	//   claimed "class C", found ""
-	// explain: report.md:3: the text names a site class that results.json gives nowhere
+	// note: report.md:4: the prose names a site class that results.json gives nowhere
 	//   claimed "class A", found "class C"
+}
+
+// From 5 m: 30.48 / (10/250 + 20.48/400) = 334.2 m/s, 1,096.5 ft/s; from
+// ground level 272.06 m/s. ASCE/SEI 7-16 measures from the ground surface.
+func Example_ownDatum() {
+	c := claim("asce-7-16", "D", "334.2 m/s")
+	c.Stated.Datum = profile.Known(5)
+	tell("own-datum", submission(plain, c))
+	c.Code, c.Class, c.Average = "ec8-2004", "C", claim("", "", "332.4 m/s").Average
+	tell("own-datum", submission(plain, c))
+	// Output:
+	// answer: site: the claim rests on a datum of 5 m below ground level that the submission states, and does not follow from 0 m; the code measures from the ground surface
+	//   claimed "class D, 334.2 m/s, under asce-7-16", found "class D, 272.06 m/s over 30.48 m from ground level, under asce-7-16"
+	// explain: site: the claim rests on a datum of 5 m below ground level that the submission states, and does not follow from 0 m; the code leaves that open
+	//   claimed "class C, 332.4 m/s, under ec8-2004", found "class C, 270.68 m/s over 30 m from ground level, under ec8-2004"
+}
+
+func Example_notClaimed() {
+	s := submission("profile,top (m),bottom (m),vs (m/s)\nA,0,40,300\nB,0,40,170\n", claim("ec8-2004", "C", ""))
+	s.Kind = review.SiteFolder
+	tell("not-claimed", s)
+	// Output:
+	// explain: site.csv, B: nothing is claimed of profile "B", which the submission holds
+	//   claimed "", found "class D, 170 m/s over 30 m from ground level, under ec8-2004"
+}
+
+func Example_mappedColumn() {
+	s := submission("top (m),bottom (m),vs (m/s)\n0,40,400\n", claim("ec8-2004", "B", ""))
+	s.Profiles[0].Unmapped = submission("top (m),bottom (m),vs (m/s)\n0,40,300\n", claim("ec8-2004", "B", "")).Profiles[0].Profile
+	tell("mapped-column", s)
+	// Output:
+	// answer: site.csv, site: the notebook's map takes another column for the shear-wave velocity than the file's own: layer 1 has 400 m/s in place of 300 m/s
+	//   claimed "400 m/s", found "300 m/s"
 }

@@ -14,7 +14,7 @@ import (
 
 // classCauses returns the ways in which the claimed class may have come out.
 func classCauses(c *Case) []Cause {
-	claimed := plainClass(c.Claim.Class)
+	claimed := plainClass(undescribed(plainClass(c.Claim.Class)))
 	isClaimed := func(class string) bool { return plainClass(class) == claimed }
 	var causes []Cause
 	add := func(id, format string, args ...any) {
@@ -33,10 +33,11 @@ func classCauses(c *Case) []Cause {
 		if average.Known() && !average.Means(v, 0) && isClaimed(c.Code.ClassOf(average.Value)) {
 			add("average", "the class of the claimed average, which is not that of the layers")
 		}
-		if class := twinClass(c.Code, v); isClaimed(class) {
+		beside := isClaimed(given) // the average is not the cause
+		if class := twinClass(c.Code, v); isClaimed(class) && !beside {
 			add("unit-print", "the bounds of the table's print in %s, which are no conversions of those in %s", c.Code.Twin.Unit.Name, c.Code.Unit.Name)
 		}
-		if class := misread(c.Code, v); isClaimed(class) {
+		if class := misread(c.Code, v); isClaimed(class) && !beside {
 			add("unit-bounds", "an average in %s held against bounds in %s", otherUnit(c.Code.Unit).Name, c.Code.Unit.Name)
 		}
 	}
@@ -44,6 +45,10 @@ func classCauses(c *Case) []Cause {
 		if class, ok := classUnder(c, c.Under); ok && isClaimed(class) {
 			add("other-code", "the class under %s, the code that the claim names", c.Under.Edition)
 		}
+	}
+	barred := ok && average.Known() && average.Means(v, 0) && isClaimed(c.Code.ClassOf(v)) && !isClaimed(c.Decision.Class)
+	if barred {
+		return first(causes) // the average is right, and what the code asks beside it is the cause
 	}
 	for _, other := range editions(c.Code) {
 		if c.Under != nil && other.ID == c.Under.ID {
@@ -53,7 +58,7 @@ func classCauses(c *Case) []Cause {
 			add("edition", "the class under another edition, %s", other.Edition)
 		}
 	}
-	if ok && !average.Known() {
+	if ok && !average.Known() && !isClaimed(c.Code.ClassOf(v)) {
 		for _, step := range []float64{1, 5, 10} {
 			if rounded := math.Round(v/c.Code.Unit.Factor/step) * step * c.Code.Unit.Factor; mayBe(c.Code, rounded, isClaimed) {
 				add("rounded", "the average rounded to the nearest %s %s before it was compared with the bound", short(step, 0), c.Code.Unit.Name)
@@ -213,6 +218,12 @@ func extensionCauses(c *Case) []Cause {
 		add(id, text, a.extended(id))
 	}
 	add("reached-only", "averaged over what was reached, in place of the code's depth", a.overReached())
+	end := a.all[len(a.all)-1].Bottom
+	mean := a.meanTo(end)
+	add("full-over-reached", "the code's depth divided by the travel time of what was reached", a.overReached()*a.thickness/(end-a.from))
+	add("reached-arithmetic", "the arithmetic mean by thickness of what was reached", mean)
+	add("carried-arithmetic", "the arithmetic mean by thickness with the deepest velocity carried on to the averaging depth",
+		(mean*(end-a.from)+a.all[len(a.all)-1].VsAt(end)*(a.from+a.thickness-end))/a.thickness)
 	slices.SortStableFunc(causes, func(x, y Cause) int { return rank(x) - rank(y) })
 	return first(causes)
 }

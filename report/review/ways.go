@@ -36,12 +36,16 @@ func says(text string) func(*averaging) string { return func(*averaging) string 
 var ways = []way{
 	{"arithmetic-mean", says("the arithmetic mean of the velocities, weighted by thickness, in place of the average by travel time"), (*averaging).thicknessMean},
 	{"other-depth", func(a *averaging) string { return a.otherDepth().text }, func(a *averaging) float64 { return a.over(a.from, a.otherDepth().depth) }},
+	{"other-depth-arithmetic", func(a *averaging) string {
+		return "the arithmetic mean by thickness over " + metres(a.otherDepth().depth) + " in place of " + metres(a.thickness)
+	}, func(a *averaging) float64 { return a.meanTo(a.from + a.otherDepth().depth) }},
 	{"datum", says("averaged from ground level in place of the stated datum"), (*averaging).fromGround},
 	{"foundation", says("averaged from the underside of the foundation in place of the datum of the code"), (*averaging).fromFoundation},
 	{"datum-end", says("averaged from the datum down to the averaging depth below ground level, so over less than that depth"), (*averaging).datumEnd},
 	{"last-layer", says("the lowest layer or half-space left out, the average ended at its top"), (*averaging).withoutLast},
 	{"last-time", says("the travel time of the lowest layer or half-space left out, the full depth kept"), (*averaging).withoutLastTime},
 	{"feet-velocity", says("velocities in ft/s taken for m/s"), func(a *averaging) float64 { return a.right / profile.Foot }},
+	{"other-depth-feet", func(a *averaging) string { return a.otherDepth().text + ", and the number of ft/s written as m/s" }, func(a *averaging) float64 { return a.over(a.from, a.otherDepth().depth) / profile.Foot }},
 	{"metre-velocity", says("velocities in m/s taken for ft/s"), func(a *averaging) float64 { return a.right * profile.Foot }},
 	{"feet-depth", says("depths in feet taken for metres"), func(a *averaging) float64 { return a.over(a.from, a.thickness*profile.Foot) }},
 	{"metre-depth", says("depths in metres taken for feet"), func(a *averaging) float64 { return a.over(a.from, a.thickness/profile.Foot) }},
@@ -92,6 +96,9 @@ func averageCauses(c *Case, claim Number) []Cause {
 		if fits(claim, v) && !same(v, a.right) {
 			causes = append(causes, Cause{w.id, w.text(a), claim.in(v), false})
 		}
+	}
+	if from, ok := a.otherDatum(claim); ok && len(causes) == 0 {
+		causes = append(causes, Cause{"other-datum", "averaged over the code's depth from a datum that is not stated, about " + short(from, 1) + " m below ground level", claim.in(claim.Value), true})
 	}
 	if step, ok := coarser(claim, a.right); ok {
 		causes = append(causes, Cause{ID: "rounded", Text: "the average rounded to the nearest " + step})
@@ -183,6 +190,38 @@ func (a *averaging) datumEnd() float64 {
 		return math.NaN()
 	}
 	return a.over(a.from, a.thickness-a.from)
+}
+
+// otherDatum is the datum between ground level and a deep basement, to a tenth
+// of a metre, from which the average comes out as it is claimed; false where
+// there is none.
+func (a *averaging) otherDatum(claim Number) (float64, bool) {
+	const deepest = 100                // tenths of a metre
+	for _, step := range []int{5, 1} { // datums are stated to half a metre first
+		for k := step; k <= deepest; k += step {
+			from := float64(k) / 10
+			if math.Abs(from-a.from) > 0.05 && fits(claim, a.over(from, a.thickness)) {
+				return from, true
+			}
+		}
+	}
+	return 0, false
+}
+
+// meanTo is the arithmetic mean by thickness from the datum to a depth, of a
+// profile that reaches there.
+func (a *averaging) meanTo(to float64) float64 {
+	sum := 0.0
+	for _, l := range a.all {
+		top, bottom := max(l.Top, a.from), min(l.Bottom, to)
+		if bottom > top {
+			sum += (bottom - top) * (l.VsAt(top) + l.VsAt(bottom)) / 2
+		}
+	}
+	if end := a.all[len(a.all)-1].Bottom; end < to-vs30.Touching || to <= a.from {
+		return math.NaN()
+	}
+	return sum / (to - a.from)
 }
 
 // sum adds f of every row of the working.

@@ -100,6 +100,50 @@ func TestPlantedThirtyMetres(t *testing.T) {
 	}
 }
 
+// TestPlantedOverThirtyMetres: under a code of feet the arithmetic mean over
+// 30 m, and the average over 30 m in ft/s written as m/s.
+func TestPlantedOverThirtyMetres(t *testing.T) {
+	for id, v := range map[string]float64{
+		"other-depth-arithmetic": (4*160 + 8*240 + 10*310 + 8*450.) / 30,
+		"other-depth-feet":       30 / (4./160 + 8./240 + 10./310 + 8./450) / 0.3048,
+	} {
+		f := finding(t, review.Examine(submission(four, claim("asce-7-16", "", mps(v, 2))), review.Desk{}), "average")
+		if len(f.Causes) == 0 || f.Causes[0].ID != id {
+			t.Errorf("%s: %s is explained by %+v", id, mps(v, 2), f.Causes)
+		}
+	}
+}
+
+// TestPlantedUnstatedDatum: averaged from 1.5 m, which nothing states: 2.5 m
+// of 160, 8 m of 240, 10 m of 310 and 9.5 m of 450 m/s.
+func TestPlantedUnstatedDatum(t *testing.T) {
+	v := 30 / (2.5/160 + 8./240 + 10./310 + 9.5/450)
+	f := finding(t, review.Examine(submission(four, claim("ec8-2004", "", mps(v, 1))), review.Desk{}), "average")
+	if len(f.Causes) != 1 || f.Causes[0].ID != "other-datum" || !strings.Contains(f.Causes[0].Text, "about 1.5 m") {
+		t.Errorf("%+v", f.Causes)
+	}
+}
+
+// TestBarredClassHasOneCause: 5 m of 300 and 5 m of 600 m/s over 3,000 m/s
+// average to class B of ASCE/SEI 7-16, which the soil above the rock bars:
+// the average is right, and no other way of averaging is the cause.
+func TestBarredClassHasOneCause(t *testing.T) {
+	const table = "top (m),bottom (m),vs (m/s)\n0,5,300\n5,10,600\n10,,3000\n"
+	v := 30.48 / (5./300 + 5./600 + 20.48/3000)
+	f := finding(t, review.Examine(submission(table, claim("asce-7-16", "B", mps(v, 1))), review.Desk{}), "class")
+	if len(f.Causes) != 1 || f.Causes[0].ID != "condition" {
+		t.Errorf("%+v", f.Causes)
+	}
+}
+
+// TestCubeRootOfN: 80 N^(1/3) of 5, 10, 20, 30: 136.8, 172.4, 217.2, 248.6.
+func TestCubeRootOfN(t *testing.T) {
+	const table = "# basis: measured\ntop (m),bottom (m),vs (m/s),N\n0,5,136.8,5\n5,10,172.4,10\n10,20,217.2,20\n20,40,248.6,30\n"
+	if f := finding(t, review.Examine(submission(table, claim("ec8-2004", "C", "")), review.Desk{}), "correlated-as-measured"); !strings.Contains(f.Text, "80 N^(1/3)") {
+		t.Errorf("%s", f.Text)
+	}
+}
+
 // TestPlantedGradient: 200 m/s growing to 400 m/s over 20 m, then 500 m/s.
 // Right: 20 m take ln(400/200)·20/200 s. With the mean 300 m/s they take
 // 20/300 s, with the top 20/200 s.
@@ -131,7 +175,9 @@ func TestPlantedVp(t *testing.T) {
 func TestPlantedShort(t *testing.T) {
 	const table = "top (m),bottom (m),vs (m/s)\n0,4,160\n4,12,240\n12,22,310\n"
 	time := 4./160 + 8./240 + 10./310
-	for id, v := range map[string]float64{"constant-velocity": 30 / (time + 8./310), "reached-only": 22 / time} {
+	mean := 4*160 + 8*240 + 10*310.
+	for id, v := range map[string]float64{"constant-velocity": 30 / (time + 8./310), "reached-only": 22 / time,
+		"full-over-reached": 30 / time, "reached-arithmetic": mean / 22, "carried-arithmetic": (mean + 8*310) / 30} {
 		r := review.Examine(submission(table, claim("ec8-2004", "", mps(v, 2))), review.Desk{})
 		f := finding(t, r, "extension-unsaid")
 		if r.Outcome != review.Differs || len(f.Causes) == 0 || f.Causes[0].ID != id {

@@ -106,10 +106,10 @@ func (c *Case) Found() string {
 	return text + ", under " + c.Code.ID
 }
 
-// Agrees reports whether the class and the average that are claimed are those
-// that were found.
+// Agrees reports whether the class and the average that are claimed, and the
+// depth that it is said to be taken over, are those that were found.
 func (c *Case) Agrees(tolerance float64) bool {
-	if c.Err != nil || !c.Claim.saysSomething() {
+	if c.Err != nil || !c.Claim.saysSomething() || c.overOtherDepth() {
 		return false
 	}
 	v, _, _, ok := c.average()
