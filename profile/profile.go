@@ -48,6 +48,8 @@ type Layer struct {
 	Basis   Basis
 	Refusal bool // penetration was refused in this layer
 
+	EnergyRatio float32 // %, of the energy of the free fall in the tests behind N; 0 if not stated
+
 	Line, Column int32 // place of the velocity in its file, from 1; 0 if not read from one
 }
 
@@ -192,7 +194,7 @@ func (p *Profile) DepthModelled() float64 {
 	if len(p.Layers) == 0 {
 		return 0
 	}
-	last := p.Layers[len(p.Layers)-1]
+	last := &p.Layers[len(p.Layers)-1]
 	if last.HalfSpace() {
 		return last.Top
 	}

@@ -10,13 +10,17 @@ import (
 // such boundaries exactly. A layer is thicker than Joint.
 const Joint = 1e-6
 
-// Limits that Validate holds every profile to. They lie far outside anything
-// a site survey can find (common practice; the fastest waves in the Earth's
-// mantle travel at about 14 km/s, from memory) and keep the sums made from a
-// profile finite.
+// Limits that Validate holds every profile to. The slowest peats shear at about
+// 20 to 30 m/s, and the rock of the Earth's crust stays below 4,000 m/s; Vs
+// outside MinVelocity to MaxVelocity is a slip of the unit, a separator of
+// thousands taken for a decimal point, or a number that stands for no value
+// (common practice, from memory). Those of Vp and depth are far outside anything
+// that a site survey can find, and keep the sums made from a profile finite.
 const (
-	MinVelocity = 1.0   // m/s, of S and P waves
-	MaxVelocity = 20000 // m/s, of S and P waves
+	MinVelocity = 10.0  // m/s, of S waves
+	MaxVelocity = 5000  // m/s, of S waves
+	MinVp       = 1.0   // m/s, of P waves
+	MaxVp       = 20000 // m/s, of P waves
 	MaxDepth    = 1e5   // m, of a boundary
 )
 
@@ -179,21 +183,43 @@ func (l *Layer) vpVs() float64 { return l.Vp / max(l.Vs, l.VsBottom) }
 
 // velocity looks at one velocity, and reports whether it can be one.
 func (v *validator) velocity(l *Layer, i int, name string, x float64) bool {
+	slowest, fastest := MinVelocity, float64(MaxVelocity)
+	if name == "Vp" {
+		slowest, fastest = MinVp, MaxVp
+	}
 	switch {
 	case !finite(x):
 		v.at(l, "", "%s %v of layer %d is not a finite number", name, x, i+1)
 	case x == 0 && name == "Vs":
 		v.at(l, ZeroVsHint, "Vs of layer %d is zero: %s", i+1, ZeroVsReason)
 	case x <= 0:
-		v.at(l, "", "%s %.6g m/s of layer %d is not positive", name, x, i+1)
-	case x < MinVelocity:
-		v.at(l, "check the unit of velocity", "%s %.6g m/s of layer %d is slower than %g m/s", name, x, i+1, float64(MinVelocity))
-	case x > MaxVelocity:
-		v.at(l, "check the unit of velocity", "%s %.6g m/s of layer %d is faster than %d m/s", name, x, i+1, MaxVelocity)
+		v.at(l, HintNull(x), "%s %.6g m/s of layer %d is not positive", name, x, i+1)
+	case x < slowest:
+		v.at(l, HintSlow, "%s %.6g m/s of layer %d is slower than %g m/s", name, x, i+1, slowest)
+	case x > fastest:
+		hint := HintNull(x)
+		if hint == "" {
+			hint = "check the unit of velocity, and whether the number stands for no value"
+		}
+		v.at(l, hint, "%s %.6g m/s of layer %d is faster than %g m/s", name, x, i+1, fastest)
 	default:
 		return true
 	}
 	return false
+}
+
+// HintSlow says what a velocity that is too slow may come from.
+const HintSlow = "check the unit of velocity, and whether a point is a separator of thousands"
+
+// HintNull says of a number that is written for no value, such as -999.25 or
+// 9999, that it is one; "" of any other (the null values of logs and of
+// databases; common practice).
+func HintNull(x float64) string {
+	switch math.Abs(x) {
+	case 999, 9999, 99999, 999999, 999.25, 9999.25, 99, 999.99, 9999.99, 999.9:
+		return fmt.Sprintf("%v is often written for no value: give the layer its velocity, or end the profile above it", x)
+	}
+	return ""
 }
 
 // quantities looks at the optional quantities that layer l states.

@@ -2,6 +2,7 @@ package delimited
 
 import (
 	"slices"
+	"strings"
 
 	"shearbook/profile"
 )
@@ -40,18 +41,14 @@ func (r *reader) readHeader() bool {
 	if !r.mapColumns() {
 		return false
 	}
-	return r.isProfile() && r.decideDepth() && r.indexColumns() && r.required() && r.readUnits()
+	return r.isProfile() && r.decideDepth() && r.indexColumns() && r.required() && r.readUnits() && r.bottomsUnread()
 }
 
 // isProfile tells of a header of measurements that velocities have yet to be
 // found from.
 func (r *reader) isProfile() bool {
-	for i := range r.columns.list {
-		if r.columns.list[i].quantity == profile.Vs {
-			return true
-		}
-	}
-	text, hint, measured := Measurements(r.headings())
+	vs := slices.ContainsFunc(r.columns.list, func(c column) bool { return c.quantity == profile.Vs })
+	text, hint, measured := measurements(r.headings(), vs)
 	if measured {
 		r.fault(r.headerSpot(), hint, "%s", text)
 	}
@@ -160,7 +157,11 @@ func (r *reader) decideDepth() bool {
 		c.quantity = profile.Bottom
 		r.note("depth-as-bottom", c, "the bottom", "its first value is the first thickness")
 	default:
-		r.fault(c.spot, "name it top or bottom; a first value of 0 would make it the top", "column %s may be the top or the bottom of the layers", quote(c.name))
+		hint := "name it top or bottom; a first value of 0 would make it the top"
+		if better := r.firstRowHint(i); better != "" {
+			hint = better
+		}
+		r.fault(c.spot, hint, "column %s may be the top or the bottom of the layers", quote(c.name))
 		return false
 	}
 	return true
@@ -195,6 +196,49 @@ func (r *reader) firstValues(i, j int) (first, second float64) {
 	return first, second
 }
 
+// firstRowHint says what to do where the first row has no number in the column
+// of depths: it holds more of the header, or ranges.
+func (r *reader) firstRowHint(i int) string {
+	ahead := r.scan
+	ahead.cells = nil
+	for range 3 {
+		if ok, bad := ahead.next(); !ok || bad != nil {
+			return ""
+		}
+		text := string(ahead.cell(i))
+		if isRange(text) {
+			return "give the top and the bottom of each layer in columns of their own"
+		}
+		for j := range ahead.cells {
+			if parseHeading(string(ahead.cells[j].text)).quantity != profile.Unknown {
+				return "write the header in one row, such as top (m),bottom (m),vs (m/s)"
+			}
+		}
+		if _, problem := metadataNumber(text); problem == "" {
+			return ""
+		}
+	}
+	return ""
+}
+
+// isRange reports whether a text gives two numbers, as 0-5 or 5 to 12.
+func isRange(text string) bool {
+	from, rest := cutNumber(strings.TrimSpace(text))
+	if i := strings.IndexAny(from, "-–−"); i > 0 {
+		from, rest = from[:i], from[i:]
+	}
+	rest = strings.TrimSpace(rest)
+	for _, word := range []string{"-", "–", "−", "—", "to", "bis", "..", "/", "~"} {
+		if to, found := strings.CutPrefix(rest, word); found {
+			to, _ = cutNumber(strings.TrimSpace(to))
+			_, bad1 := metadataNumber(from)
+			_, bad2 := metadataNumber(to)
+			return bad1 == "" && bad2 == ""
+		}
+	}
+	return false
+}
+
 // indexColumns finds the column of each quantity.
 func (r *reader) indexColumns() bool {
 	ok := true
@@ -207,7 +251,11 @@ func (r *reader) indexColumns() bool {
 		switch {
 		case c.quantity == profile.Unknown:
 		case before >= 0:
-			r.fault(c.spot, "keep one, or rename one of them", "columns %s and %s both give %s",
+			hint := "keep one, or rename one of them"
+			if better := r.firstRowHint(i); better != "" {
+				hint = better
+			}
+			r.fault(c.spot, hint, "columns %s and %s both give %s",
 				quote(r.columns.list[before].name), quote(c.name), c.quantity)
 			ok = false
 		default:

@@ -16,7 +16,7 @@ func (r *reader) readUnits() bool {
 			r.unitFromRow(c, &row, i)
 		}
 		if c.problem != "" {
-			r.fault(c.spot, "", "column %s: %s", quote(c.name), c.problem)
+			r.fault(c.spot, hintBrackets, "column %s: %s", quote(c.name), c.problem)
 			r.table.unitless = true
 			c.unit.Factor = 1 // the numbers are checked all the same
 			continue
@@ -28,6 +28,8 @@ func (r *reader) readUnits() bool {
 	r.reading.Columns = r.readingColumns()
 	return true
 }
+
+const hintBrackets = `state one unit, and nothing else in brackets, as "vs (m/s)"`
 
 // unitRow looks for a row of units under the header: no column that must have
 // a unit holds a number there, and at least one of them a unit. It is read
@@ -53,7 +55,7 @@ func (r *reader) unitRow() (scanner, bool) {
 		if _, problem := metadataNumber(text); problem == "" {
 			return ahead, false
 		}
-		if _, ok := unitOf(text, q.Dimension()); ok {
+		if _, ok := columnUnit(text, q.Dimension()); ok {
 			found = true
 		}
 	}
@@ -83,7 +85,7 @@ func (r *reader) unitFromRow(c *column, row *scanner, i int) {
 		c.unitText = text
 		return
 	}
-	u, ok := unitOf(text, d)
+	u, ok := columnUnit(text, d)
 	switch {
 	case !ok && !needsUnit(c.quantity):
 	case !ok:
@@ -119,7 +121,11 @@ func (r *reader) settleUnit(c *column) {
 		return
 	}
 	if needsUnit(c.quantity) {
-		r.fault(c.spot, hintUnit(c), "column %s states no unit", quote(c.name))
+		hint := hintUnit(c)
+		if better := r.firstRowHint(r.columns.index[c.quantity]); better != "" {
+			hint = better
+		}
+		r.fault(c.spot, hint, "column %s states no unit", quote(c.name))
 		r.table.unitless = true
 	}
 	c.unit.Factor = 1
@@ -130,7 +136,7 @@ func (r *reader) mappedUnit(c *column) {
 	if c.mapped == nil || c.mapped.unit == "" {
 		return
 	}
-	u, ok := unitOf(c.mapped.unit, c.quantity.Dimension())
+	u, ok := columnUnit(c.mapped.unit, c.quantity.Dimension())
 	switch {
 	case !ok: // it belongs to the heading
 	case c.unit.Name == "":

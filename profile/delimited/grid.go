@@ -20,6 +20,7 @@ type Table struct {
 
 	text       []byte  // its rows with tabs between their cells
 	rows       []int32 // row of the sheet in which each line of text stands
+	totals     map[int32]int32
 	statements []statement
 }
 
@@ -49,6 +50,15 @@ func (t *Table) Row(row int, cells []string) {
 	}
 	t.text = append(t.text, '\n')
 	t.rows = append(t.rows, int32(row))
+}
+
+// Totals says that the cell in the given row and column of the sheet holds a sum or
+// an average of the cells above it, or the label of a row of such.
+func (t *Table) Totals(row, column int) {
+	if t.totals == nil {
+		t.totals = map[int32]int32{}
+	}
+	t.totals[int32(row)] = int32(column)
 }
 
 // cell adds the text of a cell, quoted where the scanner would take it for
@@ -89,7 +99,7 @@ func (t *Table) Read(reading profile.Reading, opt Options) ([]profile.Profile, e
 		return nil, err
 	}
 	r.scan = newScanner(t.text)
-	r.scan.grid = &grid{rows: t.rows, column: t.Column}
+	r.scan.grid = &grid{rows: t.rows, column: t.Column, totals: t.totals}
 	r.preamble = preamble{statements: t.statements, seen: map[string]int{}, forced: '\t'}
 	_ = r.apply() && r.readHeader() && r.readRows() && r.assemble()
 	if err := r.err(); err != nil {
@@ -102,6 +112,7 @@ func (t *Table) Read(reading profile.Reading, opt Options) ([]profile.Profile, e
 type grid struct {
 	rows   []int32
 	column int
+	totals map[int32]int32 // column of the cell by which a row is one of totals, by row
 }
 
 // spot is the cell that begins after what stands before it in its line.

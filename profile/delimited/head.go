@@ -27,7 +27,7 @@ type Head struct {
 // ReadHead reads the top of a table from the beginning of its file, which must
 // end with a whole row unless it is the whole file. What the beginning shows of
 // decimal commas holds for the whole file. It returns nil and no error where the
-// table has no column of profile names, or is not in UTF-8 or Windows-1252; and
+// table has no column of profile names, gives slowness for velocity, or is not in UTF-8 or Windows-1252; and
 // an error, a profile.Faults, where no profile of the file can be read.
 func ReadHead(file string, beginning []byte, opt Options) (*Head, error) {
 	h := &Head{r: reader{collector: collector{file: file}, reading: profile.Reading{File: file, Encoding: "UTF-8"}}}
@@ -50,7 +50,7 @@ func ReadHead(file string, beginning []byte, opt Options) (*Head, error) {
 	if !(r.readPreamble() && r.readHeader()) || r.total > 0 {
 		return nil, r.err()
 	}
-	if !r.has(profile.ProfileName) {
+	if !r.has(profile.ProfileName) || slices.ContainsFunc(r.columns.list, func(c column) bool { return isSlow(c.unit) }) {
 		return nil, nil
 	}
 	r.readNumerals()

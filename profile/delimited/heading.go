@@ -91,7 +91,7 @@ func (h *heading) bracketed(groups []string) {
 		return
 	}
 	for _, g := range groups {
-		u, ok := unitOf(g, d)
+		u, ok := columnUnit(g, d)
 		switch {
 		case ok && h.unit.Name != "" && h.unit != u:
 			h.problem = "two units, " + h.unit.Name + " and " + u.Name

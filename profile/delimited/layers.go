@@ -35,11 +35,19 @@ func (r *reader) number(q profile.Quantity) (float64, state) {
 		r.fault(r.scan.place(i), numerals.hintNumber(text), "%s %s %s", q, quote(text), problem)
 		return 0, faulty
 	}
-	if d := q.Dimension(); d != profile.Dimensionless {
-		v *= r.columns.list[i].unit.Factor
+	switch unit := r.columns.list[i].unit; {
+	case q.Dimension() == profile.Dimensionless:
+	case q.Dimension() == profile.Velocity && isSlow(unit) && v != 0:
+		v = unit.Factor / v
+	default:
+		v *= unit.Factor
 	}
-	if math.IsInf(v, 0) {
+	switch {
+	case math.IsInf(v, 0):
 		r.fault(r.scan.place(i), "", "%s %s is not a finite number", q, quote(text))
+		return 0, faulty
+	case v > 0 && v < profile.MinVelocity && q.Dimension() == profile.Velocity && r.scan.grid == nil && r.scan.sep != ',' && pointThousands(text):
+		r.fault(r.scan.place(i), "write numbers without separators of thousands", "%s %s may have a decimal point or a separator of thousands", q, quote(text))
 		return 0, faulty
 	}
 	return v, good
@@ -63,7 +71,7 @@ func (r *reader) positive(q profile.Quantity) (float64, state) {
 	case q.MayBeZero():
 		r.cellFault(q, "", "is negative")
 	default:
-		r.cellFault(q, "", "is not positive")
+		r.cellFault(q, profile.HintNull(v), "is not positive")
 	}
 	return 0, faulty
 }
@@ -233,6 +241,8 @@ func (r *reader) bottomOf(top float64) (float64, state) {
 // bottomTooHigh tells of a bottom that is not below its top.
 func (r *reader) bottomTooHigh(top, bottom float64) {
 	switch {
+	case bottom == top && top > 0 && !r.has(profile.Top):
+		r.cellFault(profile.Bottom, hintStairs, "is the bottom of the layer above, too")
 	case bottom == 0:
 		r.cellFault(profile.Bottom, "leave the last bottom blank for a half-space", "is ground level")
 	case bottom < 0:
@@ -248,6 +258,7 @@ func (r *reader) bottomTooHigh(top, bottom float64) {
 const (
 	hintDownward = "depths are positive downward from ground level"
 	hintSort     = "sort the layers from the top down"
+	hintStairs   = "two rows with the same depth look like points of a drawn line: give a row for each layer"
 )
 
 // depth is a depth in words, in the unit of the column of q.

@@ -160,15 +160,29 @@ func (r *reader) mapColumn(item *mapItem, at int) {
 	switch name, unit, text := cutUnit(base, d); {
 	case len(groups) > 0:
 		c.name = base
-		if u, ok := unitOf(groups[len(groups)-1], d); ok {
+		if u, ok := columnUnit(groups[len(groups)-1], d); ok {
 			c.unit, c.unitText = u, groups[len(groups)-1]
 		}
 	case name != "":
 		c.name, c.unit, c.unitText = name, unit, text
 	}
-	if _, ok := unitOf(item.unit, d); item.unit != "" && !ok && item.match(c.text) < 2 {
+	if u := slowness(text); c.unit.Name == "" && d == profile.Velocity && u.Name != "" {
+		c.unit, c.unitText = u, u.Name
+	}
+	if _, ok := columnUnit(item.unit, d); item.unit != "" && !ok && item.match(c.text) < 2 {
 		c.problem = notAUnit(item.unit, d)
 	}
+	if unit := contradicts(text, item.quantity); unit != "" && c.unit.Name == "" {
+		c.problem = "its heading states " + quote(unit) + ", which is no unit of " + d.String()
+	}
+}
+
+// columnUnit is unitOf for a column, which may give velocities as slowness.
+func columnUnit(text string, d profile.Dimension) (profile.Unit, bool) {
+	if u := slownessUnit(text); d == profile.Velocity && u.Name != "" {
+		return u, true
+	}
+	return unitOf(text, d)
 }
 
 // cutUnit cuts a heading into a name and the unit of a dimension behind it; the

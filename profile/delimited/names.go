@@ -15,12 +15,12 @@ var names = map[profile.Quantity][]string{
 	},
 	profile.Top: {
 		"top", "from", "start", "depth top", "top depth", "depth from", "from depth", "depth to top",
-		"depth start", "start depth", "top of layer", "layer top", "z top", "ztop",
+		"depth start", "start depth", "top of layer", "depth to top of layer", "layer top", "z top", "ztop",
 	},
 	profile.Bottom: {
 		"bottom", "to", "base", "end", "depth bottom", "bottom depth", "depth to", "to depth",
 		"depth to bottom", "depth base", "base depth", "depth to base", "depth end", "end depth",
-		"bottom of layer", "base of layer", "layer bottom", "layer base", "z bottom", "zbottom", "z base",
+		"bottom of layer", "base of layer", "depth to base of layer", "depth to bottom of layer", "layer bottom", "layer base", "z bottom", "zbottom", "z base",
 	},
 	profile.Thickness: {"thickness", "thickness h", "layer thickness", "layer thickness h", "h", "thk", "thick"},
 	profile.Vs: {

@@ -116,6 +116,13 @@ func thousands(text []byte) bool {
 	return true
 }
 
+// pointThousands reports whether a number looks like 1.400: where commas are
+// decimal its point is there for the eye only.
+func pointThousands(text []byte) bool {
+	head, rest, found := bytes.Cut(text, []byte("."))
+	return found && len(head) <= 3 && allDigits(head) && head[0] != '0' && len(rest) == 3 && allDigits(rest)
+}
+
 // decimalComma reports whether a number has one comma that can only be a
 // decimal one.
 func decimalComma(text []byte) bool {

@@ -140,6 +140,10 @@ func (r *reader) row() bool {
 	}
 	s := &r.table.stacks[len(r.table.stacks)-1]
 	before := r.total
+	if r.totals() {
+		s.faulty = true
+		return true
+	}
 	r.tooManyCells()
 	r.table.layers = append(r.table.layers, profile.Layer{})
 	l := &r.table.layers[len(r.table.layers)-1]
@@ -291,7 +295,7 @@ func (r *reader) topOf(s *stack, first bool) (float64, state) {
 	top, st := r.positive(profile.Top)
 	switch {
 	case st == blank:
-		r.cellFault(profile.Top, "", "is blank")
+		r.cellFault(profile.Top, "give the top of every layer, and remove rows that hold totals or averages", "is blank")
 		return 0, faulty
 	case st == faulty || !known:
 		return top, st
@@ -304,7 +308,11 @@ func (r *reader) topOf(s *stack, first bool) (float64, state) {
 // closeAbove closes the layer above, which is given by its top alone.
 func (r *reader) closeAbove(s *stack, top float64) (float64, state) {
 	if top-s.top <= profile.Joint {
-		r.cellFault(profile.Top, hintSort, "is not below the top of the layer above, "+r.depth(profile.Top, s.top))
+		hint := hintSort
+		if top == s.top {
+			hint = hintStairs
+		}
+		r.cellFault(profile.Top, hint, "is not below the top of the layer above, "+r.depth(profile.Top, s.top))
 		return 0, faulty
 	}
 	r.table.layers[len(r.table.layers)-2].Bottom = top
@@ -331,7 +339,10 @@ func (r *reader) joint(s *stack, first bool, top, above float64) (float64, state
 // closeStack ends the profile last read.
 func (r *reader) closeStack() {
 	if n := len(r.table.stacks); n > 0 {
-		r.table.stacks[n-1].last = len(r.table.layers)
+		s := &r.table.stacks[n-1]
+		s.last = len(r.table.layers)
+		r.summed(s)
+		r.namedTotals(s)
 	}
 }
 

@@ -20,8 +20,14 @@ func (r *reader) noTable(vs, depth bool) (text, hint string) {
 	if hint, ok := r.headerElsewhere(); ok {
 		return text, hint
 	}
+	if hint, ok := oneColumn(headings); ok {
+		return text, hint
+	}
 	if hint := r.hintMissing(vs, depth); hint != "" {
 		return text, hint
+	}
+	if !vs && slices.ContainsFunc(headings, averageVs) {
+		return text, "an average is no profile: give the layers that it was made from, as top_m,bottom_m,vs_mps"
 	}
 	return text, hintTable
 }
@@ -53,6 +59,34 @@ func listed(headings []string) string {
 		seen = append(seen, quote(text))
 	}
 	return strings.Join(seen, ", ")
+}
+
+// averageVs reports whether a heading is one of averages of Vs.
+func averageVs(text string) bool {
+	p := " " + plain(text) + " "
+	return len(text) <= longestHeading && (strings.Contains(p, " vs30 ") || strings.Contains(p, " vs 30 ") || strings.Contains(p, " s30 ") || strings.Contains(p, " average "))
+}
+
+// oneColumn says what to do with a header whose cells nothing separates that
+// is read as a separator.
+func oneColumn(headings []string) (hint string, ok bool) {
+	if len(headings) != 1 || len(headings[0]) > longestHeading {
+		return "", false
+	}
+	n := 0
+	text := headings[0]
+	for _, part := range strings.FieldsFunc(text, func(c rune) bool { return c == '|' || c == ' ' }) {
+		if parseHeading(part).quantity != profile.Unknown {
+			n++
+		}
+	}
+	switch {
+	case strings.Contains(text, "|"):
+		return "put a comma, a semicolon or a tab between the cells, not |", true
+	case n >= 2:
+		return "put a comma, a semicolon or a tab between the cells, not blanks", true
+	}
+	return "", false
 }
 
 // headerElsewhere says what to do with a header that is none: numbers were
@@ -94,38 +128,39 @@ func (r *reader) hintMissing(vs, depth bool) string {
 
 // HintMap suggests the mapping of the columns that a header lacks to those of
 // its headings that are not read, the likeliest first; "" if there are none, or
-// none looks like what is lacking.
+// none looks like what is lacking. What a heading itself contradicts, by its unit
+// or by its words, is never suggested.
 func HintMap(vs, depth bool, unread []string) string {
-	var items, questions, others []string
-	suggest := func(q profile.Quantity, word, what, unit string) bool {
-		ranked := likely(q, unread)
-		if len(ranked) == 0 {
-			return false
-		}
-		item := word + "=" + ranked[0]
-		if !statesUnit(ranked[0], q.Dimension()) {
-			item += " [" + unit + "]"
-		}
-		items = append(items, strings.NewReplacer(`"`, "", `\`, "").Replace(item))
-		questions = append(questions, quote(ranked[0])+" "+what)
-		others = append(others, ranked[1:]...)
-		return true
-	}
+	var items []suggestion
+	var others []string
 	if !vs {
-		suggest(profile.Vs, "Vs", "the shear-wave velocity", "m/s")
+		if ranked := likely(profile.Vs, unread); len(ranked) > 0 {
+			what := "the shear-wave velocity"
+			if slowness(ranked[0]).Name != "" {
+				what = "the slowness of shear waves"
+			}
+			items, others = append(items, suggestion{"Vs", ranked[0], what, "m/s"}), ranked[1:]
+		}
 	}
-	if !depth && !suggest(profile.Top, "top", "the top of each layer", "m") {
-		suggest(profile.Bottom, "bottom", "the bottom of each layer", "m")
+	if !depth {
+		list, more := depthItems(slices.DeleteFunc(slices.Clone(unread), func(text string) bool { return isItem(items, text) }))
+		if items, others = append(items, list...), append(others, more...); len(list) == 0 && slices.ContainsFunc(unread, elevation) {
+			return "elevations are not read: give depths below ground level, as top_m,bottom_m,vs_mps"
+		}
 	}
 	if len(items) == 0 {
 		return ""
 	}
-	hint := "is " + strings.Join(questions, ", and ") + `? then add --map "` + strings.Join(items, `" --map "`) +
-		"\", or `map: [\"" + strings.Join(items, `", "`) + "\"]` to the profile in a notebook"
+	hint := mapHint(items)
+	others = slices.DeleteFunc(others, func(text string) bool { return isItem(items, text) })
 	if others = slices.Compact(others); len(others) > 0 {
 		hint += "; other columns: " + listed(others[:min(len(others), 3)])
 	}
 	return hint
+}
+
+func isItem(items []suggestion, text string) bool {
+	return slices.ContainsFunc(items, func(s suggestion) bool { return s.heading == text })
 }
 
 // likely are the headings that may be quantity q, the likeliest first: by the
@@ -138,12 +173,12 @@ func likely(q profile.Quantity, headings []string) []string {
 	}
 	var list []rated
 	for _, text := range headings {
-		if len(text) > longestHeading {
+		if len(text) > longestHeading || q == profile.Vs && cannotBeVs(text) {
 			continue
 		}
 		base, _ := brackets(text)
 		p, score := plain(base), 0
-		if statesUnit(text, q.Dimension()) {
+		if statesUnit(text, q.Dimension()) || q == profile.Vs && slowness(text).Name != "" {
 			score += 4
 		}
 		if profile.Nearest(p, names[q]) != "" {
@@ -163,9 +198,6 @@ func likely(q profile.Quantity, headings []string) []string {
 	}
 	return texts
 }
-
-// speedWords are words of velocities beside those in names.
-var speedWords = []string{"speed", "swave", "mps"}
 
 // statesUnit reports whether a heading ends in a unit of a dimension, in
 // brackets or not.

@@ -26,6 +26,10 @@ func (r *reader) document() {
 			r.version()
 			return
 		}
+		if r.apart {
+			r.list("profiles", r.profileApart)
+			return
+		}
 		r.list("profiles", r.profile)
 	})
 	switch {
@@ -34,7 +38,7 @@ func (r *reader) document() {
 		r.isForeign(at, r.foreignHint(), "the file is JSON, but has no key %q", documentKeys[0])
 	case !found.has(1):
 		r.fault(at, hintForm, "the file has no key %q", documentKeys[1])
-	case len(r.profiles) == 0 && r.Count() == 0:
+	case len(r.profiles)+len(r.found) == 0 && r.Count() == 0:
 		r.fault(at, "", "the list of profiles is empty")
 	}
 }

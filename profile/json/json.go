@@ -113,6 +113,8 @@ type reader struct {
 
 	reading   profile.Reading // what the readings of all profiles share
 	profiles  []profile.Profile
+	apart     bool            // each profile has faults of its own
+	found     []profile.Found // where apart
 	names     map[string]spot
 	layers    int            // in all profiles so far
 	foreign   *profile.Fault // the one thing to say of a file that is not of this form

@@ -103,9 +103,9 @@ func (r *reader) chooseShear() bool {
 func (r *reader) disagree(c *curve, apart float64, ok bool) bool {
 	a, b := r.vs.titled(), c.titled()
 	if !ok {
-		return r.stop(c.at, hintChoose, "the file has two shear curves that cannot be compared, %s and %s", a, b)
+		return r.stop(c.at, hintCurves(r.vs, c), "the file has two shear curves that cannot be compared, %s and %s", a, b)
 	}
-	return r.stop(c.at, hintChoose, "the file has two shear curves that differ by up to %.3g %%, %s and %s", 100*apart, a, b)
+	return r.stop(c.at, hintCurves(r.vs, c), "the file has two shear curves that differ by up to %.3g %%, %s and %s", 100*apart, a, b)
 }
 
 // titled is the name of a curve with its description.

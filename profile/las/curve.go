@@ -181,17 +181,17 @@ func (r *reader) shearCurves() bool {
 
 // hasShear looks whether there is a curve that may be Vs.
 func (r *reader) hasShear() bool {
-	n := 0
+	var list []*curve
 	for i := range r.curves {
 		if r.curves[i].role == shear {
-			n++
+			list = append(list, &r.curves[i])
 		}
 	}
 	const most = 8
-	if n > most {
-		return r.stop(r.curves[1].at, hintChoose, "%d curves may be Vs", n)
+	if n := len(list); n > most {
+		return r.stop(r.curves[1].at, hintCurves(list[:2]...), "%d curves may be Vs", n)
 	}
-	if n > 0 {
+	if len(list) > 0 {
 		return true
 	}
 	for i := range r.curves[1:] {
@@ -202,12 +202,33 @@ func (r *reader) hasShear() bool {
 		if c.item.unit == "" {
 			return r.stop(c.at, `state it in ~C as "VS.M/S", or with the units that are given for the file`, "curve %s states no unit", profile.Quote(c.name))
 		}
-		return r.stop(c.unitAt, "the curves are "+r.curveList(), "no curve is Vs: %s is in %s, which is not a unit of velocity or slowness", profile.Quote(c.name), profile.Quote(c.item.unit))
+		return r.stop(c.unitAt, r.hintUnit(c), "no curve is Vs: %s is in %s, which is not a unit of velocity or slowness", profile.Quote(c.name), profile.Quote(c.item.unit))
 	}
 	return r.stop(r.curves[0].at, "the curves are "+r.curveList()+`; name the one that is Vs, as --map "Vs=NAME"`, "no curve is Vs: none is named or described as shear")
 }
 
-const hintChoose = `choose one by its mnemonic, as --map "Vs=VS" or --map "Vs=VS:2"`
+// hintCurves is how to choose one of several curves.
+func hintCurves(list ...*curve) string {
+	var ways []string
+	for _, c := range list {
+		ways = append(ways, "--map "+profile.ShellWord("Vs="+c.name))
+	}
+	return "choose one by its mnemonic, as " + strings.Join(ways, " or ")
+}
+
+// hintUnit is what to do with a shear curve c in a unit of something else: name
+// another curve, or state the unit in the file, where it is the unit that is wrong.
+func (r *reader) hintUnit(c *curve) string {
+	hint := "the curves are " + r.curveList()
+	for i := range r.curves[1:] {
+		o := &r.curves[i+1]
+		if (o.kind == velocity || o.kind == slowness) && o.role == unread {
+			return hint + "; if another is Vs, add --map " + profile.ShellWord("Vs="+o.name)
+		}
+	}
+	return hint + "; if it is Vs, correct its unit in ~C, as " + c.mnemonic + ".US/F or " + c.mnemonic + ".M/S, or leave it out there and add --map " +
+		profile.ShellWord("Vs="+c.name+" [us/ft]") + " or whatever unit its values are in"
+}
 
 // curveList is the curves and their units, for hints.
 func (r *reader) curveList() string {

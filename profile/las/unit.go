@@ -37,7 +37,7 @@ func (u unit) si(x float64) float64 {
 var slownesses = map[string]float64{
 	"us/ft": 1e6 * profile.Foot, "us/f": 1e6 * profile.Foot, "usec/ft": 1e6 * profile.Foot, "us/feet": 1e6 * profile.Foot, "usft": 1e6 * profile.Foot,
 	"us/m": 1e6, "usec/m": 1e6, "us/metre": 1e6, "us/meter": 1e6,
-	"s/m": 1, "s/km": 1000,
+	"ms/m": 1000, "msec/m": 1000, "s/m": 1, "s/km": 1000,
 }
 
 // spellings are those of other units that package profile does not know.

@@ -3,6 +3,7 @@ package las
 import (
 	"cmp"
 	"maps"
+	"math"
 	"path"
 	"slices"
 	"strconv"
@@ -111,15 +112,45 @@ func (r *reader) basis() profile.Basis {
 	return profile.Measured
 }
 
-// datum notes that depths are measured from another point than the ground.
+// datum notes that depths are measured from another point than the ground, or
+// may be: where the file says the height of a point on the rig and not from where
+// the log is measured.
 func (r *reader) datum() {
 	it := r.itemOf("LMF", "DMF", "LOGMF")
+	rig := r.itemOf("EKB", "KB", "ELEV_KB", "EKELLY", "EDF", "DF", "ELEV_DF", "ERT", "ERB", "EREF")
+	height, told := r.aboveGround(rig)
 	switch {
 	case r.opt.Datum != 0:
 		r.note("depth-datum", r.index.at, "depths are measured from %.4g m above ground level, as given; they were reckoned from the ground", r.opt.Datum)
-	case it != nil && !ground(it.value):
+	case it != nil && ground(it.value):
+	case it != nil && told:
+		r.note("depth-datum", it.valueAt, "depths are measured from %s, and %s stands %.4g m above ground level; they were taken as below ground level: if they are not, add --log-datum %s",
+			profile.Quote(it.value), rig.mnemonic, height, metres(height))
+	case it != nil:
 		r.note("depth-datum", it.valueAt, "depths are measured from %s; they were taken as below ground level", profile.Quote(it.value))
+	case told:
+		r.note("depth-datum", rig.valueAt, "the file states %s %s and a ground level %.4g m below it, and not from which of them depths are measured; they were taken as below ground level: if they are not, add --log-datum %s",
+			rig.mnemonic, strings.TrimSpace(rig.value+" "+strings.ToLower(rig.unit)), height, metres(height))
 	}
+}
+
+// metres is a height as an option takes it, 5m.
+func metres(x float64) string { return strconv.FormatFloat(math.Round(x*1000)/1000, 'f', -1, 64) + "m" }
+
+// aboveGround is the height in m of a point above ground level, where the
+// elevations of both are stated and it is above.
+func (r *reader) aboveGround(it *item) (height float64, ok bool) {
+	level := r.groundLevel()
+	if it == nil || !level.Known {
+		return 0, false
+	}
+	v, number := parseNumber([]byte(it.value))
+	u := parseUnit(it.unit)
+	if !number || u.kind != length || v == r.header.null || isNines(v) {
+		return 0, false
+	}
+	height = u.si(v) - level.Value
+	return height, height > 0.01 && height <= profile.MaxDepth
 }
 
 // ground reports whether a word for a datum means the ground.

@@ -5,8 +5,6 @@ import (
 	"encoding/hex"
 	"math"
 	"slices"
-	"strconv"
-	"strings"
 	"unicode/utf8"
 
 	"shearbook/profile"
@@ -32,6 +30,7 @@ func correlated(name string, data []byte, opt Options) ([]profile.Profile, error
 			return nil, unread
 		}
 	}
+	sayMeasured(profiles)
 	switch {
 	case err != nil && len(cones) == 0:
 		return nil, err
@@ -44,6 +43,17 @@ func correlated(name string, data []byte, opt Options) ([]profile.Profile, error
 			"the correlations named estimate from cones, and the file has none")
 	}
 	return append(profiles, cones...), nil
+}
+
+// sayMeasured notes on profiles that state velocities that no estimate is put in
+// their place.
+func sayMeasured(profiles []profile.Profile) {
+	for i := range profiles {
+		if p := &profiles[i]; !p.NoVelocity {
+			p.Notes = append(slices.Clip(p.Notes), profile.Note{ID: "correlation-not-used",
+				Text: "the profile states velocities of its own; the correlations that were asked for are not used"})
+		}
+	}
 }
 
 func isAGS(data []byte) bool {
@@ -139,23 +149,12 @@ func sourceOf(name string, data []byte) profile.Reading {
 	return r
 }
 
-// tableOf is the readings of a cone, of which there is one at least, as a table
-// of a file: not in its words, but in the units used inside, as it says.
+// tableOf is the readings of a cone, of which there is one at least, in the words
+// of the file.
 func tableOf(source profile.Reading, c *ags.Cone) *profile.Reading {
-	source.Columns = []profile.Column{
-		{Heading: "depth", Unit: "m", Quantity: profile.Depth}, {Heading: "qc", Unit: "kPa", Quantity: profile.TipResistance},
-		{Heading: "fs", Unit: "kPa", Quantity: profile.SleeveFriction}, {Heading: "u2", Unit: "kPa", Quantity: profile.PorePressure},
-	}
-	cell := func(x profile.Optional) string {
-		if !x.Known {
-			return ""
-		}
-		return strconv.FormatFloat(x.Value, 'g', 9, 64)
-	}
-	source.Metadata = []profile.Metadatum{{Key: "readings", Value: "converted to m and kPa", Line: c.Readings[0].Line}}
+	source.Columns = c.Columns
 	for _, r := range c.Readings {
-		cells := []string{cell(profile.Known(r.Depth)), cell(r.Tip), cell(r.Sleeve), cell(r.PorePressure)}
-		source.Rows = append(source.Rows, profile.Row{Line: r.Line, Cells: strings.Join(cells, profile.CellSeparator)})
+		source.Rows = append(source.Rows, profile.Row{Line: r.Line, Cells: r.Cells})
 	}
 	return &source
 }
@@ -171,9 +170,9 @@ func coneOf(h *ags.Hole, c *ags.Cone, source profile.Reading, taken map[string]b
 		name += "+"
 	}
 	taken[name] = true
-	cone := &correlate.Cone{Name: name, Position: h.Position, GroundLevel: h.GroundLevel, WaterTable: c.WaterTable, Source: tableOf(source, c)}
+	cone := &correlate.Cone{Name: name, Position: h.Position, GroundLevel: h.GroundLevel, WaterTable: c.WaterTable, AreaRatio: c.AreaRatio, Source: tableOf(source, c)}
 	for _, r := range c.Readings {
-		cone.Readings = append(cone.Readings, correlate.Reading(r))
+		cone.Readings = append(cone.Readings, correlate.Reading{Depth: r.Depth, Tip: r.Tip, Sleeve: r.Sleeve, PorePressure: r.PorePressure, Line: r.Line})
 	}
 	return cone
 }

@@ -37,7 +37,7 @@ func TestCorrelateTable(t *testing.T) {
 	}
 }
 
-// A profile that states velocities stays as it is.
+// A profile that states velocities stays as it is, and says so.
 func TestCorrelateMeasured(t *testing.T) {
 	const text = "top_m,bottom_m,vs_mps,N\n0,4,200,5\n"
 	plain, err := Bytes("b.csv", []byte(text), Options{})
@@ -45,7 +45,8 @@ func TestCorrelateMeasured(t *testing.T) {
 		t.Fatal(err)
 	}
 	got, err := Bytes("b.csv", []byte(text), by("imai-tonouchi-1982", "mayne-2006"))
-	if err != nil || got[0].Layers[0] != plain[0].Layers[0] || len(got[0].Notes) != len(plain[0].Notes) {
+	if err != nil || got[0].Layers[0] != plain[0].Layers[0] || len(got[0].Notes) != len(plain[0].Notes)+1 ||
+		got[0].Notes[len(plain[0].Notes)].Text != "the profile states velocities of its own; the correlations that were asked for are not used" {
 		t.Errorf("got %+v, %v", got, err)
 	}
 }
@@ -65,7 +66,7 @@ func TestCorrelateCone(t *testing.T) {
 		t.Errorf("got %+v", p)
 	}
 	r := p.Reading
-	if r == nil || len(r.Rows) != 3 || strings.Join(r.Rows[2].Split(), " ") != "1.25 5000 100 " || r.Rows[0].Line != 13 || len(r.SHA256) != 64 {
+	if r == nil || len(r.Rows) != 3 || strings.Join(r.Rows[2].Split(), " ") != "1.25 5 100 " || r.Columns[1].Heading != "SCPT_RES" || r.Columns[1].Unit != "MPa" || r.Columns[2].Unit != "kPa" || r.Rows[0].Line != 13 || len(r.SHA256) != 64 {
 		t.Errorf("got %+v", r)
 	}
 }
@@ -120,6 +121,7 @@ func TestCorrelateFaults(t *testing.T) {
 		{blows, "mayne-2006", "f: the correlations named estimate from cones, and the file has none"},
 		{gap, "imai-1977", "f:3:6: no correlation gives a velocity for layer 2, 4–12 m: imai-1977 needs N, which is not stated"},
 		{hole + cone, "robertson-2009", `f:13: cone "C1" gives no velocity: robertson-2009 needs σv, and the unit weight of the ground down to there is not stated`},
+		{hole + cone, "imai-1977", "f: the file gives neither a shear-wave velocity of the ground nor N nor su; it has LOCA, GEOL, SCPT"},
 		{hole, "mayne-2006", "f: the file gives neither a shear-wave velocity of the ground nor N nor su; it has LOCA, GEOL"},
 	} {
 		_, err := Bytes("f", []byte(c.data), by(c.id))

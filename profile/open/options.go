@@ -60,6 +60,7 @@ type form struct {
 	what string
 	uses []string // besides units
 	read func(name string, data []byte, opt *Options) ([]profile.Profile, error)
+	each func(name string, data []byte, opt *Options) ([]profile.Found, error) // nil where a fault is the whole file's
 }
 
 // The options, as messages call them.
@@ -76,22 +77,22 @@ const (
 var (
 	tableForm = form{"a table of layers", []string{useMap}, func(name string, data []byte, o *Options) ([]profile.Profile, error) {
 		return delimited.Read(name, data, delimited.Options{Units: o.Units, Map: o.Map})
-	}}
+	}, nil}
 	workbookForm = form{"a workbook", []string{useMap}, func(name string, data []byte, o *Options) ([]profile.Profile, error) {
 		return spreadsheet.Read(name, data, spreadsheet.Options{Units: o.Units, Map: o.Map})
-	}}
+	}, eachOfWorkbook}
 	agsForm = form{"an AGS4 file", []string{useMap, useCarryUp, useN60, useAllHoles}, func(name string, data []byte, o *Options) ([]profile.Profile, error) {
 		return ags.Read(name, data, ags.Options{Map: o.Map, CarryUp: o.CarryUp, N60: o.N60, Untimed: o.AllHoles})
-	}}
+	}, eachOfAGS}
 	lasForm = form{"a LAS file", []string{useMap, useStep, useBounds, useDatum, useCarryUp}, func(name string, data []byte, o *Options) ([]profile.Profile, error) {
 		return las.Read(name, data, las.Options{Units: o.Units, Map: o.Map, Step: o.Step, Bounds: o.Bounds, CarryUp: o.CarryUp, Datum: o.LogDatum})
-	}}
+	}, nil}
 	siteXMLForm = form{"a SiteXML file", nil, func(name string, data []byte, _ *Options) ([]profile.Profile, error) {
 		return sitexml.Read(name, data)
-	}}
+	}, eachOfSiteXML}
 	jsonForm = form{"a file of our own JSON", nil, func(name string, data []byte, _ *Options) ([]profile.Profile, error) {
 		return json.Read(name, data)
-	}}
+	}, eachOfJSON}
 )
 
 // forms are the forms of text that are no tables, by how they begin.

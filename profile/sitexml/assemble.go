@@ -37,6 +37,7 @@ func (r *reader) assemble() {
 			p.Survey.Basis = basisOf(c.analysis.methods)
 		}
 		notes := r.notes(c, s, sure)
+		r.judged = c
 		r.judge(c, &p, notes)
 		r.profiles = append(r.profiles, p)
 	}
@@ -161,11 +162,14 @@ func (r *reader) judge(c *column, p *profile.Profile, notes []profile.Note) {
 		return
 	}
 	if faults := profile.Validate(p); len(faults) > 0 {
-		r.Add(faults)
+		r.collector().Add(faults)
 		return
 	}
 	if fromNext > 0 {
 		notes = append(notes, r.note("bottom-from-next", c.spot, "layers without a bottom, %d of them, were ended at the top of the next", fromNext))
+	}
+	if text, ok := otherAverage(p); ok {
+		notes = append(notes, r.note("average-differs", c.spot, "%s", text))
 	}
 	if at, ok := lightLayer(p.Layers); ok {
 		notes = append(notes, r.note("density-suspect", at, "densities below 100 kg/m³ look as if they were in g/cm³; they were read in kg/m³, as the form says"))

@@ -44,6 +44,7 @@ type column struct {
 	count    quoted    // layerCount
 	layers   []profile.Layer
 	metadata []profile.Metadatum
+	faults   *profile.Collector // of its own, where profiles are read apart; nil if there are none
 	table
 }
 

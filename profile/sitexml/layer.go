@@ -103,7 +103,7 @@ func (t *table) leaveOut(name string, at spot) {
 // endLayer makes the layer out of its quantities. A top or bottom that is not
 // stated is NaN until the whole profile is known.
 func (r *reader) endLayer() {
-	l, c, before := r.walk.layer, r.walk.profile, r.Count()
+	l, c, before := r.walk.layer, r.walk.profile, r.collector().Count()
 	out := profile.Layer{Top: math.NaN(), Bottom: math.NaN()}
 	place := l.of[velocityS].spot
 	if l.of[velocityS].text == "" {
@@ -119,7 +119,7 @@ func (r *reader) endLayer() {
 			r.put(&out, i, v)
 		}
 	}
-	c.faulty = c.faulty || r.Count() > before
+	c.faulty = c.faulty || r.collector().Count() > before
 	c.row(l)
 	c.layers = append(c.layers, out)
 }

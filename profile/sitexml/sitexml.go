@@ -73,6 +73,8 @@ const (
 //   - count-differs: layerCount is not the number of layers.
 //   - bottom-from-next: layers had no bottom and end at the top of the next.
 //   - density-suspect: densities look as if they were in g/cm³.
+//   - average-differs: the Vs30 that the file states is not that of the
+//     profile.
 //   - not-preferred: the file prefers another profile.
 //   - several-sites: the file has several sites, and the analysis names none
 //     of them; the first was taken.
@@ -94,6 +96,8 @@ type reader struct {
 	layers  int // in all profiles
 
 	profiles []profile.Profile
+	apart    bool    // each profile has faults of its own
+	judged   *column // that is being judged; nil before
 }
 
 func (r *reader) read(data []byte) {
@@ -114,7 +118,7 @@ func (r *reader) read(data []byte) {
 
 // fault adds a fault.
 func (r *reader) fault(at spot, hint, format string, args ...any) {
-	r.Fault(at.place(), hint, format, args...)
+	r.collector().Fault(at.place(), hint, format, args...)
 }
 
 // stop adds a fault after which reading cannot go on.

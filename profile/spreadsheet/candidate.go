@@ -65,7 +65,7 @@ func (r *reader) noTable() {
 			unread = append(unread, heading)
 		}
 	}
-	if text, hint, ok := delimited.Measurements(c.headings); ok && !vs {
+	if text, hint, ok := delimited.Measurements(c.headings); ok {
 		r.fault(c.at, hint, "%s", text)
 		return
 	}

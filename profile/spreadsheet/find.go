@@ -197,6 +197,7 @@ func (t *table) add(r *row) {
 		}
 	}
 	t.Row(r.number, cells)
+	t.totals(r)
 	t.gap, t.last = false, r.number
 	if r.hidden {
 		t.hidden = append(t.hidden, r.number)

@@ -34,13 +34,13 @@ func TestNoTable(t *testing.T) {
 		{
 			cells{"Sheet1!A1": "Ferry Road", "Sheet1!B3": line("from here (m)", "S speed (m/s)"), "Sheet1!B4": line(0, 180)}, nil,
 			`a.xlsx:Sheet1!B3: no sheet holds a table of layers; the row most like a header: this does not look like a table of layers: no column of depth and none of Vs in "from here (m)", "S speed (m/s)"`,
-			`is "S speed (m/s)" the shear-wave velocity, and "from here (m)" the top of each layer? then add --map "Vs=S speed (m/s)" --map "top=from here (m)", or ` +
+			`is "S speed (m/s)" the shear-wave velocity, and "from here (m)" the top of each layer? then add --map 'Vs=S speed (m/s)' --map 'top=from here (m)', or ` +
 				"`map: [\"Vs=S speed (m/s)\", \"top=from here (m)\"]` to the profile in a notebook",
 		},
 		{
 			cells{"Sheet1!A1": line("top (m)", "bottom (m)", "speed (m/s)"), "Sheet1!A2": line(0, 5, 180)}, nil,
 			`a.xlsx:Sheet1!A1: no sheet holds a table of layers; the row most like a header: no column of Vs in "top (m)", "bottom (m)", "speed (m/s)"`,
-			`is "speed (m/s)" the shear-wave velocity? then add --map "Vs=speed (m/s)", or ` + "`map: [\"Vs=speed (m/s)\"]` to the profile in a notebook",
+			`is "speed (m/s)" the shear-wave velocity? then add --map 'Vs=speed (m/s)', or ` + "`map: [\"Vs=speed (m/s)\"]` to the profile in a notebook",
 		},
 		{
 			cells{"Sheet1!C2": line("Frequency (Hz)", "Phase velocity (m/s)"), "Sheet1!C3": line(10, 180)}, nil,

@@ -201,6 +201,9 @@ func (r *rowReader) add(kind, text string) {
 		r.row.cells = append(r.row.cells, "")
 	}
 	r.row.cells[r.column-1] = text
+	if r.cell.hasFormula && totals(r.cell.formula, r.column, r.row.number) {
+		r.row.totals = append(r.row.totals, r.column)
+	}
 	if unevaluated && r.sheet.formulas != nil {
 		r.sheet.formulas[[2]int{r.row.number, r.column}] = formulaText(r.cell.formula)
 	}

@@ -26,6 +26,7 @@ type row struct {
 	number int // from 1
 	hidden bool
 	cells  []string // from column A on
+	totals []int    // columns, from 1, of formulas that add up cells above them
 }
 
 // readSheet finds the tables of a sheet. A sheet whose rectangle of cells is

@@ -99,15 +99,19 @@ func Read(file string, data []byte, opt Options) ([]profile.Profile, error) {
 		return nil, err
 	}
 	r := reader{collector: collector{file: file}, opt: opt, mapping: mapping, mapped: make([]bool, len(opt.Map))}
-	sum := sha256.Sum256(data)
-	r.reading = profile.Reading{File: file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data)), Encoding: "XLSX"}
-	if archive, ok := r.checkZip(data); ok {
-		r.readBook(archive)
-	}
+	r.read(data)
 	if err := r.err(); err != nil {
 		return nil, err
 	}
 	return r.profiles, nil
+}
+
+func (r *reader) read(data []byte) {
+	sum := sha256.Sum256(data)
+	r.reading = profile.Reading{File: r.file, SHA256: hex.EncodeToString(sum[:]), Size: int64(len(data)), Encoding: "XLSX"}
+	if archive, ok := r.checkZip(data); ok {
+		r.readBook(archive)
+	}
 }
 
 // reader is the state of reading one file.
@@ -122,6 +126,8 @@ type reader struct {
 	cells    int
 	tables   []*table
 	profiles []profile.Profile
+	apart    bool            // each profile has faults of its own
+	found    []profile.Found // where apart
 }
 
 // place is the place of a cell.
@@ -144,6 +150,12 @@ func (r *reader) readTables() {
 	for i, t := range r.tables {
 		reading := r.reading
 		reading.Sheet = t.sheet.name
+		if r.apart {
+			if !r.tableApart(t, reading, began) {
+				return
+			}
+			continue
+		}
 		profiles, err := t.Read(reading, delimited.Options{Units: r.opt.Units})
 		t.Table = delimited.Table{} // its cells are in the profiles now
 		if err != nil {
@@ -157,10 +169,22 @@ func (r *reader) readTables() {
 			r.take(p, t, began)
 		}
 	}
-	if len(r.profiles) > 0 && len(left) > 0 {
-		p := &r.profiles[0]
+	if p := r.first(); p != nil && len(left) > 0 {
 		p.Notes = append(p.Notes, r.leftOut(left))
 	}
+}
+
+// first is the first profile that was read, nil if there is none.
+func (r *reader) first() *profile.Profile {
+	for i := range r.found {
+		if p := r.found[i].Profile; p != nil {
+			return p
+		}
+	}
+	if len(r.profiles) == 0 {
+		return nil
+	}
+	return &r.profiles[0]
 }
 
 // leaveOut takes the tables without velocities out, if others have them. It
@@ -210,12 +234,13 @@ func (r *reader) addFaults(err error) {
 	}
 }
 
+const hintNames = "give each table a title, a sheet or a column of profile names of its own"
+
 // take takes a profile of table t unless one of its name was taken before.
 func (r *reader) take(p profile.Profile, t *table, began map[string]profile.Place) {
 	at := r.place(t.sheet.name, p.Reading.Rows[0].Line, t.from+1)
 	if before, ok := began[p.Name]; ok {
-		r.fault(at, "give each table a title, a sheet or a column of profile names of its own", "duplicate profile %s: one of that name began at %s",
-			profile.Quote(p.Name), before.Cell)
+		r.fault(at, hintNames, "duplicate profile %s: one of that name began at %s", profile.Quote(p.Name), before.Cell)
 		return
 	}
 	began[p.Name] = at
