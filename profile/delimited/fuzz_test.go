@@ -32,6 +32,7 @@ func FuzzRead(f *testing.F) {
 	}
 	f.Add([]byte("\xff\xfet\x00o\x00p\x00"), "")
 	f.Add([]byte("#name:0\t0\nz,vs\n0,1"), "m,m/s")
+	f.Add([]byte("#operator:0\t0\n,Bottom ',vs mps\n,,10"), "")
 	f.Add([]byte("0"), strings.Repeat("0,", 23)) // no more faults of units than are told
 	f.Add([]byte("top_m,vs_mps\r0,1\r5,\xfc"), "m")
 	f.Fuzz(func(t *testing.T, data []byte, units string) {

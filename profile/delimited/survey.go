@@ -77,7 +77,7 @@ func (r *reader) applyTo(p *profile.Profile, name string, k key, st *statement) 
 	if k == "" || !r.first(name, k, st) {
 		return
 	}
-	if st.value == "" {
+	if oneLine(st.value) == "" {
 		r.fault(st.at(), "state it, or remove the line", "%s is blank", k)
 		return
 	}
@@ -85,13 +85,13 @@ func (r *reader) applyTo(p *profile.Profile, name string, k key, st *statement) 
 	case keyName:
 		r.nameFile(p, name, st)
 	case keyMethod:
-		p.Survey.Method = st.value
+		p.Survey.Method = oneLine(st.value)
 	case keyDate:
-		p.Survey.Date = st.value
+		p.Survey.Date = oneLine(st.value)
 	case keyLocation:
-		p.Survey.Location = st.value
+		p.Survey.Location = oneLine(st.value)
 	case keyOperator:
-		p.Survey.Operator = st.value
+		p.Survey.Operator = oneLine(st.value)
 	case keyBasis:
 		r.basis(p, st)
 	case keyGroundLevel:
@@ -121,9 +121,6 @@ func (r *reader) nameFile(p *profile.Profile, name string, st *statement) {
 		return
 	}
 	p.Name, r.preamble.named = oneLine(st.value), st.at()
-	if p.Name == "" {
-		r.fault(st.at(), "state it, or remove the line", "the name %s has nothing in it that can be printed", quote(st.value))
-	}
 }
 
 func (r *reader) basis(p *profile.Profile, st *statement) {
