@@ -1,6 +1,8 @@
 package batch
 
 import (
+	"bytes"
+
 	"shearbook/profile"
 	"shearbook/profile/delimited"
 )
@@ -60,26 +62,32 @@ type order struct {
 	First, Last string
 	Unordered   bool // by letters
 	Unnumbered  bool // by length, then letters
+
+	last []byte // room for Last while names are taken; see end
 }
 
 // ascends reports whether no name can have come twice.
 func (o *order) ascends() bool { return !o.Unordered || !o.Unnumbered }
 
-// next takes a name.
-func (o *order) next(name string) {
+// next takes a name. It does not allocate but for the first.
+func (o *order) next(name []byte) {
 	if o.First == "" {
-		o.First = name
+		o.First = string(name)
 	} else {
-		o.step(o.Last, name)
+		o.step(o.last, name)
 	}
-	o.Last = name
+	o.last = append(o.last[:0], name...)
 }
 
-func (o *order) step(before, name string) {
-	if name <= before {
+// end is called behind the last name.
+func (o *order) end() { o.Last, o.last = string(o.last), nil }
+
+func (o *order) step(before, name []byte) {
+	ascends := bytes.Compare(before, name) < 0
+	if !ascends {
 		o.Unordered = true
 	}
-	if len(name) < len(before) || len(name) == len(before) && name <= before {
+	if len(name) < len(before) || len(name) == len(before) && !ascends {
 		o.Unnumbered = true
 	}
 }
@@ -93,7 +101,7 @@ func (o *order) follow(next *order) {
 		*o = *next
 		return
 	}
-	o.step(o.Last, next.First)
+	o.step([]byte(o.Last), []byte(next.First))
 	o.Last = next.Last
 	o.Unordered = o.Unordered || next.Unordered
 	o.Unnumbered = o.Unnumbered || next.Unnumbered

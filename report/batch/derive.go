@@ -31,7 +31,7 @@ type DeriveOptions struct {
 
 	Codes []*siteclass.Code // of the rows, for titles, bounds and standing; what other codes the rows name is told without these
 	Facts report.Facts      // under which the rows were decided, but for what a manifest said
-	Near  float64           // %, the margin that was flagged; 0 is Near
+	Near  float64           // %, the margin that was flagged; 0 is Near, below 0 none
 
 	Title      string // "Seismic site classification: batch" if ""
 	Project    string
@@ -58,12 +58,7 @@ func (o *DeriveOptions) title() string {
 	return o.Title
 }
 
-func (o *DeriveOptions) near() float64 {
-	if o.Near == 0 {
-		return Near
-	}
-	return o.Near
-}
+func (o *DeriveOptions) near() float64 { return near(o.Near) }
 
 // Derive makes what opt asks for from summary.csv, faults.csv and sources.csv
 // in dir, and puts it beside them; datapackage.json always. It reads nothing

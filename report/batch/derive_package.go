@@ -51,7 +51,7 @@ func writePackage(w io.Writer, opt *DeriveOptions) error {
 		Resources: []dataResource{
 			csvResource("summary", Summary, "One row a profile and code, in the order of the input",
 				"Texts stand as the input has them. A spreadsheet program may take one that begins with = + - or @ for a formula: import such columns as text, or take the workbook, whose texts are typed.", Columns),
-			csvResource("faults", FaultsIn, "Every fault and note", "", FaultColumns),
+			csvResource("faults", FaultsIn, "Every fault, and every note where notes were asked for", "", FaultColumns),
 			csvResource("sources", Sources, "Every file that was read", "", SourceColumns),
 		}}
 	for _, r := range []struct {

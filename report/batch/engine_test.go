@@ -241,6 +241,48 @@ func TestFastIsOrdinary(t *testing.T) {
 		if o.Units < 650 || !strings.Contains(quick[Summary], ",reversed,") || !strings.Contains(quick[Summary], ",failed,") {
 			t.Errorf("%+v: %d units", facts.Extend, o.Units)
 		}
+		job.FaultsAlone = true
+		_, plain = runJob(t, job)
+		job.ordinary = false
+		_, alone := runJob(t, job)
+		if diff := cmp.Diff(plain, alone); diff != "" {
+			t.Errorf("%+v: the quick way without notes differs (-ordinary +quick):\n%.3000s", facts.Extend, diff)
+		}
+		compareAlone(t, quick, alone)
+	}
+}
+
+// compareAlone holds the tables of a job without its notes against those with
+// them: the same faults, and the same rows but for the number of notes.
+func compareAlone(t *testing.T, with, alone map[string]string) {
+	t.Helper()
+	var faults strings.Builder
+	for line := range strings.Lines(with[FaultsIn]) {
+		if !strings.HasPrefix(line, "note,") {
+			faults.WriteString(line)
+		}
+	}
+	if alone[FaultsIn] != faults.String() {
+		t.Errorf("the faults differ without notes")
+	}
+	want := rowsOf(t, with)
+	for i := range want {
+		want[i].Notes = 0
+	}
+	if diff := cmp.Diff(want, rowsOf(t, alone)); diff != "" {
+		t.Errorf("without notes: %.3000s", diff)
+	}
+}
+
+// A row of totals at the foot of a profile is no layer on the quick way either.
+func TestFastLeavesTotals(t *testing.T) {
+	text := []byte("profile,remark,bottom_m,vs_mps\nA,,5,150\nA,,12,220\nA,,20,400\nA,Total,40,256.7\nB,,9,180\nB,,45,300\n")
+	job := Job{Codes: mustCode(t, "asce-7-22")}
+	quick, _ := inMemory(t, job, text)
+	job.ordinary = true
+	plain, _ := inMemory(t, job, text)
+	if plain != quick || !strings.Contains(quick, ",A,asce-7-22,,") || !strings.Contains(quick, "the row is labelled") {
+		t.Errorf("ordinary:\n%s\nquick:\n%s", plain, quick)
 	}
 }
 
@@ -264,6 +306,12 @@ func FuzzFast(f *testing.F) {
 		quick, ok := inMemory(t, job, text)
 		job.ordinary = true
 		if plain, _ := inMemory(t, job, text); ok && plain != quick {
+			t.Error(cmp.Diff(plain, quick))
+		}
+		job.FaultsAlone = true
+		plain, _ := inMemory(t, job, text)
+		job.ordinary = false
+		if quick, _ = inMemory(t, job, text); ok && plain != quick {
 			t.Error(cmp.Diff(plain, quick))
 		}
 	})

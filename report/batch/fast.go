@@ -3,10 +3,11 @@ package batch
 import (
 	"bytes"
 	"math"
+	"slices"
 
 	"shearbook/profile"
 	"shearbook/profile/delimited"
-	"shearbook/vs30"
+	"shearbook/report"
 	"shearbook/vs30/extend"
 	"shearbook/vs30/siteclass"
 )
@@ -30,8 +31,17 @@ type fast struct {
 	top   bool // the table has a column of tops
 
 	base  profile.Profile    // what the head states of each profile, with the name and layers of the one read last
+	name  []byte             // of the profile read last; base has it once it is asked for
+	next  []byte             // a name that was found behind it, and is plain
 	quick []*siteclass.Quick // of each code; nil for those without
 	row   plainRow           // read last
+	usual bool               // the columns are name, top, bottom and velocity, in SI
+
+	brief  bool // neither notes nor reports are asked for: rows are written and nothing beside them
+	codes  []*siteclass.Code
+	frames []frame // of each code
+	found  []found // likewise
+	facts  report.Facts
 
 	placed bool // the table has columns of positions
 	place  [profile.EPSG - profile.Latitude + 1]placeCell
@@ -51,6 +61,7 @@ type plainRow struct {
 	name             []byte
 	top, bottom, vs  float64 // SI
 	column           int     // of vs
+	below            []byte  // the bottom with the separator behind it, where it was read by again
 	open, suspicious bool    // the bottom is blank, or may stand for a half-space
 }
 
@@ -62,7 +73,7 @@ type placeCell struct {
 
 // newFast returns what reads the plain profiles of a table, nil where it can
 // have none.
-func newFast(h *delimited.Head, set *setting) *fast {
+func newFast(h *delimited.Head, job *Job, set *setting) *fast {
 	f := &fast{head: h, sep: h.Separator(), base: h.Base()}
 	var seen [profile.Vs + 1]bool
 	for _, c := range h.Columns() {
@@ -86,20 +97,40 @@ func newFast(h *delimited.Head, set *setting) *fast {
 		f.relation, _ = extend.Find(constantVelocity) // it is there
 	}
 	for _, c := range set.codes {
-		f.quick = append(f.quick, c.Quick(set.facts.Datum, set.facts.Foundation))
+		q := c.Quick(set.facts.Datum, set.facts.Foundation)
+		f.quick, f.frames = append(f.quick, q), append(f.frames, newFrame(c, q))
 	}
+	f.usual = slices.Equal(f.roles, []role{{profile.ProfileName, f.roles[0].factor}, {profile.Top, 1}, {profile.Bottom, 1}, {profile.Vs, 1}})
+	f.codes, f.found = set.codes, make([]found, len(set.codes))
+	f.brief, f.facts = job.FaultsAlone && job.Reports == NoReports, set.facts
 	return f
 }
 
 // read reads the first profile of text, which begins with a row in the given
 // line. It returns the length of its rows and how many they are; 0 where the
-// profile is not plain.
+// profile is not plain. Its limits of layers and velocities are those within
+// which profile.Doubts has nothing to say of a profile that states velocities
+// alone, of no survey, or nearer.
 func (f *fast) read(text []byte, line int) (length, rows int) {
+	const slow, fastSoil, fastRock = 20, 1000, 3600 // m/s
 	layers, row := f.base.Layers[:0], &f.row
 	above, suspicious, name := 0.0, false, []byte(nil)
-	f.place = [len(f.place)]placeCell{}
+	if f.placed {
+		f.place = [len(f.place)]placeCell{}
+	}
 	for length < len(text) {
-		n := f.scan(text[length:], name)
+		n := notPlain
+		switch {
+		case !f.usual:
+		case name != nil:
+			n = f.again(text[length:], name, above)
+		case f.next != nil:
+			row.name, row.below = f.next, nil
+			n = f.again(text, f.next, 0)
+		}
+		if n == notPlain {
+			n = f.scan(text[length:], name)
+		}
 		if n == otherName {
 			break
 		}
@@ -109,7 +140,7 @@ func (f *fast) read(text []byte, line int) (length, rows int) {
 		name, suspicious = row.name, row.suspicious
 		top := above // +Inf below a half-space, which no bottom is deeper than
 		if f.top && !(math.Abs(row.top-above) <= profile.Joint) || !(row.bottom-top > profile.Joint) ||
-			row.bottom > profile.MaxDepth && !row.open || !(row.vs >= profile.MinVelocity && row.vs <= profile.MaxVelocity) {
+			row.bottom > profile.MaxDepth && !row.open || !(row.vs >= slow && row.vs <= fastRock) {
 			return 0, 0
 		}
 		if rows == cap(layers) {
@@ -122,11 +153,10 @@ func (f *fast) read(text []byte, line int) (length, rows int) {
 		length += n
 		rows++
 	}
-	f.base.Layers = layers
-	if suspicious || !undoubted(layers) || f.placed && !f.position() {
+	f.base.Layers, f.name = layers, name
+	if suspicious || rows < 2 || layers[0].Vs > fastSoil || f.placed && !f.position() {
 		return 0, 0
 	}
-	f.base.Name = string(name)
 	return length, rows
 }
 
@@ -178,22 +208,6 @@ func (f *fast) placeIn(text []byte, at int, q profile.Quantity, first bool) int 
 	return end
 }
 
-// undoubted reports whether profile.Doubts can have nothing to say of layers
-// that state velocities alone, of no survey. The limits are its own, or
-// nearer.
-func undoubted(layers []profile.Layer) bool {
-	const slow, fastSoil, fastRock = 20, 1000, 3600 // m/s
-	if len(layers) < 2 || layers[0].Vs > fastSoil {
-		return false
-	}
-	for i := range layers {
-		if v := layers[i].Vs; v < slow || v > fastRock {
-			return false
-		}
-	}
-	return true
-}
-
 // What scan returns beside a length.
 const (
 	notPlain  = 0
@@ -204,6 +218,7 @@ const (
 // name is that of the rows before; nil if there are none.
 func (f *fast) scan(text, name []byte) int {
 	at, row := 0, &f.row
+	row.below = nil
 	for i := range f.roles {
 		if i > 0 {
 			if at >= len(text) || text[at] != f.sep {
@@ -215,7 +230,7 @@ func (f *fast) scan(text, name []byte) int {
 		switch role.quantity {
 		case profile.ProfileName:
 			if end := at + len(name); name != nil && end < len(text) && text[end] == f.sep && bytes.Equal(text[at:end], name) {
-				at = end
+				row.name, at = text[start:end], end
 				continue
 			}
 			at = plainCell(text, at, f.sep)
@@ -223,10 +238,14 @@ func (f *fast) scan(text, name []byte) int {
 				return notPlain
 			}
 			if name != nil && !bytes.Equal(row.name, name) {
+				f.next = row.name
 				return otherName
 			}
 		case profile.Unknown:
 			at = plainCell(text, at, f.sep)
+			if !f.top && delimited.TotalsLabel(text[start:at]) {
+				return notPlain
+			}
 		case profile.Latitude, profile.Longitude, profile.Easting, profile.Northing, profile.EPSG:
 			if at = f.placeIn(text, at, role.quantity, name == nil); at < 0 {
 				return notPlain
@@ -263,6 +282,39 @@ func (f *fast) scan(text, name []byte) int {
 	return notPlain
 }
 
+// again reads what scan would of nearly all rows: a name that was read before, the
+// top where the row before ends (above), a bottom and a velocity. It leaves every
+// other row to scan. Most rows write their top as the row before its bottom, so that the
+// number need not be read again.
+func (f *fast) again(text, name []byte, above float64) int {
+	row, at := &f.row, len(name)
+	if at >= len(text) || text[at] != f.sep || !bytes.HasPrefix(text, name) {
+		return notPlain
+	}
+	at++
+	row.top = above
+	if n := len(row.below); n > 0 && len(text)-at >= n && string(text[at:at+n]) == string(row.below) {
+		at += n
+	} else {
+		start := at
+		if row.top, at = plainDecimal(text, at); at == start || at >= len(text) || text[at] != f.sep {
+			return notPlain
+		}
+		at++
+	}
+	start := at
+	if row.bottom, at = plainDecimal(text, at); at == start || at >= len(text) || text[at] != f.sep || row.bottom >= 999 {
+		return notPlain
+	}
+	at++
+	row.below, start = text[start:at], at
+	if row.vs, at = plainDecimal(text, at); at == start || at >= len(text) || text[at] != '\n' {
+		return notPlain
+	}
+	row.column, row.open, row.suspicious = start+1, false, false
+	return at + 1
+}
+
 // plainCell returns the end of the cell that begins at a place. It ends at the
 // first character that is not plain, where scan then looks for the separator.
 func plainCell(text []byte, at int, sep byte) int {
@@ -284,97 +336,3 @@ func plainName(name []byte) bool {
 
 // nines reports whether a number is written 999, 9999 and so on.
 func nines(text []byte) bool { return len(bytes.Trim(text, "9")) == 0 }
-
-// plainDecimal reads an ordinary decimal number of at most 15 digits and returns
-// where it ends; where none begins it ends where it should begin. The result
-// is that of strconv.ParseFloat: the digits and the power of ten are both exact
-// in a float64, so that one division rounds once (Clinger 1990, How to read
-// floating point numbers accurately, from memory).
-func plainDecimal(text []byte, at int) (float64, int) {
-	digits, n := uint64(0), 0
-	rest := text[at:]
-	for n < len(rest) && rest[n]-'0' <= 9 {
-		digits = 10*digits + uint64(rest[n]-'0')
-		n++
-	}
-	point := n
-	if n > 0 && n < len(rest) && rest[n] == '.' {
-		for n++; n < len(rest) && rest[n]-'0' <= 9; n++ {
-			digits = 10*digits + uint64(rest[n]-'0')
-		}
-	}
-	switch places := n - point - 1; {
-	case point == 0 || n > 16 || point > 15:
-		return 0, at
-	case places > 0:
-		return float64(digits) / powers[places], at + n
-	}
-	return float64(digits), at + n
-}
-
-// powers are the powers of ten that a float64 holds exactly.
-var powers = [...]float64{1e0, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15, 1e16}
-
-// decide makes the row of the profile in hand under code number i. It returns
-// false where report.Classify must.
-func (f *fast) decide(c *clerk, u *unit, i int, r *result) bool {
-	q := f.quick[i]
-	if q == nil {
-		return false
-	}
-	v, ok := q.Decide(f.base.Layers)
-	basis := unstated
-	if !ok {
-		if v, ok = f.extended(u, q, r); !ok {
-			return false
-		}
-		basis = extended
-	}
-	row := &r.row
-	row.DepthReached = u.profile.DepthReached()
-	row.Class, row.Route, row.Velocity, row.Depth, row.Datum = v.Class, byVelocity, v.Velocity, v.Thickness, v.Datum
-	row.Basis, row.Standing = basis, v.Standing.String()
-	row.ToClass, row.Margin = v.ToClass, v.Percent
-	if row.Vs30 = v.Vs30; row.Vs30 == 0 {
-		row.Vs30 = c.vs30(u, v.Datum)
-	}
-	c.flag(u, r)
-	if r.fell = v.Reversed; r.fell {
-		row.Flags |= Reversed
-		row.Notes++
-	}
-	return true
-}
-
-// extended decides a profile that the deepest velocity carries down to the
-// depth that the code asks for, from ground level.
-func (f *fast) extended(u *unit, q *siteclass.Quick, r *result) (siteclass.Verdict, bool) {
-	p := u.profile
-	last := &p.Layers[len(p.Layers)-1]
-	if f.relation == nil || q.From() != 0 || last.Bottom >= q.Depth()-vs30.Touching {
-		return siteclass.Verdict{}, false
-	}
-	e, err := f.relation.Estimate(p.Layers, 0, q.Depth())
-	if err != nil {
-		return siteclass.Verdict{}, false
-	}
-	layers := append(append(f.longer[:0], p.Layers...), profile.Layer{Top: e.Reached, Bottom: e.From + e.Thickness, Vs: e.Below})
-	f.longer = layers
-	notes := append(make([]profile.Note, 0, 5), e.Note)
-	notes = append(notes, e.Doubts...)
-	v, notes, ok := q.DecideExtended(p, layers, notes)
-	if ok {
-		r.notes = notes
-	}
-	return v, ok
-}
-
-// What siteclass.Decision says of a profile that is decided by its velocity
-// alone and does not state how that came to be known.
-const (
-	constantVelocity = "constant-velocity"
-
-	byVelocity = "velocity"
-	unstated   = "not stated"
-	extended   = "extended"
-)

@@ -95,6 +95,18 @@ func install(out string, w *whole) error {
 			return notInstalled(out, err)
 		}
 	}
+	return cleared(out, dir)
+}
+
+// cleared removes the folder of a batch that is in place. What calls for it to be
+// installed goes first: were it left alone with the mark of retirement gone, the
+// next run would retire the new batch for the old one.
+func cleared(out, dir string) error {
+	for _, name := range []string{journalName, wholeName} {
+		if err := os.Remove(filepath.Join(dir, name)); err != nil && !errors.Is(err, fs.ErrNotExist) {
+			return notInstalled(out, err)
+		}
+	}
 	if err := os.RemoveAll(dir); err != nil {
 		return notInstalled(out, err)
 	}

@@ -29,6 +29,8 @@ type Job struct {
 	// several workers at the same time.
 	MakeReport func(Reported) error
 
+	FaultsAlone bool // faults.csv holds the faults and no notes, which are neither counted nor worded; what they flag is flagged all the same
+
 	Derive  DeriveOptions // what is made from the tables at the end
 	Version string        // of the program, which a batch that is resumed must share
 	Tables  []string      // what else the codes depend on: the digests of tables of their own
@@ -54,6 +56,7 @@ type Reported struct {
 	Profile *profile.Profile
 	Name    string // of the file, without its folder
 	Data    []byte // of the file; of a table with several profiles, its top and the rows of this one
+	Extract bool   // Data is such a part of the file
 	Codes   []*siteclass.Code
 	Facts   report.Facts
 	Dir     string // that the report is to be written into; its parent is there
@@ -140,17 +143,20 @@ func (j *Job) digest() string {
 	line("read", fmt.Sprintf("%+v", j.Read))
 	line("near", j.near())
 	line("reports", j.Reports)
+	d := &j.Derive
+	line("pages", []any{d.Title, d.Project, d.PreparedBy, d.Date, d.Letter, d.US})
+	line("faults alone", j.FaultsAlone)
 	return hex.EncodeToString(sum.Sum(nil))
 }
 
-func (j *Job) near() float64 {
-	switch {
-	case j.Near == 0:
+func (j *Job) near() float64 { return near(j.Near) }
+
+// near is the margin in percent that an option means.
+func near(option float64) float64 {
+	if option == 0 {
 		return Near
-	case j.Near < 0:
-		return 0
 	}
-	return j.Near
+	return max(option, 0)
 }
 
 func (j *Job) say(hint, format string, args ...any) {

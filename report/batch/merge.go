@@ -11,6 +11,7 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"slices"
 	"strconv"
 
 	"shearbook/profile"
@@ -20,7 +21,7 @@ import (
 // Merge joins the folders of all shards of a batch into one: the same bytes as a
 // run in one piece gives. Of the job it takes Out, Derive, and Codes where the
 // shards used tables of a jurisdiction's own; the rest is what the shards were
-// made with. The shards stay as they are.
+// made with; Job.Tables must be among theirs. The shards stay as they are.
 func Merge(ctx context.Context, dirs []string, job Job) (Outcome, error) {
 	shards, err := openShards(dirs)
 	defer func() {
@@ -31,9 +32,19 @@ func Merge(ctx context.Context, dirs []string, job Job) (Outcome, error) {
 	if err != nil {
 		return Outcome{}, err
 	}
+	for _, table := range job.Tables {
+		if !slices.Contains(shards[0].Tables, table) {
+			return Outcome{}, &conflict{"the shards were not made with a table that is given", "give the tables that the shards were made with, as they were"}
+		}
+	}
 	if err := ours(job.Out); err != nil {
 		return Outcome{}, err
 	}
+	release, err := lockOut(job.Out)
+	if err != nil {
+		return Outcome{}, err
+	}
+	defer release()
 	dir := unfinished(job.Out)
 	if _, err := os.Stat(filepath.Join(dir, journalName)); err == nil {
 		return Outcome{}, &conflict{fmt.Sprintf("%s holds an unfinished batch", job.Out), "choose another folder with --out, or remove " + dir}
@@ -332,8 +343,9 @@ func deriveMerged(dir string, s *shardReader, job *Job) error {
 			job.Codes = append(job.Codes, code)
 		}
 	}
-	opt := job.Derive
-	opt.Codes, opt.Near, opt.Command, opt.Settings = job.Codes, s.Near, s.Command, s.Settings
+	opt, wanted := s.Pages, &job.Derive
+	opt.Codes, opt.Version, opt.Template = job.Codes, wanted.Version, wanted.Template
+	opt.GeoJSON, opt.JSON, opt.XLSX, opt.Report = wanted.GeoJSON, wanted.JSON, wanted.XLSX, wanted.Report
 	if err := Derive(dir, opt); err != nil {
 		return fmt.Errorf("the shards are joined, but not what is made from them: %w", err)
 	}

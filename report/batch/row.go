@@ -13,7 +13,7 @@ import "shearbook/profile"
 // The files of a batch's folder.
 const (
 	Summary  = "summary.csv"
-	FaultsIn = "faults.csv"  // every fault and note
+	FaultsIn = "faults.csv"  // every fault, and every note unless Job.FaultsAlone
 	Sources  = "sources.csv" // file, sha256, bytes of every file that was read
 	Reports  = "reports"     // one folder a profile
 )
@@ -42,7 +42,7 @@ type Row struct {
 	Margin  float64 // %, to that bound: 100·(bound−average)/average
 
 	Flags    Flags
-	Notes    int // rows of faults.csv that are notes on this profile under this code, the profile's own told under the first
+	Notes    int // rows of faults.csv, none with Job.FaultsAlone, that are notes on this profile under this code, the profile's own told under the first
 	Faults   int // rows of faults.csv that are faults of this profile under this code, likewise
 	Position profile.Position
 	Problem  string // why it failed; "" where it did not

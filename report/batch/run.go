@@ -26,18 +26,29 @@ import (
 // the number of workers.
 //
 // A profile that is at fault, or a file, has its rows all the same and leaves
-// the others alone. A table with a column of profile names may be of any size:
+// the others alone. Profiles are told apart in tables, workbooks, AGS4,
+// SiteXML and our own JSON; where cones of AGS4 are asked for a fault is the whole
+// file's, and so it is where the fault lies outside the profiles (see open.Each). The report of a profile beside one at fault is not made, which a note
+// says, but for tables: a report carries its whole file, and that cannot be
+// read without fault. A table with a column of profile names may be of any size:
 // it is read in pieces. Where the rows of a profile do not follow one another
 // they are brought together first, on disk.
 //
 // Everything is written into a folder inside Job.Out and moved into place at the
 // end. Where ctx ends before that, what is in hand is finished and kept, and
 // the outcome is Unfinished; a later run with Resume goes on from there, as it
-// does after a kill, and gives the same bytes as a run in one piece.
+// does after a kill, and gives the same bytes as a run in one piece. Of two runs
+// in one folder at the same time the second is refused, where the system has
+// locks for that.
 func Run(ctx context.Context, job Job) (Outcome, error) {
 	if len(job.Codes) == 0 {
 		return Outcome{}, errors.New("a batch needs a code")
 	}
+	release, err := lockOut(job.Out)
+	if err != nil {
+		return Outcome{}, err
+	}
+	defer release()
 	if w := declared(job.Out); w != nil {
 		if err := install(job.Out, w); err != nil {
 			return Outcome{}, err
@@ -292,7 +303,7 @@ func (r *run) finish() error {
 
 func (r *run) derive(dir string) error {
 	opt := r.job.Derive
-	opt.Codes, opt.Near = r.job.Codes, r.job.Near
+	opt.Codes, opt.Facts, opt.Near = r.job.Codes, r.job.Facts, r.job.Near
 	if err := Derive(dir, opt); err != nil {
 		return fmt.Errorf("the tables are whole, but not what is made from them: %w", err)
 	}

@@ -11,13 +11,11 @@ const ShardFile = "shard.json"
 
 // shardOf is the content of ShardFile.
 type shardOf struct {
-	Job   string // digest
-	Shard Shard
-	Codes []string
-	Near  float64
-
-	Command  string // that the pages print
-	Settings []Setting
+	Job    string // digest
+	Shard  Shard
+	Codes  []string
+	Tables []string      // digests of those that are a jurisdiction's own
+	Pages  DeriveOptions // what they say, but for the codes
 
 	All  int   // units of the whole batch
 	Rows []int // of the units of this shard: how many units, how many rows each has, and so on
@@ -27,8 +25,10 @@ type shardOf struct {
 // describeShard writes ShardFile.
 func (r *run) describeShard(dir string) error {
 	j := r.job
-	of := shardOf{Job: j.digest(), Shard: j.Shard, Near: j.Near, Command: j.Derive.Command, Settings: j.Derive.Settings,
+	of := shardOf{Job: j.digest(), Shard: j.Shard, Tables: j.Tables, Pages: j.Derive,
 		All: r.all, Rows: r.shape.runs, Outcome: r.outcome}
+	of.Pages.Codes, of.Pages.Template = nil, ""
+	of.Pages.Facts, of.Pages.Near = j.Facts, j.Near
 	for _, c := range j.Codes {
 		of.Codes = append(of.Codes, c.ID)
 	}

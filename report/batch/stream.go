@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"slices"
 	"sync/atomic"
 
 	"shearbook/profile/delimited"
@@ -60,7 +61,6 @@ type cutter struct {
 
 	rest []byte // behind the last cut
 	err  error  // of in
-	raw  *buffer
 }
 
 // errLongProfile is the error of a profile that no piece can hold.
@@ -95,7 +95,7 @@ func (k *cutter) fill(b []byte) ([]byte, int) {
 	if k.err == nil {
 		from := len(b)
 		want := max(k.size, from+k.size/2) - from
-		b = append(b, make([]byte, want)...)
+		b = slices.Grow(b, want)[:from+want]
 		n, err := io.ReadFull(k.in, b[from:])
 		b = b[:from+n]
 		if err == io.ErrUnexpectedEOF {

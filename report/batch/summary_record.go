@@ -21,7 +21,7 @@ func (o *overview) noteTable() []report.Block {
 		Compact: true,
 	}
 	for _, n := range o.notes {
-		t.Rows = append(t.Rows, tableRow(n.name, strconv.Itoa(n.n), shortened(n.text)))
+		t.Rows = append(t.Rows, tableRow(n.name, strconv.Itoa(n.n), shortenedTo(1000, n.text)))
 	}
 	return []report.Block{t}
 }

@@ -424,3 +424,18 @@ func BenchmarkDeriveReport(b *testing.B) {
 	}
 	b.ReportMetric(float64(len(c.rows)*b.N)/b.Elapsed().Seconds(), "rows/s")
 }
+
+// A list names no papers: the table of the notes does.
+func TestListsAreWithoutReferences(t *testing.T) {
+	for _, c := range [][2]string{
+		{"it goes on unchanged (Boore 2004, BSSA 94(2):591–597, doi:10.1785/0120030105), from memory", "it goes on unchanged, from memory"},
+		{"it goes on unchanged (Boore 2004, BSSA 94(2):591–597, doi:10.1785/0120030105)", "it goes on unchanged"},
+		{"class E whatever the average (Table 3.1); by the average B", "class E whatever the average (Table 3.1); by the average B"},
+		{"open (doi:1", "open (doi:1"},
+		{"none", "none"},
+	} {
+		if got := withoutReference(c[0]); got != c[1] {
+			t.Errorf("%q: %q", c[0], got)
+		}
+	}
+}

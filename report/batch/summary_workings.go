@@ -318,7 +318,7 @@ func (o *overview) listColumns(l *list) []listColumn {
 	code := listColumn{column("Code", report.AlignLeft), func(e *entry) string { return strings.Join(e.codes, ", ") }}
 	class := listColumn{column("Class", report.AlignLeft), func(e *entry) string { return dash(e.Class) }}
 	average := listColumn{column("Average ("+unit+")", report.AlignDecimal), func(e *entry) string { return o.velocity(e.Velocity) }}
-	why := listColumn{wide("Why"), func(e *entry) string { return dash(shortened(cmp.Or(e.note, e.Problem))) }}
+	why := listColumn{wide("Why"), func(e *entry) string { return dash(shortened(withoutReference(cmp.Or(e.note, e.Problem)))) }}
 
 	columns := []listColumn{{column("Profile", report.AlignLeft), func(e *entry) string { return dash(shortened(e.Profile)) }}, place}
 	if len(o.counted()) > 1 {
@@ -359,9 +359,26 @@ func signed(v float64) string {
 	return text
 }
 
+// withoutReference is a note without the paper in brackets that it rests on,
+// which the table of the notes names once.
+func withoutReference(text string) string {
+	before, reference, found := strings.Cut(text, " (")
+	in, after, closed := strings.Cut(reference, ")")
+	for strings.Count(in, "(") >= 1+strings.Count(in, ")") && closed { // as the issue of a journal
+		var more string
+		more, after, closed = strings.Cut(after, ")")
+		in += ")" + more
+	}
+	if !found || !closed || !strings.Contains(in, "doi:") {
+		return text
+	}
+	return before + after
+}
+
 // shortened is a text that a cell of a page can hold.
-func shortened(text string) string {
-	const most = 200
+func shortened(text string) string { return shortenedTo(200, text) }
+
+func shortenedTo(most int, text string) string {
 	r := []rune(text)
 	if len(r) <= most {
 		return text

@@ -82,7 +82,7 @@ func (w *worker) wholeTable(h *delimited.Head, data []byte) error {
 	var names order
 	pieces := cutAll(h, rows)
 	for _, p := range pieces {
-		names.next(p.name)
+		names.next([]byte(p.name))
 	}
 	w.unknown = nil
 	for _, name := range h.Scoped() {
@@ -118,10 +118,16 @@ func (w *worker) table(h *delimited.Head, text []byte) error {
 		if plain != nil {
 			n, lines = plain.read(text, line)
 		}
+		if n > 0 && w.brief(plain, line) {
+			c.made.names.next(plain.name)
+			text, line, units = text[n:], line+lines, units+1
+			continue
+		}
 		if n > 0 {
+			plain.base.Name = string(plain.name)
 			*u = unit{file: h.File(), line: line, name: plain.base.Name, profile: &plain.base, setting: &w.run.setting, plain: plain}
 			if w.run.job.Reports != NoReports {
-				u.data = tableData(h, text[:n])
+				u.data, u.extract = tableData(h, text[:n]), w.isPart(h, text[:n])
 			}
 		} else {
 			var name []byte
@@ -129,17 +135,28 @@ func (w *worker) table(h *delimited.Head, text []byte) error {
 			*u = w.piece(c, h, piece{oneName(name), text[:n], lines}, line)
 		}
 		u.notes, notes = notes, nil
-		c.made.names.next(u.name)
+		c.made.names.next([]byte(u.name))
 		if err := w.unit(u); err != nil {
 			return err
 		}
 		text, line, units = text[n:], line+lines, units+1
 	}
+	c.made.names.end()
 	if c.before == nil {
 		c.made.all = units
 		w.counted = true
 	}
 	return nil
+}
+
+// brief writes the plain profile that was read last if it is one of the shard.
+// It returns false where unit must.
+func (w *worker) brief(plain *fast, line int) bool {
+	if !plain.brief || w.run.job.Shard.takes(w.next) && !plain.write(&w.clerk, line) {
+		return false
+	}
+	w.next++
+	return true
 }
 
 // fast returns what reads the plain profiles of a table, nil where it can have
@@ -149,7 +166,10 @@ func (w *worker) fast(h *delimited.Head) *fast {
 		return nil
 	}
 	if w.head != h {
-		w.head, w.plain = h, newFast(h, &w.run.setting)
+		w.head, w.plain = h, newFast(h, w.run.job, &w.run.setting)
+	}
+	if w.plain != nil {
+		w.plain.next = nil // it lies in the chunk before
 	}
 	return w.plain
 }
@@ -157,4 +177,10 @@ func (w *worker) fast(h *delimited.Head) *fast {
 // tableData is the table of one profile: the head and its rows.
 func tableData(h *delimited.Head, rows []byte) func() []byte {
 	return func() []byte { return append(h.Text(), rows...) }
+}
+
+// isPart reports whether a table's head and rows are not the whole file.
+func (w *worker) isPart(h *delimited.Head, rows []byte) bool {
+	c := w.chunk
+	return c.stream != nil || c.lines != nil || int64(h.Size()+len(rows)) != c.size
 }

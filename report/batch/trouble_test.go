@@ -45,9 +45,7 @@ func doJob(inOut string) {
 
 func killJob(in, out string) Job {
 	job := Job{Inputs: []string{in}, Out: out, Facts: report.Facts{Extend: "constant-velocity"}, Derive: DeriveOptions{GeoJSON: true, JSON: true}}
-	for _, c := range mustCode(&testing.T{}, "asce-7-22", "ec8-2004") {
-		job.Codes = append(job.Codes, c)
-	}
+	job.Codes = mustCode(&testing.T{}, "asce-7-22", "ec8-2004")
 	return job
 }
 

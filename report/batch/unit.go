@@ -22,6 +22,8 @@ type unit struct {
 	notes   []profile.Note   // that are told with it and are not its own
 	setting *setting
 	data    func() []byte // of its file, for a report
+	beside  bool          // another profile of the file is at fault
+	extract bool          // data is not the whole of it
 	plain   *fast         // that read it; nil where the ordinary reader did
 }
 
@@ -122,7 +124,7 @@ func (c *clerk) classify(u *unit, i int, r *result) {
 // flag counts the notes of a row and sets its flags.
 func (c *clerk) flag(u *unit, r *result) {
 	r.row.Notes = len(r.notes)
-	r.row.Flags = c.flags(&r.row)
+	r.row.Flags = c.flags(r.row.ToClass, r.row.Margin, r.row.Datum+r.row.Depth-r.row.DepthReached)
 	for i := range r.notes {
 		r.row.Flags |= flagOf(r.notes[i].ID)
 	}
@@ -140,13 +142,15 @@ func (c *clerk) vs30(u *unit, datum float64) float64 {
 	return *v
 }
 
-// flags are those that the numbers of a row give.
-func (c *clerk) flags(row *Row) Flags {
+// flags are those that numbers give: the margin in percent to another class, ""
+// for none, and how many metres are missing to the depth that the code averages
+// over.
+func (c *clerk) flags(toClass string, margin, missing float64) Flags {
 	var f Flags
-	if near := c.job.near(); row.ToClass != "" && row.Margin >= -near && row.Margin <= near {
+	if near := c.job.near(); toClass != "" && margin >= -near && margin <= near {
 		f |= NearBound
 	}
-	if row.Datum+row.Depth-row.DepthReached > vs30.Touching {
+	if missing > vs30.Touching {
 		f |= Shallow
 	}
 	return f
@@ -201,6 +205,30 @@ func (c *clerk) own(u *unit) {
 // write writes the rows, and what is to be known beside them.
 func (c *clerk) write(u *unit) {
 	c.faults = appendFaults(c.faults, u.faults, u.name, "")
+	if !c.job.FaultsAlone {
+		c.notes(u)
+	}
+	failed, flags := false, Flags(0)
+	for i := range c.results {
+		r := &c.results[i]
+		if c.job.FaultsAlone {
+			r.row.Notes = 0
+		}
+		c.summary = appendRest(append(c.summary, c.fileCell(u.file)...), &r.row)
+		if r.fault != nil {
+			c.faults = appendFaults(c.faults, profile.Faults{*r.fault}, u.name, r.row.Code)
+		}
+		if !c.job.FaultsAlone {
+			c.notesUnder(u, r)
+		}
+		c.tally.add(r.row.Code, r.row.Class, 1)
+		failed, flags = failed || r.row.Class == "", flags|r.row.Flags
+	}
+	c.count(len(c.results), failed, flags)
+}
+
+// notes writes the notes on a unit that hold under every code.
+func (c *clerk) notes(u *unit) {
 	c.faults = appendNotes(c.faults, u.notes, u.file, "", "")
 	if u.profile != nil {
 		c.faults = appendNotes(c.faults, u.profile.Notes, u.file, u.name, "")
@@ -208,21 +236,14 @@ func (c *clerk) write(u *unit) {
 	if text := u.setting.note; text != "" {
 		c.faults = appendNotes(c.faults, []profile.Note{{ID: "manifest", Text: text}}, u.file, u.name, "")
 	}
-	failed, flags := false, Flags(0)
-	for i := range c.results {
-		r := &c.results[i]
-		c.summary = appendRest(append(c.summary, c.fileCell(u.file)...), &r.row)
-		if r.fault != nil {
-			c.faults = appendFaults(c.faults, profile.Faults{*r.fault}, u.name, r.row.Code)
-		}
-		if r.fell {
-			c.reversal(u, r)
-		}
-		c.faults = appendNotes(c.faults, r.notes, u.file, u.name, r.row.Code)
-		c.tally.add(r.row.Code, r.row.Class, 1)
-		failed, flags = failed || r.row.Class == "", flags|r.row.Flags
+}
+
+// notesUnder writes the notes on a unit under one code.
+func (c *clerk) notesUnder(u *unit, r *result) {
+	if r.fell {
+		c.reversal(u, r)
 	}
-	c.count(len(c.results), failed, flags)
+	c.faults = appendNotes(c.faults, r.notes, u.file, u.name, r.row.Code)
 }
 
 // reversal writes the note on a profile whose velocity falls with depth, as

@@ -179,14 +179,14 @@ func (w *worker) load(name string, data []byte) []unit {
 			return found
 		}
 	}
-	profiles, err := open.Bytes(name, data, w.run.job.Read)
+	profiles, err := open.Each(name, data, w.run.job.Read)
 	if err != nil {
 		return []unit{{file: name, faults: asFaults(name, err), setting: &w.run.setting}}
 	}
 	found := make([]unit, len(profiles))
-	for i := range profiles {
-		p := &profiles[i]
-		found[i] = unit{file: name, line: beginning(p), name: p.Name, profile: p, setting: &w.run.setting, data: func() []byte { return data }}
+	broken := slices.ContainsFunc(profiles, func(p profile.Found) bool { return p.Profile == nil })
+	for i, p := range profiles {
+		found[i] = unit{file: name, line: p.Line, name: p.Name, profile: p.Profile, faults: p.Faults, setting: &w.run.setting, data: func() []byte { return data }, beside: broken}
 	}
 	return found
 }
@@ -224,7 +224,7 @@ func (w *worker) piece(c *chunk, h *delimited.Head, rows piece, line int) unit {
 		p.Notes = append(p.Notes, profile.Note{ID: "rows-apart", Place: profile.Place{File: u.file, Line: u.line},
 			Text: fmt.Sprintf("the rows of the profile do not follow one another: the last stands in line %d, with other profiles between", last)})
 	}
-	u.data = tableData(h, rows.text)
+	u.data, u.extract = tableData(h, rows.text), w.isPart(h, rows.text)
 	return u
 }
 
@@ -267,9 +267,13 @@ func (c *clerk) report(u *unit, ordinal int) error {
 	if job.Reports == NoReports || job.MakeReport == nil || u.profile == nil || flags&Failed != 0 || job.Reports == FlaggedReports && flags == 0 {
 		return nil
 	}
+	if u.beside {
+		c.noReport(u, "it carries the whole file, and another profile of that is at fault")
+		return nil
+	}
 	name := reportName(u.name, ordinal)
 	data := u.data()
-	r := Reported{Profile: u.profile, Name: filepath.Base(u.file), Data: data, Codes: u.setting.codes, Facts: u.setting.facts,
+	r := Reported{Profile: u.profile, Name: filepath.Base(u.file), Data: data, Extract: u.extract, Codes: u.setting.codes, Facts: u.setting.facts,
 		Dir: filepath.Join(unfinished(job.Out), Reports, name)}
 	digest := digestOf(data)
 	mark := filepath.Join(unfinished(job.Out), marks, name)
@@ -277,10 +281,7 @@ func (c *clerk) report(u *unit, ordinal int) error {
 		err := job.MakeReport(r)
 		var faults profile.Faults
 		if errors.As(err, &faults) { // of the profile: the others go on
-			p := *u.profile
-			p.Notes = append(slices.Clip(p.Notes), profile.Note{ID: "no-report", Text: "its report could not be made: " + problem(faults)})
-			u.profile = &p
-			c.results[0].row.Notes++
+			c.noReport(u, problem(faults))
 			return nil
 		}
 		if err != nil {
@@ -295,6 +296,19 @@ func (c *clerk) report(u *unit, ordinal int) error {
 		c.results[i].row.Report = Reports + "/" + name
 	}
 	return nil
+}
+
+// noReport notes why there is no report of a unit, and flags its first row.
+func (c *clerk) noReport(u *unit, why string) {
+	first := &c.results[0].row
+	first.Flags |= Odd
+	if c.job.FaultsAlone {
+		return
+	}
+	p := *u.profile
+	p.Notes = append(slices.Clip(p.Notes), profile.Note{ID: "no-report", Text: "its report could not be made: " + why})
+	u.profile = &p
+	first.Notes++
 }
 
 // reportName is the name of a report's folder: the number of the unit, and of
