@@ -44,15 +44,16 @@ func Extended(p *profile.Profile, id string, from, thickness float64) ([]profile
 }
 
 // Classify decides the class of a profile under a code. A profile that ends
-// above the averaging depth is extended as facts say, and the decision notes
-// it; otherwise the error is a *vs30.ShortError, or an *extend.Refusal. The
-// doubts about the profile itself join the decision's notes.
+// above the averaging depth is extended as facts say, unless it has no
+// velocities, and the decision notes it; otherwise the error is a
+// *vs30.ShortError, or an *extend.Refusal. The doubts about the profile itself
+// join the decision's notes.
 func Classify(p *profile.Profile, code *siteclass.Code, facts Facts) (siteclass.Decision, error) {
 	site := siteclass.Site{Profile: p, Layers: p.Layers, Datum: facts.Datum,
 		FoundationDepth: facts.Foundation, Ground: facts.Ground}
 	d, err := code.Decide(site)
 	var short *vs30.ShortError
-	if errors.As(err, &short) && facts.Extend != "" {
+	if errors.As(err, &short) && facts.Extend != "" && !p.NoVelocity { // N and su are not carried down
 		from, _ := code.DatumOf(site)
 		if site.Layers, site.Notes, err = Extended(p, facts.Extend, from, short.Needed-from); err != nil {
 			return d, err

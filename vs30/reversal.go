@@ -21,16 +21,20 @@ func Reversals(layers []profile.Layer, from, to float64) []Reversal {
 		l := &layers[i]
 		if i > 0 && inside(l.Top, from, to) {
 			above, below := velocitiesAt(layers, i)
-			if below < above {
+			if Slower(below, above) {
 				found = append(found, Reversal{Layer: i, Depth: l.Top, Above: above, Below: below})
 			}
 		}
-		if top, bottom, ok := clip(l, from, to); ok && l.Gradient() && l.VsBottom < l.Vs {
+		if top, bottom, ok := clip(l, from, to); ok && l.Gradient() && Slower(l.VsBottom, l.Vs) {
 			found = append(found, Reversal{Layer: i, Depth: top, Above: l.VsAt(top), Below: l.VsAt(bottom)})
 		}
 	}
 	return found
 }
+
+// Slower reports whether one velocity is below another by more than a part in
+// 10⁹, the noise of what was computed of one number in two ways.
+func Slower(v, than float64) bool { return than-v > 1e-9*than }
 
 // inside reports whether depth z lies between from and to and touches neither.
 func inside(z, from, to float64) bool { return z-from > Touching && to-z > Touching }

@@ -45,3 +45,15 @@ func TestReversalBelowGradient(t *testing.T) {
 		t.Errorf("%v, want %v", got, want)
 	}
 }
+
+// Float noise is no fall: 200 m/s computed twice of one slowness.
+func TestFloatNoiseIsNoReversal(t *testing.T) {
+	layers := stack(0.1, 200.00000000000003, 0.1, 200, 30, 200*(1-1e-10))
+	layers[2].VsBottom = 200 * (1 - 2e-10)
+	if got := Reversals(layers, 0, 30); got != nil {
+		t.Errorf("%v", got)
+	}
+	if got := Reversals(stack(5, 200, 30, 200*(1-2e-9)), 0, 30); len(got) != 1 {
+		t.Errorf("a fall of two parts in 10⁹: %v", got)
+	}
+}

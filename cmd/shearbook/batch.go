@@ -2,8 +2,6 @@ package main
 
 import (
 	"context"
-	"crypto/sha256"
-	"encoding/hex"
 	"errors"
 	"fmt"
 	"io"
@@ -17,14 +15,12 @@ import (
 	"syscall"
 
 	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
 
 	"shearbook/profile"
 	"shearbook/report"
 	"shearbook/report/batch"
-	"shearbook/report/folder"
-	"shearbook/report/notebook"
-	"shearbook/report/pdf"
-	"shearbook/vs30/siteclass"
+	"shearbook/report/evidence"
 )
 
 // batchFlags are the flags of batch.
@@ -37,6 +33,7 @@ type batchFlags struct {
 	near                      float64
 	merge, resume, quiet      bool
 	jobs                      int
+	pages                     pageFlags
 }
 
 func newBatch(s streams) *cobra.Command {
@@ -51,7 +48,10 @@ summary, and a full report of each profile that has something to look at.
 
 An input is a file, a folder, a pattern, a table with a column of profile
 names, or a manifest: a CSV file with the columns file, profile, code, datum,
-latitude, longitude and notes, of which only the first must be there.
+latitude, longitude and notes, of which only the first must be there. Beside
+the tables, --write names what is written: notes (into faults.csv, which else
+has the faults alone), geojson, json, xlsx, report (the summary's pages), or csv
+for none of them; notes,geojson,report if left out.
 
 A profile at fault leaves the others alone; the exit status is then 3. Ctrl-C
 ends a run after what is in hand; --resume goes on, as it does after a kill.
@@ -79,14 +79,16 @@ To spread a batch over machines, let each do a shard and merge them:
 	fl.StringVar(&f.foundation, "foundation-depth", "", "`depth` of the foundation: 1.5m")
 	fl.StringVar(&f.extend, "extend", "", "`rule` to carry a short profile on")
 	f.read.define(fl)
-	fl.StringVar(&f.reports, "reports", "flagged", "`all, flagged or none`: reports of profiles")
-	fl.Float64Var(&f.near, "near", batch.Near, "`percent` of the average that is near a bound")
-	fl.StringSliceVar(&f.write, "write", []string{"geojson", "report"}, "`csv,geojson,json,xlsx,report`")
+	fl.StringVar(&f.reports, "reports", "flagged", "`which`: all, flagged or none")
+	fl.Float64Var(&f.near, "near", batch.Near, "`percent` from a bound that is near")
+	fl.StringSliceVar(&f.write, "write", []string{"notes", "geojson", "report"}, "`list` of csv, notes, geojson, json, xlsx, report")
+	fl.Lookup("write").DefValue = "[]" // the text above has it, in a line that is short enough
 	fl.StringVar(&f.shard, "shard", "", "`I/N`: every N-th profile from the I-th on")
 	fl.BoolVar(&f.merge, "merge", false, "the inputs are the folders of shards")
 	fl.BoolVar(&f.resume, "resume", false, "go on with an unfinished batch")
 	fl.IntVar(&f.jobs, "jobs", 0, "`number` of profiles at the same time")
 	fl.BoolVar(&f.quiet, "quiet", false, "no progress")
+	f.pages.define(c)
 	codeFilesFlag(c, &f.codeFiles)
 	completeCodes(c)
 	completeWords(c, "extend", report.Extensions()...)
@@ -96,19 +98,20 @@ To spread a batch over machines, let each do a shard and merge them:
 }
 
 // batchOutputs are the words of --write.
-var batchOutputs = []string{"csv", "geojson", "json", "xlsx", "report"}
+var batchOutputs = []string{"csv", "notes", "geojson", "json", "xlsx", "report"}
 
 // runBatch is the whole of `shearbook batch`.
 func runBatch(s streams, c *cobra.Command, f batchFlags, inputs []string) error {
 	if f.out == "" {
 		return misuse("add --out DIR", "batch needs a folder to write")
 	}
-	job, err := f.job(inputs)
+	if slices.Contains(inputs, "-") {
+		return misuse("write it to a file and name that", "batch reads its input more than once, which standard input cannot be")
+	}
+	job, err := f.job(c, inputs)
 	if err != nil {
 		return err
 	}
-	job.Derive.Version, job.Derive.Command = versionText(), batchCommand(c, inputs)
-	job.Derive.Settings = f.settings()
 	debug.SetGCPercent(100) // a batch runs for longer, and is to stay small
 	show := newShow(s.err, f.quiet)
 	job.Progress, job.Say = show.progress, show.say
@@ -133,61 +136,93 @@ func runBatch(s streams, c *cobra.Command, f batchFlags, inputs []string) error 
 }
 
 // job checks the flags.
-func (f *batchFlags) job(inputs []string) (job batch.Job, err error) {
+func (f *batchFlags) job(c *cobra.Command, inputs []string) (job batch.Job, err error) {
 	job = batch.Job{Inputs: inputs, Out: filepath.Clean(f.out), Near: f.near, Resume: f.resume, Workers: f.jobs, Version: versionText()}
-	if f.near < 0 {
-		return job, misuse("give a percentage, as --near 5", "--near %v is below 0", f.near)
+	if err := f.together(c); err != nil {
+		return job, err
 	}
 	if f.near == 0 {
 		job.Near = -1 // none is near
-	}
-	if err := f.outputs(&job); err != nil || f.merge {
-		return job, err
-	}
-	classify := classifyFlags{codes: f.codes, codeFiles: f.codeFiles, datum: f.datum, foundation: f.foundation, extend: f.extend, format: "text"}
-	if len(f.codes) == 0 && len(f.codeFiles) == 0 {
-		return job, misuse("add --code asce-7-16, or another of `shearbook codes`", "batch needs a code")
-	}
-	if job.Facts, job.Codes, err = classify.check(); err != nil {
-		return job, err
-	}
-	if job.Read, err = f.read.options(); err != nil {
-		return job, err
-	}
-	if f.shard != "" {
-		if job.Shard, err = parseShard(f.shard); err != nil {
-			return job, err
-		}
 	}
 	own, err := readCodeFiles(f.codeFiles)
 	if err != nil {
 		return job, err
 	}
 	for _, file := range own {
-		sum := sha256.Sum256(file.data)
-		job.Tables = append(job.Tables, hex.EncodeToString(sum[:]))
+		job.Tables = append(job.Tables, evidence.Digest(file.data))
 	}
-	job.MakeReport = func(r batch.Reported) error { return makeReport(r, own, f.extend, job) }
-	return job, nil
+	if err := errors.Join(f.outputs(&job), f.pages.apply(&job.Derive)); err != nil {
+		return job, err
+	}
+	job.Derive.Version, job.Derive.Command = versionText(), batchCommand(c, inputs)
+	if f.merge {
+		for _, file := range own {
+			job.Codes = append(job.Codes, file.code)
+		}
+		return job, nil
+	}
+	return job, f.classification(c, own, &job)
 }
 
-// settings are the choices that the pages tell.
-func (f *batchFlags) settings() []batch.Setting {
-	var list []batch.Setting
-	for _, s := range []batch.Setting{{Name: "short profiles", Value: f.extend}, {Name: "datum", Value: f.datum},
-		{Name: "foundation depth", Value: f.foundation}, {Name: "units", Value: f.read.units}} {
-		if s.Value != "" {
-			list = append(list, s)
+// together checks the flags that exclude one another.
+func (f *batchFlags) together(c *cobra.Command) (err error) {
+	fl := c.Flags()
+	switch {
+	case f.near < 0:
+		return misuse("give a percentage, as --near 5", "--near %v is below 0", f.near)
+	case f.shard != "" && fl.Changed("write") && slices.ContainsFunc(f.write, derived):
+		return misuse("give it at --merge; a shard takes csv and notes alone", "a shard has nothing beside its tables and reports: --write %s cannot be used", strings.Join(f.write, ","))
+	case !f.merge:
+		return nil
+	}
+	fl.Visit(func(flag *pflag.Flag) {
+		switch flag.Name {
+		case "merge", "out", "write", "code-file", "quiet", "help":
+		default:
+			err = misuse("leave it out: the shards say it", "--%s cannot be used with --merge", flag.Name)
+		}
+	})
+	return err
+}
+
+// derived reports whether a word of --write asks for what is made from the
+// tables.
+func derived(word string) bool { return word != "csv" && word != "notes" }
+
+// classification reads the flags that say how to classify.
+func (f *batchFlags) classification(c *cobra.Command, own []codeFile, job *batch.Job) (err error) {
+	if len(f.codes) == 0 && len(own) == 0 {
+		return misuse("add --code asce-7-16, or another of `shearbook codes`", "batch needs a code")
+	}
+	classify := classifyFlags{codes: f.codes, codeFiles: f.codeFiles, datum: f.datum, foundation: f.foundation, extend: f.extend, format: "text"}
+	if job.Facts, _, err = classify.check(); err != nil {
+		return err
+	}
+	if job.Codes, err = chooseCodes(f.codes, own); err != nil {
+		return err
+	}
+	if job.Read, err = f.read.options(); err != nil {
+		return err
+	}
+	if f.shard != "" {
+		if job.Shard, err = parseShard(f.shard); err != nil {
+			return err
 		}
 	}
-	return list
+	job.Derive.Settings = settings(c, own)
+	r := reporter{job: *job, own: own, command: c}
+	job.MakeReport = r.make
+	return nil
 }
 
 // outputs reads --write and --reports.
 func (f *batchFlags) outputs(job *batch.Job) error {
+	job.FaultsAlone = true
 	for _, word := range f.write {
 		switch word {
 		case "csv":
+		case "notes":
+			job.FaultsAlone = false
 		case "geojson":
 			job.Derive.GeoJSON = true
 		case "json":
@@ -221,68 +256,6 @@ func parseShard(text string) (batch.Shard, error) {
 		return batch.Shard{}, misuse("write it as --shard 3/16", "shard %q is not one", text)
 	}
 	return batch.Shard{I: i, N: n}, nil
-}
-
-// batchCommand is the command as the pages print it: the same wherever the
-// files lie.
-func batchCommand(c *cobra.Command, inputs []string) string {
-	text := "shearbook batch"
-	for _, in := range inputs {
-		text += " " + filepath.Base(in)
-	}
-	if c.Flags().Changed("merge") {
-		return text + " --merge"
-	}
-	for _, name := range []string{"code", "datum", "foundation-depth", "extend", "units", "near"} {
-		if fl := c.Flags().Lookup(name); fl.Changed {
-			text += " --" + name + " " + strings.Trim(fl.Value.String(), "[]")
-		}
-	}
-	return text
-}
-
-// makeReport makes the report of one profile of a batch, the same as `shearbook
-// report` makes. What is wrong with the profile comes back as profile.Faults.
-func makeReport(r batch.Reported, own []codeFile, extend string, job batch.Job) error {
-	standard := notebook.Standard{Read: job.Read, Datum: r.Facts.Datum, Foundation: r.Facts.Foundation}
-	tables := map[string][]byte{r.Name: r.Data}
-	for _, code := range r.Codes {
-		if i := slices.IndexFunc(own, func(f codeFile) bool { return f.code == code }); i >= 0 {
-			standard.CodeFiles = append(standard.CodeFiles, own[i].base)
-			tables[own[i].base] = own[i].data
-			continue
-		}
-		standard.Codes = append(standard.Codes, code.ID)
-	}
-	nb, err := notebook.NewStandard(r.Name, r.Data, standard)
-	if err != nil {
-		return err
-	}
-	nb.Header.Extend = extend
-	nb.Header.Profiles = slices.DeleteFunc(nb.Header.Profiles, func(e notebook.ProfileEntry) bool { return e.Profile != r.Profile.Name })
-	made, err := notebook.Evaluate(nb, notebook.Options{Version: versionText(), Command: "shearbook report " + r.Name + " --code " + idList(r.Codes),
-		ReadFile: func(name string) ([]byte, error) {
-			if data, ok := tables[name]; ok {
-				return data, nil
-			}
-			return nil, os.ErrNotExist
-		}})
-	if err != nil {
-		return err
-	}
-	files, err := folder.Files(made.Document, made.Results, pdf.Options{})
-	if err != nil {
-		return placeGlyphs(err, nb)
-	}
-	return folder.Write(r.Dir, files)
-}
-
-func idList(codes []*siteclass.Code) string {
-	ids := make([]string, len(codes))
-	for i, c := range codes {
-		ids[i] = c.ID
-	}
-	return strings.Join(ids, ",")
 }
 
 // tellBatch says what was found and where it is.

@@ -204,6 +204,9 @@ func tooShort(p *profile.Profile, code *siteclass.Code, err error) profile.Fault
 	if errors.As(err, &short) {
 		text = fmt.Sprintf("profile %q reaches %.4g m below ground level; %s needs %.4g m", p.Name, short.Reached, code.ID, short.Needed)
 		hint = "add --extend constant-velocity if the lowest velocity may be taken to continue, or survey deeper"
+		if p.NoVelocity {
+			hint = "N and su are not carried below their tests: bore deeper, or add --correlate imai-tonouchi-1982 with --extend constant-velocity if velocities may be estimated so"
+		}
 	}
 	return profile.Faultf(at, hint, "%s", text)
 }
@@ -215,7 +218,7 @@ func (s streams) writeDecision(b *strings.Builder, c classified) {
 	if r := c.profile.Reading; r != nil && r.File != c.profile.Name {
 		where = " (" + report.Visible(r.File) + ")"
 	}
-	fmt.Fprintf(b, "%s%s: %s\n", report.Visible(c.profile.Name), where, s.bold("site class "+d.Class))
+	fmt.Fprintf(b, "%s%s: %s\n", report.Visible(c.profile.Name), where, s.bold("site class "+d.ClassWords()))
 	line := func(label, text string) {
 		fmt.Fprintf(b, "  %s%s\n", pad(label, 10), wrap(text, width-12, strings.Repeat(" ", 12)))
 	}

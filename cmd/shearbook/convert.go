@@ -9,6 +9,7 @@ import (
 	"path/filepath"
 	"slices"
 	"strings"
+	"time"
 
 	"github.com/spf13/cobra"
 
@@ -51,8 +52,17 @@ format has no place for is said on standard error; JSON keeps most.`,
 	fl.StringVar(&f.edition, "edition", "", "`edition` of AGS4: 4.0.4, 4.1, 4.1.1 or 4.2")
 	f.read.define(fl)
 	completeWords(c, "to", formatNames()...)
-	completeWords(c, "edition", "4.0.4", "4.1", "4.1.1", "4.2")
+	completeWords(c, "edition", editions...)
 	return c
+}
+
+// editions are those of AGS4 that are written.
+var editions = []string{"4.0.4", "4.1", "4.1.1", "4.2"}
+
+// isDate reports whether text is a date as files of AGS4 and SiteXML write it.
+func isDate(text string) bool {
+	_, err := time.Parse(time.DateOnly, text)
+	return err == nil
 }
 
 // convert is the whole of `shearbook convert`.
@@ -161,6 +171,10 @@ func (f convertFlags) format(out string) (*format, error) {
 	}
 	to := &formats[byName]
 	switch {
+	case f.edition != "" && to.name == "ags4" && !slices.Contains(editions, f.edition):
+		return nil, misuse("it is one of: "+strings.Join(editions, ", "), "--edition %q is no edition of AGS4 that is written", f.edition)
+	case f.date != "" && !isDate(f.date):
+		return nil, misuse("write it as year, month and day: --date 2026-03-31", "--date %q is not a date", f.date)
 	case f.edition != "" && to.name != "ags4":
 		return nil, misuse("leave it out", "--edition is of AGS4; the format is %s", to.name)
 	case f.date != "" && to.name != "ags4" && to.name != "sitexml":
@@ -185,10 +199,23 @@ func cannotWrite(to *format, out string, err error) error {
 	return hinted{fmt.Errorf("%s cannot be written as %s: %w", out, to.name, err), hint}
 }
 
+// ofFile is how the losses of tables call what no format but JSON keeps.
+const ofFile = "statements of its file that are no part of a profile"
+
 // tellLosses says what the format has no place for, each loss once with the
 // profiles that it is of.
 func (s streams) tellLosses(to *format, profiles []profile.Profile) {
 	lost := to.lost(profiles)
+	for i := range profiles {
+		energy := loss{profiles[i].Name, "the energy ratio of its blow counts"}
+		if slices.ContainsFunc(profiles[i].Layers, func(l profile.Layer) bool { return l.EnergyRatio != 0 }) && !slices.Contains(lost, energy) {
+			lost = append(lost, energy)
+		}
+		said := loss{profiles[i].Name, ofFile}
+		if to.name != "json" && slices.Contains(delimited.Losses(&profiles[i]), ofFile) && !slices.Contains(lost, said) {
+			lost = append(lost, said)
+		}
+	}
 	if to.name != "json" {
 		for i := range profiles {
 			l := loss{profiles[i].Name, "columns that were not read"}

@@ -19,7 +19,7 @@ var correlateFlagNames = []string{"correlate", "unit-weight", "water-table", "en
 
 func (f *correlateFlags) define(fl *pflag.FlagSet) {
 	fl.StringSliceVar(&f.relations, "correlate", nil, "`ID`s of relations, where Vs is not measured")
-	fl.StringVar(&f.unitWeight, "unit-weight", "", "`weight` of the ground, for --correlate: 18kN/m3")
+	fl.StringVar(&f.unitWeight, "unit-weight", "", "`weight` of ground, for --correlate: 18kN/m3")
 	fl.StringVar(&f.waterTable, "water-table", "", "`depth` of the water, for --correlate: 2m")
 	fl.StringVar(&f.energyRatio, "energy-ratio", "", "`percent` of the hammer, for --correlate: 72%")
 }

@@ -18,6 +18,7 @@ import (
 	"shearbook/report/folder"
 	"shearbook/report/notebook"
 	"shearbook/report/pdf"
+	"shearbook/vs30/siteclass"
 )
 
 // reportFlags are the flags of report.
@@ -121,7 +122,7 @@ func tellClasses(s streams, results []report.Result, dir string) error {
 		if r.Velocity != nil {
 			by = fmt.Sprintf("%.1f %s", r.Velocity.Value, r.Velocity.Unit)
 		}
-		fmt.Fprintf(&b, "%s: site class %s (%s, %s)\n", report.Visible(r.Profile), r.Class, r.Code, by)
+		fmt.Fprintf(&b, "%s: site class %s (%s, %s)\n", report.Visible(r.Profile), siteclass.ClassWords(r.Class, r.Classes), r.Code, by)
 	}
 	fmt.Fprintf(&b, "%s\n%s\n", report.Visible(filepath.Join(dir, folder.PDF)), wrap(report.Caution, width, ""))
 	_, err := io.WriteString(s.out, b.String())
@@ -161,24 +162,30 @@ func (f reportFlags) override(h *notebook.Header) error {
 // canonical is the command as the appendix prints it: the same wherever the
 // files lie.
 func canonical(c *cobra.Command, base string) string {
-	text := "shearbook report " + base
-	for _, name := range append([]string{"extend", "paper", "print-units", "without-data"}, forProfileOnly...) {
-		fl := c.Flags().Lookup(name)
-		if !fl.Changed {
-			continue
-		}
-		values := []string{fl.Value.String()}
-		if list, ok := fl.Value.(pflag.SliceValue); ok {
-			values = list.GetSlice()
-		}
-		if fl.Value.Type() == "bool" {
-			if fl.Value.String() == "true" {
-				text += " --" + name
-			}
-			continue
+	return "shearbook report " + base + printedFlags(c, reportedFlags(), nil)
+}
+
+// reportedFlags are the flags of report that change what it says, in the order
+// in which they are printed.
+func reportedFlags() []string {
+	return append([]string{"extend", "paper", "print-units", "without-data"}, forProfileOnly...)
+}
+
+// printedFlags are flags as they are printed behind a command, without the
+// folders of files. The values in instead take the place of those given.
+func printedFlags(c *cobra.Command, names []string, instead map[string][]string) string {
+	text := ""
+	for _, name := range names {
+		values, other := instead[name]
+		if !other {
+			values = flagValues(c, name)
 		}
 		for _, value := range values {
-			if name == "code-file" {
+			switch {
+			case value == "true" && c.Flags().Lookup(name).Value.Type() == "bool":
+				text += " --" + name
+				continue
+			case name == "code-file":
 				value = filepath.Base(value)
 			}
 			if strings.ContainsAny(value, " ,") {
@@ -188,6 +195,19 @@ func canonical(c *cobra.Command, base string) string {
 		}
 	}
 	return text
+}
+
+// flagValues are the values that a flag was given, none where it was not or is
+// none of the command's.
+func flagValues(c *cobra.Command, name string) []string {
+	fl := c.Flags().Lookup(name)
+	if fl == nil || !fl.Changed || fl.Value.Type() == "bool" && fl.Value.String() != "true" {
+		return nil
+	}
+	if list, ok := fl.Value.(pflag.SliceValue); ok {
+		return list.GetSlice()
+	}
+	return []string{fl.Value.String()}
 }
 
 // source is the notebook or the profile file that report was given.

@@ -205,6 +205,7 @@ type reader struct {
 	again     cursor  // over rows that are read a second time
 	entries   []entry // room for those of an appendix
 	profiles  []profile.Profile
+	each      *apart // nil where a fault is the whole file's
 }
 
 func newReader(file string, opt Options) *reader {

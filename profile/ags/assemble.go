@@ -27,6 +27,7 @@ func (r *reader) assemble() bool {
 	for _, s := range r.sets {
 		s.hole.timed = true
 	}
+	r.each.leaveOut(r)
 	r.addTested()
 	slices.SortStableFunc(r.sets, func(a, b *set) int { return cmp.Compare(a.hole.index, b.hole.index) })
 	for _, g := range r.groups {
@@ -39,17 +40,21 @@ func (r *reader) assemble() bool {
 	r.profiles = make([]profile.Profile, 0, len(r.sets))
 	r.again = cursor{scanner: scanner{text: r.text}}
 	for i, s := range r.sets {
+		before := len(r.profiles)
+		r.each.judge(s.hole)
 		switch {
 		case s.tested != profile.Unknown:
 			r.testedProfile(s, names[i])
 		case r.order(s):
 			r.profile(s, names[i])
 		}
+		r.each.take(r, s.hole, names[i], before)
 		r.sets[i] = nil // for the collector, where there are many
 		if h := s.hole; i+1 == len(r.sets) || r.sets[i+1].hole != h {
 			h.strata, h.results, h.entries = nil, nil, nil
 		}
 	}
+	r.each.judge(nil)
 	if len(r.profiles) == 0 && r.Count() == 0 {
 		r.nothing()
 	}
@@ -194,6 +199,8 @@ func (r *reader) nothing() {
 		hint = fmt.Sprintf("is %s the velocity of shear waves? then say so, as --map \"Vs=%s [%s]\"", u.name, u.name, u.unit)
 	case len(r.header.files) > 0:
 		hint = "the file names attached files, which may hold it: " + some(r.header.files)
+	case r.measuresCones():
+		hint = "its cone tests give velocities by a correlation from cones, as --correlate mayne-2006; `shearbook correlations` lists them"
 	case r.measuresSpecimens():
 		hint = "velocities of specimens (" + strings.Join(laboratory, ", ") + ") are no profile of the ground"
 	}
@@ -208,6 +215,11 @@ func (r *reader) nothing() {
 		seen = some(names)
 	}
 	r.Fault(profile.Place{}, hint, "the file gives neither a shear-wave velocity of the ground nor N nor su; it has %s", seen)
+}
+
+// measuresCones reports whether the file has readings of cones.
+func (r *reader) measuresCones() bool {
+	return slices.ContainsFunc(r.ofHoles(), func(g *group) bool { return g.data && (g.name == "SCPT" || g.name == "CPTT") })
 }
 
 // measuresSpecimens reports whether the file has velocities of the laboratory.

@@ -149,8 +149,27 @@ func give(l *profile.Layer, q profile.Quantity, g profile.Given, to func(*profil
 	*to(l) = of(list)
 	l.Given |= g
 	if q == profile.N {
+		l.EnergyRatio = float32(energyOf(list))
 		l.Refusal = !slices.ContainsFunc(list, func(x result) bool { return !x.refused })
 	}
+}
+
+// energyOf is the energy ratio in % that turns the harmonic mean of blow counts
+// into that of the counts each times its own; 0 where one of them has none.
+func energyOf(list []result) float64 {
+	same, sum, byEnergy := true, 0.0, 0.0
+	for i := range list {
+		x := &list[i]
+		if x.energy == 0 {
+			return 0
+		}
+		same = same && x.energy == list[0].energy
+		sum, byEnergy = sum+1/x.value, byEnergy+1/(x.value*x.energy)
+	}
+	if same || math.IsInf(sum, 1) {
+		return list[0].energy
+	}
+	return sum / byEnergy
 }
 
 // resultsOf are the results of one quantity, from the top down.

@@ -16,16 +16,16 @@ var headerGroups = []string{"PROJ", "TRAN", "ABBR", "DICT", "FILE"}
 
 // usualUnits are the units that the dictionaries give for headings that are
 // read, and whose UNIT row may therefore be blank. Depths under other headings
-// are in m.
+// are in m. Stresses of cone tests are not among them: files give MPa and kPa
+// alike, and the velocity of the wrong one is believed.
 var usualUnits = map[string]string{
 	"LOCA_GL":   "m",
+	"ISPT_ERAT": "%",
 	"ISPT_PEN3": "mm", "ISPT_PEN4": "mm", "ISPT_PEN5": "mm", "ISPT_PEN6": "mm",
 	"LLPL_LL": "%", "LLPL_PL": "%", "LLPL_PI": "%",
 	"LNMC_MC":   "%",
 	"LDEN_BDEN": "Mg/m3",
 	"TRIT_CU":   "kPa", "TRET_CU": "kPa", "IVAN_IVAN": "kPa",
-	"SCPT_RES": "MPa", "SCPT_FRES": "MPa", "SCPT_PWP2": "MPa",
-	"CPTT_QC": "MPa", "CPTT_FS": "MPa", "CPTT_U2": "MPa",
 }
 
 // laboratory are the headings of velocities measured on specimens, which are

@@ -23,10 +23,11 @@ type hole struct {
 	strata      []stratum // top down, without overlaps
 	results     []result  // of tests
 	remarks     []remark
-	index       int     // among the holes of the file
-	timed       bool    // it has velocities
-	tested      bool    // it has none, but a profile all the same
-	entries     []entry // of strata and tests, in the appendix; nil before they are needed
+	index       int                // among the holes of the file
+	timed       bool               // it has velocities
+	tested      bool               // it has none, but a profile all the same
+	entries     []entry            // of strata and tests, in the appendix; nil before they are needed
+	faults      *profile.Collector // of its own, where holes are read apart; nil if there are none
 }
 
 // stratum is a row of GEOL.
@@ -91,9 +92,17 @@ var locaHeadings = []string{
 // there are too many.
 func (r *reader) hole(c *cursor, i int) *hole {
 	text := c.get(i)
-	if h := r.byID[string(text)]; h != nil {
-		return h
+	h := r.byID[string(text)]
+	if h == nil {
+		h = r.newHole(c, i, text)
 	}
+	r.each.row(h, c)
+	return h
+}
+
+// newHole makes a hole, unless its name differs from that of another in
+// blanks alone.
+func (r *reader) newHole(c *cursor, i int, text []byte) *hole {
 	id := clean(text)
 	switch {
 	case id == "":

@@ -32,9 +32,36 @@ func (r *reader) order(s *set) bool {
 		case x.base <= above.base+2*profile.Joint, same(above.top, x.top):
 			r.Fault(at, "are these averages from the ground down? then give the velocity of each interval", "the interval from %s to %s lies inside another%s, or around it",
 				metres(x.top), metres(x.base), line)
+		case !above.point() && x.top-above.base > MaxGap+profile.Joint:
+			r.tooWide(s, i-1)
 		}
 	}
+	if r.Count() == before && s.readings[0].point() {
+		r.holesIn(s)
+	}
 	return r.Count() == before
+}
+
+// holesIn tells of readings at a depth that lie further apart than MaxGap more
+// than is usual in their set.
+func (r *reader) holesIn(s *set) {
+	steps := s.steps()
+	sorted := slices.Clone(steps)
+	slices.Sort(sorted)
+	for i, step := range steps {
+		if step-sorted[(len(sorted)-1)/2] > MaxGap+profile.Joint {
+			r.tooWide(s, i)
+		}
+	}
+}
+
+// steps are the distances in m from each reading to the next.
+func (s *set) steps() []float64 {
+	list := make([]float64, len(s.readings)-1)
+	for i := range list {
+		list[i] = s.readings[i+1].top - s.readings[i].top
+	}
+	return list
 }
 
 // same reports whether two depths are too near to one another to bound a
@@ -46,6 +73,17 @@ func (s *set) hintTwice() string {
 		return "mark the one that does not count in ISTA_IVAL"
 	}
 	return "keep one of them, or give each run or test a name of its own"
+}
+
+// MaxGap is how much ground in m without a velocity is filled from both sides of
+// it, as of logs in package las. More than that may be another soil.
+const MaxGap = 3.0
+
+// tooWide tells of a gap that is not filled, below reading i.
+func (r *reader) tooWide(s *set, i int) {
+	above, x := &s.readings[i], &s.readings[i+1]
+	r.Fault(profile.Place{Line: int(x.row.line), Column: int(x.column)}, "give the velocity between them in a row of its own, from another source",
+		"no velocity from %s to %s in %s; no more than %s are filled", metres(above.base), metres(x.top), profile.Quote(s.hole.id), metres(MaxGap))
 }
 
 // metres is a depth in words.
@@ -154,10 +192,9 @@ func (r *reader) apart(s *set, note func(id, format string, args ...any)) {
 	if len(s.readings) < 3 {
 		return
 	}
-	steps := make([]float64, len(s.readings)-1)
+	steps := s.steps()
 	widest := 0
 	for i := range steps {
-		steps[i] = s.readings[i+1].top - s.readings[i].top
 		if steps[i] > steps[widest]+profile.Joint {
 			widest = i
 		}

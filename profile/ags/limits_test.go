@@ -117,7 +117,7 @@ func user(n, m int) string {
 	}
 	b.WriteString("\r\n\"UNIT\",\"\",\"m\"" + strings.Repeat(",\"m/s\"", m) + "\r\n")
 	for i := range n {
-		fmt.Fprintf(&b, "\"DATA\",\"H\",\"%d\"%s\r\n", i, strings.Repeat(",\"2\"", m))
+		fmt.Fprintf(&b, "\"DATA\",\"H\",\"%d\"%s\r\n", i, strings.Repeat(",\"90\"", m))
 	}
 	return b.String()
 }
@@ -167,7 +167,7 @@ func TestLimits(t *testing.T) {
 		{"strata that overlap", geol + each(n/4, "\"DATA\",\"H\",\"0.%06d\",\"99999\",\"Clay\"\n") + wgptHead + each(n/4, deep), ""},
 		{"many tests in one layer", ispt + strings.Repeat("\"DATA\",\"H\",\"1\",\"5\"\n", n) + two, ""},
 		{"a thousand columns", user(n/400, MaxColumns-2), ""},
-		{"too many velocities", user(MaxReadings/(MaxColumns-2)+1, MaxColumns-2), "x.ags:2008:51: the file has more than 2000000 velocities"},
+		{"too many velocities", user(MaxReadings/(MaxColumns-2)+1, MaxColumns-2), "x.ags:2008:59: the file has more than 2000000 velocities"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			start := cpuTime()

@@ -13,6 +13,7 @@ type penetration struct {
 	report int       // ISPT_REP, such as "25/50 for 140mm"
 	drives []measure // ISPT_PEN3 to ISPT_PEN6: the increments of the main drive
 	kind   int       // ISPT_TYPE
+	energy measure   // ISPT_ERAT, of counts as measured
 }
 
 // The main drive of a standard penetration test is 0.3 m, in increments of
@@ -26,7 +27,7 @@ const (
 )
 
 func (r *reader) penetration(g *group) *penetration {
-	p := &penetration{report: g.column("ISPT_REP"), kind: g.column("ISPT_TYPE")}
+	p := &penetration{report: g.column("ISPT_REP"), kind: g.column("ISPT_TYPE"), energy: r.soft(g, g.column("ISPT_ERAT"), profile.Percent)}
 	for i := 3; i <= 6; i++ {
 		if m := r.soft(g, g.column(fmt.Sprintf("ISPT_PEN%d", i)), profile.Length); m.i > 0 {
 			p.drives = append(p.drives, m)
@@ -55,7 +56,22 @@ func (p *penetration) judge(h *hole, c *cursor, s *source, v float64) (refused b
 
 // reported finds the penetration in ISPT_REP. The last one is that of the
 // main drive.
-var reported = regexp.MustCompile(`(?i)\bfor\s*([0-9]+(?:\.[0-9]+)?)\s*mm\b`)
+var reported = regexp.MustCompile(`(?i)(?:\bfor|/)\s*([0-9]+(?:\.[0-9]+)?)\s*mm\b`)
+
+// unfinished finds the blows of a drive that ISPT_REP says was not finished, as
+// in "50 for 140mm". The last ones are those of the main drive.
+var unfinished = regexp.MustCompile(`(?i)\b([0-9]{1,4})\s*(?:blows?\s*)?(?:for|/)\s*[0-9]+(?:\.[0-9]+)?\s*mm\b`)
+
+// reportedBlows is the blow count in ISPT_REP where there is no other: a lower
+// bound, for the drive was not finished.
+func reportedBlows(text []byte) (v float64, is bound, problem string) {
+	all := unfinished.FindAllSubmatch(text[:min(len(text), longestReport)], -1)
+	if len(all) == 0 {
+		return 0, exact, "gives no blow count"
+	}
+	v, problem = parseNumber(all[len(all)-1][1])
+	return v, atLeast, problem
+}
 
 // longestReport bounds what is looked at of ISPT_REP.
 const longestReport = 200

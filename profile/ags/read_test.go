@@ -9,10 +9,12 @@ import (
 	"testing"
 
 	"github.com/google/go-cmp/cmp"
+	"github.com/google/go-cmp/cmp/cmpopts"
 	"golang.org/x/text/encoding/charmap"
 	"golang.org/x/tools/txtar"
 
 	"shearbook/profile"
+	"shearbook/profile/las"
 )
 
 // logged is the fixture logging.ags.
@@ -155,7 +157,7 @@ func TestHoles(t *testing.T) {
 
 "GROUP","SCPT"
 "HEADING","LOCA_ID","SCPG_TESN","SCPT_DPTH","SCPT_RES","SCPT_FRES","SCPT_PWP2"
-"UNIT","","","m","MPa","kPa",""
+"UNIT","","","m","MPa","kPa","MPa"
 "DATA","W2","C1","0.02","1.100","11","0.010"
 "DATA","W2","C1","0.01","1.000","x",""
 
@@ -177,10 +179,17 @@ func TestHoles(t *testing.T) {
 		t.Fatalf("%+v", holes)
 	}
 	near := cmp.Comparer(func(a, b float64) bool { return math.Abs(a-b) <= 1e-9 })
-	if diff := cmp.Diff(want, holes[1].Cones, near); diff != "" {
+	inWords := cmpopts.IgnoreFields(ConeReading{}, "Cells")
+	wantColumns := []profile.Column{{Heading: "SCPT_DPTH", Unit: "m", Quantity: profile.Depth}, {Heading: "SCPT_RES", Unit: "MPa", Quantity: profile.TipResistance},
+		{Heading: "SCPT_FRES", Unit: "kPa", Quantity: profile.SleeveFriction}, {Heading: "SCPT_PWP2", Unit: "MPa", Quantity: profile.PorePressure}}
+	want[0].Columns = wantColumns
+	if got := holes[1].Cones[0].Readings[1].Cells; got != strings.Join([]string{"0.02", "1.100", "11", "0.010"}, profile.CellSeparator) {
+		t.Errorf("the words of the file are %q", got)
+	}
+	if diff := cmp.Diff(want, holes[1].Cones, near, inWords); diff != "" {
 		t.Errorf("(-want +got)\n%s", diff)
 	}
-	if test := holes[1].Tests[0]; test != (Test{Depth: 1, Quantity: profile.N, Value: 7, Heading: "ISPT_NVAL", Line: 34}) {
+	if test := holes[1].Tests[0]; test != (Test{Depth: 1, Quantity: profile.N, Value: 7, Energy: 70, Heading: "ISPT_NVAL", Line: 34}) {
 		t.Errorf("%+v", test)
 	}
 	if len(holes[2].Cones) != 1 || len(holes[2].Cones[0].Readings) != 1 {
@@ -228,5 +237,131 @@ func TestHints(t *testing.T) {
 				}
 			}
 		}
+	}
+}
+
+// A cone whose unit is blank, or whose resistances no cone meets, is a fault:
+// kPa that are taken for MPa make soft clay into rock.
+func TestConeUnitBlankIsNotMPa(t *testing.T) {
+	cone := func(units, values string) string {
+		return "\"GROUP\",\"SCPT\"\n\"HEADING\",\"LOCA_ID\",\"SCPG_TESN\",\"SCPT_DPTH\",\"SCPT_RES\",\"SCPT_FRES\",\"SCPT_PWP2\"\n" +
+			"\"UNIT\",\"\",\"\",\"m\"," + units + "\n\"DATA\",\"H\",\"1\",\"1\"," + values + "\n\"DATA\",\"H\",\"1\",\"2\"," + values + "\n"
+	}
+	for _, c := range []struct{ units, values, want string }{
+		{`"","kPa","kPa"`, `"1000","20","0"`, "x.ags:2:45: heading SCPT_RES states no unit"},
+		{`"MPa","","kPa"`, `"1","20","0"`, "x.ags:2:56: heading SCPT_FRES states no unit"},
+		{`"MPa","kPa",""`, `"1","20","0"`, "x.ags:2:68: heading SCPT_PWP2 states no unit"},
+		{`"MPa","kPa",""`, `"1","20",""`, ""}, // nothing was read of it
+		{`"MPa","kPa","kPa"`, `"1000","20","0"`, `x.ags:4:20: SCPT_RES "1000" MPa is more than the 150 MPa that a cone can meet`},
+		{`"MPa","MPa","kPa"`, `"1","20","0"`, `x.ags:4:24: SCPT_FRES "20" MPa is more than the 5 MPa that a cone can meet`},
+		{`"MPa","MPa","kPa"`, `"150","5","0"`, ""},
+	} {
+		_, err := ReadHoles("x.ags", []byte(cone(c.units, c.values)), Options{})
+		got := ""
+		if faults, ok := err.(profile.Faults); ok && len(faults) == 1 {
+			got = faults[0].Place.String() + ": " + faults[0].Text
+		} else if err != nil {
+			got = err.Error()
+		}
+		if got != c.want {
+			t.Errorf("%s %s: got %q, want %q", c.units, c.values, got, c.want)
+		}
+	}
+}
+
+// The area ratio of a cone is read, of both groups, and only where it can be one.
+func TestConeAreaRatioRead(t *testing.T) {
+	for value, want := range map[string]float64{"0.8": 0.8, "1": 1, "": 0, "80": 0, "0": 0} {
+		for _, group := range []string{"SCPG", "CPTG"} {
+			data := "\"GROUP\",\"" + group + "\"\n\"HEADING\",\"LOCA_ID\",\"" + group + "_TESN\",\"" + group + "_CAR\"\n\"UNIT\",\"\",\"\",\"\"\n\"DATA\",\"H\",\"1\",\"" + value + "\"\n"
+			holes, err := ReadHoles("x.ags", []byte(data), Options{})
+			if err != nil || holes[0].Cones[0].AreaRatio != want || (len(holes[0].Notes) > 0) != (value == "80" || value == "0") {
+				t.Errorf("%s %q: %+v, %v", group, value, holes, err)
+			}
+		}
+	}
+}
+
+// An interval that is missing is bridged over MaxGap at most, as in a log.
+func TestWideGapIsNotBridged(t *testing.T) {
+	if MaxGap != las.MaxGap {
+		t.Errorf("a gap of %v m is filled, of %v m in a log", MaxGap, las.MaxGap)
+	}
+	seismic := func(from, to string) string {
+		return "\"GROUP\",\"ISTA\"\n\"HEADING\",\"LOCA_ID\",\"ISTG_TESN\",\"ISTA_TOP\",\"ISTA_BASE\",\"ISTA_WVTY\",\"ISTA_WVL\"\n\"UNIT\",\"\",\"\",\"m\",\"m\",\"\",\"m/s\"\n" +
+			"\"DATA\",\"H\",\"1\",\"0\",\"6\",\"S\",\"190\"\n\"DATA\",\"H\",\"1\",\"" + from + "\",\"" + to + "\",\"S\",\"370\"\n"
+	}
+	log := func(depths ...string) string {
+		text := "\"GROUP\",\"WGPT\"\n\"HEADING\",\"LOCA_ID\",\"WGPG_ID\",\"WGPG_TOOL\",\"WGPT_PARA\",\"WGPT_UNIT\",\"WGPT_DPTH\",\"WGPT_RDNG\"\n\"UNIT\",\"\",\"\",\"\",\"\",\"\",\"m\",\"\"\n"
+		for _, z := range depths {
+			text += "\"DATA\",\"H\",\"R\",\"PSL\",\"PSL-SWV\",\"m/s\",\"" + z + "\",\"200\"\n"
+		}
+		return text
+	}
+	for _, c := range []struct{ name, data, want string }{
+		{"intervals 16 m apart", seismic("22", "24"), `no velocity from 6 m to 22 m in "H"; no more than 3 m are filled`},
+		{"intervals 3 m apart", seismic("9", "24"), ""},
+		{"readings 11 m apart", log("1", "2", "3", "14", "15"), `no velocity from 3 m to 14 m in "H"; no more than 3 m are filled`},
+		{"readings 4 m apart, 1 m being usual", log("1", "2", "3", "7", "8"), ""},
+		{"readings 5 m apart throughout", log("1", "6", "11"), ""},
+	} {
+		_, err := Read("x.ags", []byte(c.data), Options{})
+		if c.want == "" && err != nil || c.want != "" && (err == nil || !strings.Contains(err.Error(), c.want)) {
+			t.Errorf("%s: got %v, want %q", c.name, err, c.want)
+		}
+	}
+}
+
+// A test that was refused before it gave an N is a lower bound, and one of which
+// nothing can be read is counted among what is left out.
+func TestRefusedTestIsNotDropped(t *testing.T) {
+	const data = `"GROUP","ISPT"
+"HEADING","LOCA_ID","ISPT_TOP","ISPT_NVAL","ISPT_REP","ISPT_ERAT"
+"UNIT","","m","","",""
+"DATA","H","1","10","2,2/2,2,3,3","60"
+"DATA","H","4","","25/50 for 140mm","75"
+"DATA","H","7","","50/25mm","75"
+"DATA","H","10","","refused",""
+"DATA","H","13","","unknown",""
+"DATA","H","16","","",""
+"DATA","H","19","","50 for 200 mm","75"
+`
+	holes, err := ReadHoles("x.ags", []byte(data), Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	n := func(z, v float64, refused bool, energy float64, line int) Test {
+		return Test{Depth: z, Quantity: profile.N, Value: v, Refused: refused, Energy: energy, Heading: "ISPT_NVAL", Line: line}
+	}
+	// 140 and 25 mm are less than one increment of 150 mm; 200 mm is not.
+	want := []Test{n(1, 10, false, 60, 4), n(4, 50, true, 75, 5), n(7, 50, true, 75, 6), n(19, 50, false, 75, 10)}
+	if diff := cmp.Diff(want, holes[0].Tests); diff != "" {
+		t.Errorf("(-want +got)\n%s", diff)
+	}
+	var notes []string
+	for _, note := range holes[0].Notes {
+		notes = append(notes, note.ID+": "+note.Text)
+	}
+	wantNotes := []string{
+		`test-bound: ISPT_NVAL "REP 25/50 for 140mm" is a lower bound and was read as its number, 50, and so in 2 more rows`,
+		`not-read: ISPT_NVAL "REP refused" gives no blow count and was left out, and so in 1 more row`,
+		`test-incomplete: ISPT_NVAL "REP 50 for 200 mm" is of a test driven 200 mm in place of 300 mm, and was taken as it stands`,
+	}
+	if diff := cmp.Diff(wantNotes, notes); diff != "" {
+		t.Errorf("(-want +got)\n%s", diff)
+	}
+	// Layers take the energy ratio of their tests; of several, the one that
+	// keeps the harmonic mean of N60. By hand: 2/(1/(10·60) + 1/(20·80)) ÷
+	// 2/(1/10 + 1/20) = 872.7273/13.3333 = 65.4545 %.
+	list := []result{{value: 10, energy: 60}, {value: 20, energy: 80}}
+	if got := energyOf(list); math.Abs(got-65.454545) > 1e-5 {
+		t.Errorf("got %v %%", got)
+	}
+	if got := energyOf(append(list, result{value: 9})); got != 0 {
+		t.Errorf("one of three does not say, got %v %%", got)
+	}
+	profiles, err := Read("x.ags", []byte(data), Options{})
+	if err != nil || profiles[0].Layers[0].EnergyRatio != 60 || profiles[0].Layers[1].EnergyRatio != 75 || !profiles[0].Layers[1].Refusal {
+		t.Errorf("%+v, %v", profiles, err)
 	}
 }

@@ -1,6 +1,7 @@
 package ags
 
 import (
+	"fmt"
 	"slices"
 	"strings"
 
@@ -13,8 +14,9 @@ type result struct {
 	value   float64 // in SI
 	source  *source
 	row     rowAt
-	column  int32 // of the value, in characters
-	refused bool  // penetration was
+	column  int32   // of the value, in characters
+	refused bool    // penetration was
+	energy  float64 // %, of the hammer; 0 if not stated
 }
 
 // test is a heading that holds results.
@@ -85,7 +87,7 @@ func (r *reader) test(g *group, heading string, q profile.Quantity) {
 	case "LLPL_PI":
 		s.instead = []int{g.column("LLPL_LL"), g.column("LLPL_PL")}
 	case "ISPT_NVAL":
-		s.instead = []int{g.column("ISPT_MAIN")}
+		s.instead = []int{g.column("ISPT_MAIN"), g.column("ISPT_REP")}
 	}
 	if s.value == 0 && !slices.ContainsFunc(s.instead, func(i int) bool { return i > 0 }) {
 		return
@@ -145,18 +147,26 @@ func (r *reader) result(c *cursor, s *source, p *penetration) {
 		return
 	}
 	if is != exact {
-		h.remark("test-bound", s.name, at, s.name+" "+profile.Quote(s.cell(c))+" is "+string(is)+" and was read as its number")
+		text := s.name + " " + profile.Quote(s.cell(c)) + " is " + string(is) + " and was read as its number"
+		if s.q == profile.N && len(c.get(s.value)) == 0 {
+			text += fmt.Sprintf(", %.4g", v)
+		}
+		h.remark("test-bound", s.name, at, text)
 	}
 	x.depth, x.value, x.column = z, v*s.factor, int32(at.Column)
 	if s.g.name == "ISPT" {
 		x.refused = p.judge(h, c, s, v)
+		if s.name == "ISPT_NVAL" {
+			x.energy, _ = r.optional(h, c, p.energy, profile.Percent)
+		}
 	}
 	h.results = append(h.results, x)
 }
 
 // resultIn is the result in the present row, in the unit of its column. A
 // plasticity index that is blank is the difference of the limits; NP, which
-// is non-plastic, is 0. A blow count that is blank is that of the main drive.
+// is non-plastic, is 0. A blow count that is blank is that of the main drive, or
+// of one that was not finished, as ISPT_REP tells.
 func (s *source) resultIn(c *cursor) (v float64, is bound, problem string) {
 	text := c.get(s.value)
 	if s.q == profile.PI && nonPlastic(text) {
@@ -165,8 +175,11 @@ func (s *source) resultIn(c *cursor) (v float64, is bound, problem string) {
 	if len(text) > 0 || len(s.instead) == 0 {
 		return parseResult(text)
 	}
-	if len(s.instead) == 1 {
-		return parseResult(c.get(s.instead[0]))
+	if s.q == profile.N {
+		if main := c.get(s.instead[0]); len(main) > 0 {
+			return parseResult(main)
+		}
+		return reportedBlows(c.get(s.instead[1]))
 	}
 	if nonPlastic(c.get(s.instead[0])) || nonPlastic(c.get(s.instead[1])) {
 		return 0, exact, ""

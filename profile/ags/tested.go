@@ -11,7 +11,7 @@ import (
 // strengths, if they are asked for or the file has no velocities at all: each
 // becomes a profile without velocities.
 func (r *reader) addTested() {
-	if len(r.sets) > 0 && !r.opt.Untimed {
+	if (len(r.sets) > 0 || r.each != nil && r.Count() > 0) && !r.opt.Untimed {
 		return
 	}
 	for _, h := range r.holes {

@@ -133,7 +133,7 @@ func plainProfile(p *profile.Profile) profile.Profile {
 	s.Method, s.Date, s.Operator, s.Location = ascii(s.Method), ascii(s.Date), ascii(s.Operator), ascii(s.Location)
 	plain.Layers = slices.Clone(p.Layers)
 	for i := range plain.Layers {
-		plain.Layers[i].Soil = ascii(plain.Layers[i].Soil)
+		plain.Layers[i].Soil, plain.Layers[i].EnergyRatio = ascii(plain.Layers[i].Soil), 0
 	}
 	return plain
 }
@@ -218,9 +218,10 @@ func equal(a, b *profile.Profile) bool {
 }
 
 // Lost tells what Write does not keep of the profiles: characters that ASCII
-// has not, decimals of the ground level and of a position in a grid, and the
-// notes. What a profile says of
-// the file it was read from is not written either, and not told.
+// has not, decimals of the ground level and of a position in a grid, the energy
+// ratio of blow counts, and the notes, each as what a sentence says is not kept.
+// What a profile says of the file it was read from is not written either, and
+// not told.
 func Lost(profiles []profile.Profile) []profile.Note {
 	var notes []profile.Note
 	note := func(p *profile.Profile, id, text string) {
@@ -235,22 +236,25 @@ func Lost(profiles []profile.Profile) []profile.Note {
 			*s = clean([]byte(*s))
 		}
 		for k := range trimmed.Layers {
-			trimmed.Layers[k].Soil = clean([]byte(trimmed.Layers[k].Soil))
+			trimmed.Layers[k].Soil, trimmed.Layers[k].EnergyRatio = clean([]byte(trimmed.Layers[k].Soil)), 0
 		}
 		if !equal(&plain, &trimmed) {
-			note(p, "ascii", "AGS4 is ASCII; other characters are replaced")
+			note(p, "ascii", "characters that are not ASCII, and replaces them")
 		}
 		if level := p.Survey.GroundLevel; level.Known && !sameDecimal(level.Value) {
-			note(p, "ground-level", "the ground level is rounded to 0.01 m")
+			note(p, "ground-level", "the ground level to more than 0.01 m")
 		}
 		switch at := p.Position; {
 		case at.Easting.Known != at.Northing.Known || at.EPSG > 0 && !at.Easting.Known:
-			note(p, "position", "a position in a grid is written only if easting and northing are known")
+			note(p, "position", "half a position in a grid")
 		case !sameDecimal(at.Easting.Value) || !sameDecimal(at.Northing.Value):
-			note(p, "position", "the position in its grid is rounded to 0.01")
+			note(p, "position", "the position in its grid to more than 0.01")
 		}
-		if len(p.Notes) > 0 {
-			note(p, "notes", profile.Plural(len(p.Notes), "note")+" on it are not written")
+		if slices.ContainsFunc(p.Layers, func(l profile.Layer) bool { return l.EnergyRatio != 0 }) {
+			note(p, "energy", "the energy ratio of its blow counts")
+		}
+		if len(p.Notes) > len(profile.Doubts(p)) {
+			note(p, "notes", "notes on how it was read")
 		}
 	}
 	return notes

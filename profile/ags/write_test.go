@@ -239,9 +239,9 @@ func TestLost(t *testing.T) {
 	for _, n := range Lost([]profile.Profile{p, {Name: "A", Layers: p.Layers[:0]}}) {
 		ids = append(ids, n.ID+": "+n.Text)
 	}
-	want := []string{"ascii: profile Löss: AGS4 is ASCII; other characters are replaced",
-		"ground-level: profile Löss: the ground level is rounded to 0.01 m",
-		"position: profile Löss: the position in its grid is rounded to 0.01", "notes: profile Löss: 2 notes on it are not written"}
+	want := []string{"ascii: profile Löss: characters that are not ASCII, and replaces them",
+		"ground-level: profile Löss: the ground level to more than 0.01 m",
+		"position: profile Löss: the position in its grid to more than 0.01", "notes: profile Löss: notes on how it was read"}
 	if diff := cmp.Diff(want, ids); diff != "" {
 		t.Errorf("(-want +got)\n%s", diff)
 	}

@@ -45,7 +45,7 @@ func (b *blocks) askReadings() {
 	}
 	for i := range b.cone.Readings {
 		in := opt.input(b.cone, i)
-		if !opt.corrects(&b.cone.Readings[i]) {
+		if !opt.corrects(b.cone, &b.cone.Readings[i]) {
 			b.raw++
 		}
 		for k, r := range b.w.relations {
@@ -210,6 +210,13 @@ func (b *blocks) average(s span, from int) []Estimate {
 func (b *blocks) notes() []profile.Note {
 	o, t := b.w.opt, b.w.tells
 	notes := []profile.Note{t.byRelations(), t.sigmas(o.SigmaLn > 0), {ID: "cone-to-layers", Text: b.rule()}}
+	if b.raw < len(b.cone.Readings) && t.needs(CorrectedTip, BehaviourIndex, NormalisedTip) {
+		of := "the file states of the cone"
+		if o.AreaRatio > 0 {
+			of = "is stated by the user"
+		}
+		notes = append(notes, profile.Note{ID: "area-ratio", Text: fmt.Sprintf("qt is qc + (1 − a)·u2, with the area ratio a of %.4g that %s", o.areaRatio(b.cone), of)})
+	}
 	if b.raw > 0 && t.needs(CorrectedTip, BehaviourIndex, NormalisedTip) {
 		notes = append(notes, profile.Note{ID: "tip-not-corrected", Text: fmt.Sprintf(
 			"qt is taken to be qc at %s, for the pore pressure at the shoulder or the area ratio of the cone is not stated",

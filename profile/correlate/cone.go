@@ -13,6 +13,7 @@ type Cone struct {
 	Position    profile.Position
 	GroundLevel profile.Optional // m above the stated datum
 	WaterTable  profile.Optional // m below ground level
+	AreaRatio   float64          // a of qt = qc + (1 − a)·u2, 0 < a ≤ 1; 0 if not stated
 	Readings    []Reading        // top down
 
 	Source *profile.Reading // the file that it was read from; nil if none
@@ -60,7 +61,7 @@ const MaxCarry = 5.0
 // unit-weight and water-table, as of Profile, and
 //
 //   - cone-to-layers: the rule by which readings became layers.
-//   - tip-not-corrected: qt is qc.
+//   - area-ratio, tip-not-corrected: how qt comes of qc, or that it is qc.
 //   - soil-by-cone: the soil is the one that Ic tells.
 //   - readings-refused: relations that do not hold at some readings.
 //   - top-not-measured: how far the first velocity was carried up.
@@ -97,6 +98,9 @@ func (c *Cone) check() error {
 	faults := profile.Collector{File: c.file()}
 	if len(c.Readings) == 0 {
 		faults.Fault(profile.Place{}, "", "cone %s has no readings", profile.Quote(c.Name))
+	}
+	if a := c.AreaRatio; a != 0 && !(a > 0 && a <= 1) {
+		faults.Fault(profile.Place{}, "", "the area ratio %v of cone %s is not one of 0 to 1", a, profile.Quote(c.Name))
 	}
 	above := math.Inf(-1)
 	for i := range c.Readings {
@@ -164,7 +168,7 @@ func (o *Options) input(c *Cone, i int) Input {
 			in.Set(x.q, x.v.Value)
 		}
 	}
-	if qt, ok := o.correctedTip(r); ok {
+	if qt, ok := o.correctedTip(c, r); ok {
 		in.Set(CorrectedTip, qt)
 	}
 	w := water{o.waterOf(c.WaterTable)}
@@ -175,14 +179,24 @@ func (o *Options) input(c *Cone, i int) Input {
 }
 
 // correctedTip is qt, and false where qc was not read.
-func (o *Options) correctedTip(r *Reading) (float64, bool) {
-	if o.corrects(r) {
-		return r.Tip.Value + (1-o.AreaRatio)*r.PorePressure.Value, r.Tip.Known
+func (o *Options) correctedTip(c *Cone, r *Reading) (float64, bool) {
+	if o.corrects(c, r) {
+		return r.Tip.Value + (1-o.areaRatio(c))*r.PorePressure.Value, r.Tip.Known
 	}
 	return r.Tip.Value, r.Tip.Known
 }
 
-func (o *Options) corrects(r *Reading) bool { return o.AreaRatio > 0 && r.PorePressure.Known }
+func (o *Options) corrects(c *Cone, r *Reading) bool {
+	return o.areaRatio(c) > 0 && r.PorePressure.Known
+}
+
+// areaRatio is the user's, or else that of the cone.
+func (o *Options) areaRatio(c *Cone) float64 {
+	if o.AreaRatio > 0 {
+		return o.AreaRatio
+	}
+	return c.AreaRatio
+}
 
 // setBehaviour makes Ic and Qtn known, and the soil that they tell, or says why
 // they are not.

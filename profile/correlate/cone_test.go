@@ -218,3 +218,41 @@ func TestSoundingOtherSoil(t *testing.T) {
 		t.Error(got)
 	}
 }
+
+// The area ratio of the cone stands where the user states none, and the user's
+// goes before it. Either way the velocities are the same as by the user's alone.
+func TestSoundingAreaRatioOfCone(t *testing.T) {
+	cone := func(ratio float64) *Cone {
+		c := uniform(3, 1000, 20)
+		for i := range c.Readings {
+			c.Readings[i].PorePressure = profile.Known(200)
+		}
+		c.AreaRatio = ratio
+		return c
+	}
+	o := Options{Relations: []string{"robertson-2009"}, UnitWeight: 18}
+	byUser := o
+	byUser.AreaRatio = 0.8
+	want, err := Sounding(cone(0), byUser)
+	if err != nil {
+		t.Fatal(err)
+	}
+	got, err := Sounding(cone(0.8), o)
+	if err != nil || got.Layers[2].Vs != want.Layers[2].Vs || hasNote(&got, "tip-not-corrected") {
+		t.Errorf("got %+v, %v; want %+v", got.Layers, err, want.Layers)
+	}
+	if text := note(t, &got, "area-ratio"); text != "qt is qc + (1 − a)·u2, with the area ratio a of 0.8 that the file states of the cone" {
+		t.Error(text)
+	}
+	before, err := Sounding(cone(0.5), byUser)
+	if err != nil || before.Layers[2].Vs != want.Layers[2].Vs || note(t, &before, "area-ratio") != "qt is qc + (1 − a)·u2, with the area ratio a of 0.8 that is stated by the user" {
+		t.Errorf("got %+v, %v", before.Layers, err)
+	}
+	raw, err := Sounding(cone(0), o)
+	if err != nil || raw.Layers[2].Vs >= want.Layers[2].Vs || !hasNote(&raw, "tip-not-corrected") {
+		t.Errorf("uncorrected: %+v, %v", raw.Layers, err)
+	}
+	if _, err := Sounding(cone(1.5), o); err == nil {
+		t.Error("an area ratio of 1.5 is taken")
+	}
+}

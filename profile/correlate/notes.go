@@ -2,6 +2,7 @@ package correlate
 
 import (
 	"fmt"
+	"slices"
 
 	"shearbook/profile"
 )
@@ -65,12 +66,24 @@ func (w *worker) blowText() string {
 		return "blow counts are taken as measured, without correction"
 	}
 	d := o.Drive
-	text := fmt.Sprintf("blow counts are corrected to N60 from an energy ratio of %.4g %%, a borehole of %s and the length of the rods, "+
-		"%.4g m above ground level (Skempton 1986, Youd et al. 2001; from memory)", d.EnergyRatio, d.boreholeText(), d.RodAbove)
+	text := fmt.Sprintf("blow counts are corrected to N60 from %s, a borehole of %s and the length of the rods, "+
+		"%.4g m above ground level (Skempton 1986, Youd et al. 2001; from memory)", w.ratioText(), d.boreholeText(), d.RodAbove)
 	if d.Sampler > 1 {
 		text += fmt.Sprintf(", and by %.3g for a sampler without its liners", d.Sampler)
 	}
 	return text
+}
+
+// ratioText says what the energy ratio is, and who states it.
+func (w *worker) ratioText() string {
+	if len(w.ratios) == 0 {
+		return fmt.Sprintf("an energy ratio of %.4g %%", w.opt.Drive.EnergyRatio)
+	}
+	least, most := slices.Min(w.ratios), slices.Max(w.ratios)
+	if most-least <= 1e-9*most {
+		return fmt.Sprintf("the energy ratio of %.4g %% that the file states", most)
+	}
+	return fmt.Sprintf("the energy ratio that the file states of each test, which varies from %.4g to %.4g %%", least, most)
 }
 
 func (d Drive) boreholeText() string {

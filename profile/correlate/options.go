@@ -63,7 +63,7 @@ type Options struct {
 	WaterTable profile.Optional
 
 	Blows Blows // what N of the layers is
-	Drive Drive // for N60 of counts as measured; the zero value corrects nothing, and N60 is not corrected again
+	Drive Drive // for N60 of counts as measured; its energy ratio goes before those of the layers; without any nothing is corrected, and N60 is not corrected again
 
 	// SigmaLn is the standard deviation of ln Vs of a relation that publishes
 	// none; 0 means Planning.
@@ -83,8 +83,9 @@ type Options struct {
 	Boundaries []float64
 	Alone      bool
 
-	// AreaRatio is a of qt = qc + (1 − a)·u2, 0 < a ≤ 1; where it is 0, or u2 was
-	// not read, qt is qc, and a note says so.
+	// AreaRatio is a of qt = qc + (1 − a)·u2, 0 < a ≤ 1; where it is 0 it is that
+	// of the cone. Where neither is known, or u2 was not read, qt is qc, and a note
+	// says so.
 	AreaRatio float64
 }
 

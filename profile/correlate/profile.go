@@ -142,7 +142,8 @@ type worker struct {
 	opt       *Options
 	relations []*Relation
 	tells     *teller
-	energy60  bool // N is N60
+	energy60  bool      // N is N60
+	ratios    []float64 // %, the energy ratios of layers that were used
 }
 
 // ask returns the estimates of the relations that hold in a stretch.
@@ -204,12 +205,28 @@ func (w *worker) blows(in *Input, l *profile.Layer, z float64) {
 		in.Set(BlowCount60, l.N)
 	default:
 		in.Set(BlowCount, l.N)
+		w.correct(in, l, z)
+	}
+}
+
+// correct makes the N60 of a layer known from its N as measured: by the user's
+// energy ratio, or else by that of its tests.
+func (w *worker) correct(in *Input, l *profile.Layer, z float64) {
+	d := w.opt.Drive
+	if d.EnergyRatio == 0 {
+		d.EnergyRatio = float64(l.EnergyRatio)
+	}
+	if d.EnergyRatio == 0 {
 		in.missing(BlowCount60, "the energy of the blows is not stated")
-		if w.opt.Drive == (Drive{}) {
-			return
-		}
-		if n, err := w.opt.Drive.N60(l.N, z); err == nil { // Options.Check looked at it
-			in.Set(BlowCount60, n)
-		}
+		return
+	}
+	n, err := d.N60(l.N, z)
+	if err != nil { // of the layer's energy ratio: Options.Check looked at the rest
+		in.missing(BlowCount60, err.Error())
+		return
+	}
+	in.Set(BlowCount60, n)
+	if w.opt.Drive.EnergyRatio == 0 {
+		w.ratios = append(w.ratios, d.EnergyRatio)
 	}
 }

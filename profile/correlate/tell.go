@@ -117,7 +117,12 @@ func (t *teller) byRelations() profile.Note {
 		if slices.ContainsFunc(t.told, func(of told) bool { return of.reasons != nil }) {
 			of = "those of them that hold in its layer"
 		}
-		text += fmt.Sprintf("; each is the geometric mean of %s, which differ by a factor of up to %.2f at one depth", of, t.between)
+		text += "; each is the geometric mean of " + of
+		if t.between > 1 {
+			text += fmt.Sprintf(", which differ by a factor of up to %.2f at one depth", t.between)
+		} else {
+			text += ", of which no two hold at one depth"
+		}
 	}
 	return profile.Note{ID: "correlated-by", Text: text}
 }

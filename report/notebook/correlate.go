@@ -54,8 +54,8 @@ func correlationKeys(o *correlate.Options) string {
 
 func plainNumber(v float64) string { return strconv.FormatFloat(v, 'f', -1, 64) }
 
-// estimatedBy names the relations that a profile's velocities are estimated by,
-// "" if they are not.
+// estimatedBy names the relations that a profile's velocities are estimated by
+// here, "" if they are not, or if the file has them so.
 func (s *site) estimatedBy() string {
 	if basisOf(s.profile) != profile.Correlated.String() {
 		return ""
@@ -63,12 +63,23 @@ func (s *site) estimatedBy() string {
 	return strings.Join(s.entry.Read.Correlate.Relations, ", ")
 }
 
+// correlated reports whether any velocity of the profile is correlated from
+// other tests, here or before it was written into its file.
+func (s *site) correlated() bool {
+	for i := range s.profile.Layers {
+		if s.profile.BasisOf(i) == profile.Correlated {
+			return true
+		}
+	}
+	return false
+}
+
 // carrySigma gives the layer by which an estimated profile was extended the
 // sigma of the lowest one that has any, and says whether there was one to give
 // it to: the error of a correlation is common to all layers.
 func (s *site) carrySigma(layers []profile.Layer) ([]profile.Layer, bool) {
 	last := len(layers) - 1
-	if s.estimatedBy() == "" || last < 1 || layers[last].Has(profile.GivenSigma) || !layers[last-1].Has(profile.GivenSigma) {
+	if !s.correlated() || last < 1 || layers[last].Has(profile.GivenSigma) || !layers[last-1].Has(profile.GivenSigma) {
 		return layers, false
 	}
 	layers = slices.Clone(layers)

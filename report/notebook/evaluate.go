@@ -198,7 +198,7 @@ func sentence(text string) string {
 	if text == "" || strings.HasSuffix(text, ".") {
 		return text
 	}
-	return strings.ToUpper(text[:1]) + text[1:] + "."
+	return capital(text) + "."
 }
 
 func para(text string) *report.Paragraph {

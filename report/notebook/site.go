@@ -101,7 +101,7 @@ func (ev *evaluation) shortText(s *site, err error) string {
 // "" where that is not what is wrong.
 func (ev *evaluation) refusal(s *site, err error) string {
 	var short *vs30.ShortError
-	if errors.As(err, &short) && s.extend != "" {
+	if errors.As(err, &short) && s.extend != "" && !s.profile.NoVelocity {
 		_, _, err = report.Extended(s.profile, s.extend, s.datum, short.Needed-s.datum)
 	}
 	var refused *extend.Refusal
@@ -113,6 +113,9 @@ func (ev *evaluation) refusal(s *site, err error) string {
 
 // shortHint is what to do about a profile that is too short.
 const shortHint = "add `extend: constant-velocity`, or another relation of the extend working, to the front matter if the ground below may be estimated so; or survey deeper"
+
+// shortTests is the same where the profile has no velocities.
+const shortTests = "N and su are not carried below their tests: bore deeper, or add `correlate: imai-tonouchi-1982` to the profile and `extend: constant-velocity`, if velocities may be estimated so"
 
 // decide classifies a site under a code, once. It adds a fault where there
 // is no answer.
@@ -129,6 +132,9 @@ func (ev *evaluation) decide(s *site, code *siteclass.Code, at profile.Place) (s
 		hint := ""
 		if errors.As(err, new(*vs30.ShortError)) {
 			hint = shortHint
+			if s.profile.NoVelocity {
+				hint = shortTests
+			}
 		}
 		ev.add(at, hint, "%s: %s", code.ID, ev.shortText(s, err))
 		return d, false

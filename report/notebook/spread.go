@@ -20,7 +20,7 @@ var spreadWorking = Working{
 		{"sigma", "standard deviation of ln Vs of every layer, as 0.15; those of the file if left out"},
 		{"average sigma", "standard deviation of ln of the average itself, as 0.10, instead of those of layers"},
 		{"boundaries", "standard error of the depth of each boundary, as 0.5 m; none if left out"},
-		{"correlation", "independent, full, or toro: how the errors of the layers go together; if left out, independent, but full where the velocities are estimated by correlations"},
+		{"correlation", "independent, full, or toro: how the errors of the layers go together; if left out, independent, but full where velocities are correlated from other tests"},
 		{"equivalents", "a list of profiles that fit one survey about equally well, drawn from in place of sigmas"},
 		{"layering", "random to draw the boundaries anew in every profile (Toro 1995); fixed if left out"},
 		{"realisations", "how many profiles are drawn; 100000 if left out"},
@@ -89,7 +89,7 @@ func (m *mapping) positive(key string, limit float64) float64 {
 
 // spreadBlocks is all of it for one profile.
 func (ev *evaluation) spreadBlocks(s *site, k spreadKeys) []report.Block {
-	if !k.ruled && s.estimatedBy() != "" {
+	if !k.ruled && s.correlated() {
 		k.correlation = spread.Full // the error of a correlation is common to all layers
 	}
 	depths := ev.depths(s, profile.Optional{})
@@ -294,13 +294,27 @@ func (ev *evaluation) correlation(rule spread.Rule, layers []profile.Layer, from
 
 // sigmaSource says where the sigmas come from.
 func (ev *evaluation) sigmaSource(s *site, k spreadKeys) string {
-	if k.sigma > 0 {
-		return "Sigma of ln Vs of every layer: " + shortest(k.sigma, 3) + ", as the notebook states."
+	text := "Sigmas of ln Vs: those that " + s.entry.File + " states for the layers."
+	if by := s.estimatedBy(); k.sigma > 0 {
+		text = "Sigma of ln Vs of every layer: " + shortest(k.sigma, 3) + ", as the notebook states."
+	} else if by != "" {
+		text = "Sigmas of ln Vs: those of the correlations that the velocities are estimated by (" + by + ")."
 	}
-	if by := s.estimatedBy(); by != "" {
-		return "Sigmas of ln Vs: those of the correlations that the velocities are estimated by (" + by + "). The error of a correlation is common to all layers, so full correlation is what holds unless the notebook states another."
+	return text + s.commonError()
+}
+
+// commonError says why the errors of correlated velocities go together; "" where
+// there are none.
+func (s *site) commonError() string {
+	switch {
+	case !s.correlated():
+		return ""
+	case basisOf(s.profile) == "mixed":
+		return " Some of the velocities are correlated from other tests. The error of a correlation is common to its layers; one rule is taken for all layers, the others included, so full correlation is what holds unless the notebook states another."
+	case s.estimatedBy() == "":
+		return " The velocities are correlated from other tests. The error of a correlation is common to all layers, so full correlation is what holds unless the notebook states another."
 	}
-	return "Sigmas of ln Vs: those that " + s.entry.File + " states for the layers."
+	return " The error of a correlation is common to all layers, so full correlation is what holds unless the notebook states another."
 }
 
 // noSigma says that nobody states a sigma, and offers what is published.

@@ -14,6 +14,7 @@ import (
 // Standard is what the standard template's front matter is filled with.
 type Standard struct {
 	Profile           string // of the file, the one to report; "" for every one
+	Extract           bool   // the file is the rows of one profile of a larger table, and the report says so
 	Codes             []string
 	CodeFiles         []string         // files of tables of their own, as ReadFile knows them
 	Read              open.Options     // how to read the file
@@ -45,12 +46,24 @@ func NewStandard(file string, data []byte, s Standard) (*Notebook, error) {
 			"write a notebook that names the profiles to report",
 			"the file holds %d profiles; one report holds at most %d", len(profiles), MaxStandardProfiles)}
 	}
-	nb, err := Parse(StandardFile, []byte(s.frontMatter(file, profiles)+templates.Standard))
+	nb, err := Parse(StandardFile, []byte(s.frontMatter(file, profiles)+s.body()))
 	if err != nil {
 		return nil, errors.Join(errors.New("the standard template is at fault"), err)
 	}
 	return nb, nil
 }
+
+// body is the standard template. What is said of an extract stands above the
+// data as read.
+func (s Standard) body() string {
+	if !s.Extract {
+		return templates.Standard
+	}
+	const at = "```data\n"
+	return strings.Replace(templates.Standard, at, extractText+"\n\n"+at, 1)
+}
+
+const extractText = "The file is an extract of a table of several profiles: what stands above the table's rows, and the rows of this profile. Its lines, its size and its SHA-256 are the extract's own."
 
 // MaxStandardProfiles is how many profiles one standard report takes.
 const MaxStandardProfiles = 50

@@ -97,6 +97,29 @@ func TestNoSigmaIsAssumed(t *testing.T) {
 	}
 }
 
+// The errors of correlated velocities are common to all layers, whether they are
+// correlated here or stand so in their file: 0.3 at each layer is 0.3 of the
+// average, and not √(Σwᵢ²)·0.3.
+func TestCorrelatedFileKeepsFullCorrelation(t *testing.T) {
+	const common = "The error of a correlation is common to "
+	folder["kept.csv"] = "# basis: correlated\ntop (m),bottom (m),vs (m/s),sigma ln vs\n0,10,200,0.3\n10,20,300,0.3\n20,40,400,0.3\n"
+	folder["some.csv"] = "top (m),bottom (m),vs (m/s),sigma ln vs,basis\n0,10,200,0.3,measured\n10,20,300,0.3,measured\n20,40,400,0.3,correlated\n"
+	folder["none.csv"] = "# basis: inverted\ntop (m),bottom (m),vs (m/s),sigma ln vs\n0,10,200,0.3\n10,20,300,0.3\n20,40,400,0.3\n"
+	for _, c := range []struct{ file, keys, row, said string }{
+		{"kept.csv", "", "layers fully correlated", "The velocities are correlated from other tests. " + common + "all layers"},
+		{"some.csv", "", "layers fully correlated", "Some of the velocities are correlated from other tests. " + common + "its layers; one rule is taken for all layers, the others included"},
+		{"none.csv", "", "layers independent", ""},
+		{"kept.csv", "sigma: 0.2\n", "layers fully correlated", common + "all layers"},
+		{"kept.csv", "correlation: independent\n", "layers independent", common + "all layers"},
+	} {
+		r := mustEvaluate(t, "---\ncode: nbcc-2015\nprofiles:\n  U: {file: "+c.file+"}\n---\n```spread\nrealisations: 1000\nfigure: no\n"+c.keys+"```\n")
+		text := strings.Join(strings.Fields(markdown(t, r)), " ")
+		if !strings.Contains(text, "▸ formula, "+c.row) || (c.said == "") == strings.Contains(text, common) || !strings.Contains(text, c.said) {
+			t.Errorf("%s %q: want %q and %q in\n%s", c.file, c.keys, c.row, c.said, markdown(t, r))
+		}
+	}
+}
+
 func TestProfilesTogether(t *testing.T) {
 	folder["three.csv"] = "profile,bottom (m),vs (m/s)\nA,40,300\nB,40,330\nC,40,270\n"
 	// By hand: (300·330·270)^(1/3) = 298.9966, sample σ of ln 0.100377,
@@ -156,5 +179,18 @@ func TestProfileWithoutVelocities(t *testing.T) {
 	}
 	if strings.Contains(text, "NaN") || strings.Contains(text, "Inf") {
 		t.Error("the report prints a number that is none")
+	}
+}
+
+// TestSymbolsKeepTheirCase: a footnote that begins with a symbol does not make
+// another of it.
+func TestSymbolsKeepTheirCase(t *testing.T) {
+	for text, want := range map[string]string{
+		"qt is taken to be qc": "qt is taken to be qc.", "v̄s of 600 ft/s is class DE": "v̄s of 600 ft/s is class DE.",
+		"quick clay": "Quick clay.", "the end.": "the end.", "": "",
+	} {
+		if got := sentence(text); got != want {
+			t.Errorf("%q: got %q, want %q", text, got, want)
+		}
 	}
 }

@@ -111,7 +111,7 @@ func (ev *evaluation) summaryBox(s *site, d siteclass.Decision) *report.Summary 
 	if method == "" {
 		method = "method not stated"
 	}
-	box := &report.Summary{Heading: "Profile " + p.Name, Label: "Site class", Answer: d.Class}
+	box := &report.Summary{Heading: "Profile " + p.Name, Label: "Site class", Answer: d.ClassWords()}
 	add := func(label, value string, notes ...profile.Note) {
 		box.Fields = append(box.Fields, report.Field{Label: label, Value: append(words(value), ev.refs(notes)...)})
 	}
@@ -196,7 +196,7 @@ func (ev *evaluation) summaryTable(of []*site, decided []siteclass.Decision) *re
 		}
 		r := row(of[i].profile.Name, d.Code.ID, "", averageCell(ev, d),
 			ev.length(d.Thickness), d.Basis, next, d.Standing.String())
-		r.Cells[2] = append(strong(d.Class), ev.refs(d.Notes)...)
+		r.Cells[2] = append(strong(d.ClassWords()), ev.refs(d.Notes)...)
 		t.Rows = append(t.Rows, r)
 	}
 	return t

@@ -209,11 +209,16 @@ func (ev *evaluation) below(datum float64) string {
 	return "below a datum at " + ev.length(datum) + " " + ev.system.length().Name + " depth"
 }
 
-// capital is text with its first letter in upper case; a symbol such as v̄s
+// symbols are those of small letters that a note may begin with. Qt is another
+// quantity than qt.
+var symbols = []string{"qt", "qc", "qu", "fs", "u2", "u0", "su", "cu", "vs", "vs,30", "w"}
+
+// capital is text with its first letter in upper case; a symbol such as v̄s or qt
 // stays as it is.
 func capital(text string) string {
 	r := []rune(text)
-	if len(r) == 0 || len(r) > 1 && unicode.Is(unicode.Mn, r[1]) {
+	first, _, _ := strings.Cut(text, " ")
+	if len(r) == 0 || len(r) > 1 && unicode.Is(unicode.Mn, r[1]) || slices.Contains(symbols, first) {
 		return text
 	}
 	return strings.ToUpper(string(r[:1])) + string(r[1:])

@@ -136,6 +136,14 @@ func fallAtBottom(layers []profile.Layer, from float64) (vs30.Reversal, bool) {
 	return vs30.Reversal{}, false
 }
 
+// FallsAtBottom reports whether the lowest change of velocity by more than 5 %
+// below depth from (m below ground level) is a fall: what the doubt
+// falling-at-the-bottom of an estimate says in words.
+func FallsAtBottom(layers []profile.Layer, from float64) bool {
+	_, falls := fallAtBottom(layers, from)
+	return falls
+}
+
 func differs(above, below float64) bool { return math.Abs(below-above) > scatter*above }
 
 func change(layer int, depth, above, below float64) (vs30.Reversal, bool) {

@@ -173,6 +173,20 @@ func TestCorrelatedEnvelope(t *testing.T) {
 		if got := noteOf(d, "correlated-classes"); !strings.Contains(got, "the governing spectrum is the envelope of those of CD, D, DE") {
 			t.Errorf("%s: %q", id, got)
 		}
+		if got := d.ClassWords(); got != "D (with CD and DE)" {
+			t.Errorf("%s: %q", id, got)
+		}
+		// The bounds of CD are 1,000 and 1,450 ft/s, those of DE 500 and 700.
+		var steps []string
+		for _, s := range d.Steps[len(d.Steps)-4:] {
+			steps = append(steps, s.Text+": "+s.Comparison())
+		}
+		over := d.Code.DepthText
+		want := []string{"1.3·v̄s over " + over + ", class CD: 1,180.5 ft/s > 1,000 ft/s", "1.3·v̄s over " + over + ", class CD: 1,180.5 ft/s ≤ 1,450 ft/s",
+			"v̄s/1.3 over " + over + ", class DE: 698.5 ft/s > 500 ft/s", "v̄s/1.3 over " + over + ", class DE: 698.5 ft/s ≤ 700 ft/s"}
+		if !slices.Equal(steps, want) {
+			t.Errorf("%s: steps %q, want %q", id, steps, want)
+		}
 		site.Profile.Survey.Basis = profile.Measured
 		if d = decide(t, id, site); d.Classes != nil {
 			t.Errorf("%s: measured, yet classes %v", id, d.Classes)

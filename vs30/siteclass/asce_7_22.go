@@ -145,7 +145,17 @@ func (r *ruling) spread(byTable bool) {
 			r.d.Classes = all
 		}
 	}
+	r.rowSteps(fast, "1.3·v̄s over "+r.code.DepthText)
+	r.rowSteps(slow, "v̄s/1.3 over "+r.code.DepthText)
 	r.note("correlated-classes", "v̄s of %s is class %s; 1.3·v̄s of %s is class %s; v̄s/1.3 of %s is class %s: %s (20.3)",
 		r.speed(v), r.classAt(v), r.speed(fast), r.classAt(fast), r.speed(slow), r.classAt(slow), what)
 	r.rest(OneSource, "the classes of correlated velocities (20.3)")
+}
+
+// rowSteps compares a velocity with the bounds of the row that claims it.
+func (r *ruling) rowSteps(v float64, over string) {
+	c := r.code
+	if i := c.Lookup(v); i >= 0 {
+		r.cellSteps(&c.Bands[i].Vs, v, c.Unit, r.subject(AverageVs, i, over))
+	}
 }

@@ -3,6 +3,8 @@ package siteclass
 import (
 	"errors"
 	"fmt"
+	"math"
+	"slices"
 	"strings"
 
 	"shearbook/vs30"
@@ -11,8 +13,35 @@ import (
 // answer is what a route gives.
 type answer struct {
 	route    *Route
+	rank     int // the route's, or behind
 	decision Decision
 	err      error
+}
+
+// behind is the rank of a route by velocities that are estimated from the very
+// tests that the code's other routes take as they are: it comes after them.
+const behind = math.MaxInt
+
+// nextRank is that of the routes of N or su that come next after a route. Where
+// velocities were added below the profile N and su end above the code's depth, so
+// that neither way is whole: they stand side by side.
+func (c *Code) nextRank(route *Route) int {
+	next := behind
+	for _, r := range c.routes() {
+		if r.Rank > route.Rank && !r.has(AverageVs) {
+			next = min(next, r.Rank)
+		}
+	}
+	return next
+}
+
+// standsBehind reports whether a route goes behind the others where the
+// velocities are estimated: it rests on the velocity alone, and the code has
+// routes of N or su that otherwise come after it. Routes that stand side by
+// side with the velocity are left there, for of them the softer class governs.
+func (c *Code) standsBehind(route *Route) bool {
+	return len(route.Measures) == 1 && route.has(AverageVs) &&
+		slices.ContainsFunc(c.routes(), func(r Route) bool { return r.Rank > route.Rank && !r.has(AverageVs) })
 }
 
 // byRoutes goes every route of the code that the data allow, lets the code's
@@ -20,15 +49,24 @@ type answer struct {
 func (c *Code) byRoutes(s Site) (Decision, error) {
 	routes := c.routes()
 	answers := make([]answer, len(routes))
+	estimated := s.estimated(c)
 	for i := range routes {
 		d, err := c.by(&routes[i], s)
-		answers[i] = answer{&routes[i], d, err}
+		answers[i] = answer{&routes[i], routes[i].Rank, d, err}
+		switch {
+		case !estimated || !c.standsBehind(&routes[i]):
+		case s.Extended:
+			answers[i].rank = c.nextRank(&routes[i])
+		default:
+			answers[i].rank = behind
+		}
 	}
 	chosen, err := c.choose(answers, s)
 	if err != nil {
 		return Decision{}, err
 	}
 	d := answers[chosen].decision
+	c.sayBehind(&d, answers, chosen, s)
 	d.showOthers(answers, chosen)
 	c.sayNeeds(&d)
 	return d, nil
@@ -63,7 +101,7 @@ func (c *Code) choose(answers []answer, s Site) (int, error) {
 		switch {
 		case a.err == nil && (best < 0 || c.before(a, &answers[best])):
 			best = i
-		case a.err != nil && a.route.has(AverageVs):
+		case a.err != nil && a.route.has(AverageVs) && a.rank != behind:
 			slip = a.err
 		}
 		timed = timed || a.err == nil && a.route.has(AverageVs)
@@ -80,8 +118,8 @@ func (c *Code) choose(answers []answer, s Site) (int, error) {
 // before reports whether an answer goes before another: by its rank, or else
 // by the softer class.
 func (c *Code) before(a, b *answer) bool {
-	if a.route.Rank != b.route.Rank {
-		return a.route.Rank < b.route.Rank
+	if a.rank != b.rank {
+		return a.rank < b.rank
 	}
 	return c.rank(a.decision.Row) > c.rank(b.decision.Row)
 }
@@ -135,6 +173,17 @@ func (d *Decision) showOthers(answers []answer, chosen int) {
 	}
 }
 
+// sayBehind notes that the velocity would have decided, had it been measured.
+func (c *Code) sayBehind(d *Decision, answers []answer, chosen int, s Site) {
+	before := func(a answer) bool {
+		return a.rank == behind && a.err == nil && a.route.Rank < answers[chosen].route.Rank
+	}
+	if s.Route == "" && slices.ContainsFunc(answers, before) {
+		d.Notes = append(d.Notes, note("estimated-behind", "the velocities are correlated from other tests, not measured; the code's own way from penetration or strength, "+
+			d.Route+", therefore goes before them and gives the class"))
+	}
+}
+
 // same reports whether two answers are averages of the same blow counts over
 // the same ground: N and Nch where all of it is cohesionless.
 func (a *answer) same(b *answer) bool {
@@ -148,9 +197,9 @@ func (a *answer) same(b *answer) bool {
 // why says why an answer did not decide.
 func why(a, chosen *answer) string {
 	switch {
-	case a.route.Rank > chosen.route.Rank:
+	case a.rank > chosen.rank:
 		return chosen.decision.Route + " goes first"
-	case a.route.Rank == chosen.route.Rank:
+	case a.rank == chosen.rank:
 		return "of routes side by side the softer class is taken"
 	}
 	return "the route was chosen"

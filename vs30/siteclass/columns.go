@@ -30,6 +30,21 @@ func decideByColumns(c *Code, s Site, route *Route) (Decision, error) {
 	return r.finish(), nil
 }
 
+// sayNone notes an average that is 0 because a blow count is.
+func (r *ruling) sayNone(t *tally) {
+	if t.measure == AverageSu || t.average() != 0 {
+		return
+	}
+	for i := range r.layers {
+		l := &r.layers[i]
+		if n, ok := blowsOf(l); ok && n == 0 && l.Top < r.bottom() && l.Bottom > r.datum {
+			r.note("no-blows", "N is 0 from %s to %s, where the sampler sank of itself or the file means that nothing was tested; one such layer makes the harmonic average 0",
+				metres(l.Top), metres(l.Bottom))
+			return
+		}
+	}
+}
+
 // gaugeAll averages the measures of a route over the code's depth.
 func (r *ruling) gaugeAll(route *Route) error {
 	c := r.code
@@ -47,6 +62,7 @@ func (r *ruling) gaugeAll(route *Route) error {
 			return err
 		}
 		r.sayTally(&t)
+		r.sayNone(&t)
 		r.gauges = append(r.gauges, gauge{m, t.average(), c.unitOf(m), t.thickness, ""})
 	}
 	if len(r.gauges) == 0 {

@@ -2,6 +2,8 @@ package siteclass
 
 import (
 	"math"
+	"slices"
+	"strings"
 
 	"shearbook/profile"
 )
@@ -26,6 +28,23 @@ type Decision struct {
 	Notes      []profile.Note
 	Unassessed []string      // the text of each condition that was not assessed
 	Others     []Alternative // the other routes that the data allow, in the code's order
+}
+
+// ClassWords returns the class, and where several result at once the others with
+// it: "DE (with D and E)".
+func (d *Decision) ClassWords() string { return ClassWords(d.Class, d.Classes) }
+
+// ClassWords returns a class with the others of those that result at once.
+func ClassWords(class string, all []string) string {
+	others := slices.DeleteFunc(slices.Clone(all), func(other string) bool { return other == class })
+	switch n := len(others); n {
+	case 0:
+		return class
+	case 1:
+		return class + " (with " + others[0] + ")"
+	default:
+		return class + " (with " + strings.Join(others[:n-1], ", ") + " and " + others[n-1] + ")"
+	}
 }
 
 // Average is an average that a decision held against a column of the table.

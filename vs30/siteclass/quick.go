@@ -17,19 +17,20 @@ type Quick struct {
 	code     *Code
 	from     float64 // m below ground level: the datum
 	sections []section
+	shown    []Range // of the rows that do not give their class
 }
 
 // section is the velocities between two neighbouring bounds of the table.
 type section struct {
-	above, below   float64 // the bounds, in Code.Unit: +Inf and 0 at the ends
-	band           int
-	standing       Standing
-	improving      bool
-	stiffer        string // the class beyond the nearest bound above at which it changes; "" if there is none
-	stifferFrom    float64
-	softer         string // likewise below
-	softerFrom     float64
-	indicated, own bool // by an indicative row; decided by nothing but its row
+	above, below float64 // the bounds, in Code.Unit: +Inf and 0 at the ends
+	band         int
+	standing     Standing
+	improving    bool
+	stiffer      string // the class beyond the nearest bound above at which it changes; "" if there is none
+	stifferFrom  float64
+	softer       string // likewise below
+	softerFrom   float64
+	own          bool // decided by nothing but its row
 }
 
 // Verdict is what Quick found.
@@ -68,6 +69,11 @@ func (c *Code) Quick(datum, foundation profile.Optional) *Quick {
 			x.below = bounds[i]
 		}
 		q.sections = append(q.sections, c.describe(x, bounds))
+	}
+	for i := range c.Bands {
+		if b := &c.Bands[i]; b.Indicative && !b.Vs.Empty() {
+			q.shown = append(q.shown, b.Vs)
+		}
 	}
 	return q
 }
@@ -200,6 +206,32 @@ func (q *Quick) DecideExtended(p *profile.Profile, layers []profile.Layer, notes
 	return d, r.d.Notes, true
 }
 
+// DecideCarried decides a profile that ends above the depth that the code averages
+// over, from ground level, and is carried down by its deepest velocity. It says
+// what DecideExtended does of the constant velocity, without a word: in place of
+// notes there is Reversed.
+func (q *Quick) DecideCarried(layers []profile.Layer) (Verdict, bool) {
+	c, last := q.code, &layers[len(layers)-1]
+	t, t30 := travelTimes(layers, 0, last.Bottom, 30)
+	if t30 == 0 && last.Bottom < 30-vs30.Touching {
+		t30 = t + (30-last.Bottom)/last.Vs
+	}
+	mps := c.Depth / (t + (c.Depth-last.Bottom)/last.Vs)
+	x := q.section(mps / c.Unit.Factor)
+	if q.from != 0 || x == nil || x.improving {
+		return Verdict{}, false
+	}
+	d := q.verdict(x, mps)
+	if c.bandsAlone { // and so rests on the rule for shallow data
+		d.Standing = max(d.Standing, FromMemory)
+	}
+	if t30 > 0 {
+		d.Vs30 = 30 / t30
+	}
+	d.Reversed = falls(layers, 0, c.Depth)
+	return d, true
+}
+
 // From returns the datum in m below ground level, and Depth the thickness in m
 // that is averaged.
 func (q *Quick) From() float64  { return q.from }
@@ -238,12 +270,7 @@ func (q *Quick) alike(v float64, section int) bool {
 
 // indicated reports whether a row that does not give its class shows v.
 func (q *Quick) indicated(v float64) bool {
-	for i := range q.code.Bands {
-		if b := &q.code.Bands[i]; b.Indicative && !b.Vs.Empty() && b.Vs.Contains(v) {
-			return true
-		}
-	}
-	return false
+	return slices.ContainsFunc(q.shown, func(r Range) bool { return r.Contains(v) })
 }
 
 // falls reports whether vs30.Reversals finds any in layers of constant
@@ -251,7 +278,7 @@ func (q *Quick) indicated(v float64) bool {
 func falls(layers []profile.Layer, from, to float64) bool {
 	for i := 1; i < len(layers); i++ {
 		top := layers[i].Top
-		if layers[i].Vs < layers[i-1].Vs && top-from > vs30.Touching && to-top > vs30.Touching {
+		if vs30.Slower(layers[i].Vs, layers[i-1].Vs) && top-from > vs30.Touching && to-top > vs30.Touching {
 			return true
 		}
 	}
@@ -268,14 +295,14 @@ func AppendReversal(b []byte, layers []profile.Layer, from, to float64) ([]byte,
 		l := &layers[i]
 		if i > 0 && l.Top-from > vs30.Touching && to-l.Top > vs30.Touching {
 			u := &layers[i-1]
-			if above := u.VsAt(u.Bottom); l.Vs < above {
+			if above := u.VsAt(u.Bottom); vs30.Slower(l.Vs, above) {
 				if n++; first < 0 {
 					first = i
 				}
 				b = appendFall(b, n, most, above, l.Vs, l.Top)
 			}
 		}
-		if !l.Gradient() || l.VsBottom >= l.Vs {
+		if !l.Gradient() || !vs30.Slower(l.VsBottom, l.Vs) {
 			continue
 		}
 		if top, bottom := max(l.Top, from), min(l.Bottom, to); bottom-top > vs30.Touching {

@@ -22,6 +22,8 @@ func (m Measure) String() string { return measureWords[m] }
 //
 // Where the data allow several routes, those of the lowest Rank go first;
 // among routes of one rank the softest class governs. The others are shown.
+// A velocity that is correlated, and so comes of N or su itself, goes behind the
+// routes that take those as they are; one that was measured keeps its rank.
 type Route struct {
 	Name     string    // "velocity", "N", "Nch and su"
 	Measures []Measure // what is averaged and held against the table

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"math"
 	"math/rand/v2"
+	"slices"
 	"strings"
 	"testing"
 
@@ -265,6 +266,9 @@ func TestNoBlows(t *testing.T) {
 	if d.Class != "E" || d.Averages[0].Value != 0 || d.Margin != nil {
 		t.Errorf("class %s, %v, margin %v", d.Class, d.Averages, d.Margin)
 	}
+	if got := noteOf(d, "no-blows"); got != "N is 0 from 0 m to 2 m, where the sampler sank of itself or the file means that nothing was tested; one such layer makes the harmonic average 0" {
+		t.Errorf("%q", got)
+	}
 	if _, err := json.Marshal(d.Steps); err != nil {
 		t.Error(err)
 	}
@@ -292,6 +296,20 @@ func TestBlowKind(t *testing.T) {
 		if got := noteOf(decide(t, p.id, site), "blow-count"); got != p.want {
 			t.Errorf("%s, %q, %s: %q", p.id, p.heading, p.stated, got)
 		}
+	}
+}
+
+// TestEnergyRatioSaysNotN60: counts with an energy ratio beside them are as
+// measured.
+func TestEnergyRatioSaysNotN60(t *testing.T) {
+	site := boring(sand(40, 30))
+	site.Profile.Layers[0].EnergyRatio = 72
+	if got := noteOf(decide(t, "asce-7-16", site), "blow-count"); got != "" {
+		t.Errorf("asce-7-16: %q", got)
+	}
+	const want = "the code asks for N corrected for energy (N60); the data give N as measured, and it is taken as it stands"
+	if got := noteOf(decide(t, "nbcc-2015", site), "blow-count"); got != want {
+		t.Errorf("nbcc-2015: %q", got)
 	}
 }
 
@@ -330,6 +348,78 @@ func TestPriority(t *testing.T) {
 	// EN 1998-1 sets NSPT before the strength.
 	if d = decide(t, "ec8-2004", silent); d.Route != "N" || d.Class != "C" || d.Others[0].Class != "D" {
 		t.Errorf("ec8-2004: route %q, class %s, others %v", d.Route, d.Class, d.Others)
+	}
+}
+
+// estimated makes the velocities of a site's layers correlated ones.
+func estimated(s Site) Site {
+	for i := range s.Profile.Layers {
+		s.Profile.Layers[i].Basis = profile.Correlated
+	}
+	return s
+}
+
+// TestCorrelatedVelocityDoesNotOverrideBlows: a velocity that is correlated
+// goes behind the code's own ways from N and su, which decide and say so; one
+// that was measured, or of which only the lesser part is correlated, does not.
+func TestCorrelatedVelocityDoesNotOverrideBlows(t *testing.T) {
+	const said = "the velocities are correlated from other tests, not measured; the code's own way from penetration or strength, "
+	// N̄ over 30.48 m: 30.48/(10/5 + 20.48/30) = 11.36 < 15, class E of Table
+	// 20.3-1; over 30 m: 30/(10/5 + 20/30) = 11.25 < 15, ground type D of Table
+	// 3.1. 225 m/s is D and C.
+	blows := func() Site {
+		s := boring(sand(10, 5), sand(40, 30))
+		s.Profile.NoVelocity = false
+		s.Profile.Layers[0].Vs, s.Profile.Layers[1].Vs = 225, 225
+		return s
+	}
+	for id, want := range map[string]struct{ route, class, measured string }{
+		"asce-7-16": {"N", "E", "D"}, "ec8-2004": {"N", "D", "C"}, "nsr-10": {"N", "E", "D"}, "nbcc-2015": {"N", "E", "D"},
+	} {
+		d := decide(t, id, estimated(blows()))
+		if d.Route != want.route || d.Class != want.class || noteOf(d, "estimated-behind") != said+want.route+", therefore goes before them and gives the class" ||
+			d.Velocity != 0 {
+			t.Errorf("%s: class %s by %s, %q", id, d.Class, d.Route, noteOf(d, "estimated-behind"))
+		}
+		shown := slices.ContainsFunc(d.Others, func(o Alternative) bool { return o.Route == "velocity" && o.Class == want.measured })
+		if !shown || !strings.HasSuffix(noteOf(d, "other-route"), "N goes first") {
+			t.Errorf("%s: others %v, %q", id, d.Others, noteOf(d, "other-route"))
+		}
+		if d = decide(t, id, blows()); d.Route != "velocity" || d.Class != want.measured || noteOf(d, "estimated-behind") != "" {
+			t.Errorf("%s, measured: class %s by %s", id, d.Class, d.Route)
+		}
+		lesser := blows()
+		lesser.Profile.Layers[0].Basis = profile.Correlated // 10 of 30 m
+		if d = decide(t, id, lesser); d.Route != "velocity" {
+			t.Errorf("%s, correlated in part: class %s by %s", id, d.Class, d.Route)
+		}
+		survey := blows()
+		survey.Profile.Survey.Basis = profile.Correlated
+		survey.Route = "velocity"
+		if d = decide(t, id, survey); d.Route != "velocity" || noteOf(d, "estimated-behind") != "" {
+			t.Errorf("%s, the velocity chosen: class %s by %s", id, d.Class, d.Route)
+		}
+	}
+	// N and su that end above 30 m do not go before what is carried down to it;
+	// the softer of the two is taken.
+	short := estimated(boring(sand(10, 5), sand(20, 30)))
+	short.Profile.NoVelocity = false
+	for _, p := range []struct {
+		v            float64
+		route, class string
+	}{{225, "Nch", "E"}, {150, "velocity", "E"}} {
+		for i := range short.Profile.Layers {
+			short.Profile.Layers[i].Vs = p.v
+		}
+		short.Layers = append(slices.Clone(short.Profile.Layers), profile.Layer{Top: 20, Bottom: 40, Vs: p.v})
+		short.Extended = true
+		if d := decide(t, "asce-7-16", short); d.Class != p.class || noteOf(d, "estimated-behind") != "" {
+			t.Errorf("extended, %v m/s: class %s by %s", p.v, d.Class, d.Route)
+		}
+	}
+	// Without N or su there is no other way.
+	if d := decide(t, "asce-7-16", estimated(uniform(300))); d.Route != "velocity" || d.Class != "D" {
+		t.Errorf("class %s by %s", d.Class, d.Route)
 	}
 }
 

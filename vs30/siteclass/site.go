@@ -73,6 +73,33 @@ func (s *Site) timed() bool {
 	return false
 }
 
+// estimated reports whether at least half of the velocities that a code
+// averages, by thickness, are correlated from other tests. What was added below
+// the profile to reach the code's depth does not count.
+func (s *Site) estimated(c *Code) bool {
+	if s.Profile == nil {
+		return false
+	}
+	from, _ := c.DatumOf(*s)
+	to := from + c.Depth
+	if c.Depth == 0 {
+		to = math.MaxFloat64
+	}
+	var all, correlated float64
+	for i := range s.Profile.Layers {
+		l := &s.Profile.Layers[i]
+		d := min(l.Bottom, to) - max(l.Top, from)
+		if !(d > 0) || l.Vs == 0 {
+			continue
+		}
+		all += d
+		if s.Profile.BasisOf(i) == profile.Correlated {
+			correlated += d
+		}
+	}
+	return correlated > 0 && 2*correlated >= all
+}
+
 // tested reports whether any of the layers states a blow count, a strength or
 // refusal.
 func (s *Site) tested() bool {

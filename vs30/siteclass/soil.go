@@ -2,6 +2,7 @@ package siteclass
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"shearbook/profile"
@@ -237,10 +238,16 @@ func (r *ruling) sayBlow() {
 }
 
 // blow returns the kind of the data's blow counts: what the site states, or
-// else what the heading of their column says.
+// else what the heading of their column says. Counts with an energy ratio beside
+// them were not corrected by it.
 func (r *ruling) blow() Blow {
-	if r.site.Blow != BlowUnstated || r.site.Profile == nil || r.site.Profile.Reading == nil {
+	switch {
+	case r.site.Blow != BlowUnstated || r.site.Profile == nil:
 		return r.site.Blow
+	case slices.ContainsFunc(r.layers, func(l profile.Layer) bool { return l.EnergyRatio > 0 }):
+		return BlowField
+	case r.site.Profile.Reading == nil:
+		return BlowUnstated
 	}
 	reading := r.site.Profile.Reading
 	i := reading.Index(profile.N)
