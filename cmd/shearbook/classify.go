@@ -12,7 +12,6 @@ import (
 	"shearbook/profile/open"
 	"shearbook/report"
 	"shearbook/report/notebook"
-	"shearbook/vs30"
 	"shearbook/vs30/siteclass"
 )
 
@@ -89,7 +88,7 @@ func classify(s streams, f classifyFlags, names []string) error {
 			for _, code := range codes {
 				d, err := report.Classify(&profiles[i], code, facts)
 				if err != nil {
-					faults = append(faults, tooShort(&profiles[i], code, err))
+					faults = append(faults, report.Failure(&profiles[i], code, err))
 					continue
 				}
 				found = append(found, classified{&profiles[i], d, report.Average30(&profiles[i], d.Datum, facts)})
@@ -190,25 +189,6 @@ func join(faults profile.Faults, err error) (profile.Faults, error) {
 		return faults, err
 	}
 	return append(faults, more...), nil
-}
-
-// tooShort is the fault of a profile that a code cannot classify.
-func tooShort(p *profile.Profile, code *siteclass.Code, err error) profile.Fault {
-	at := profile.Place{}
-	if p.Reading != nil {
-		last := p.Layers[len(p.Layers)-1]
-		at = p.Reading.Place(int(last.Line), int(last.Column))
-	}
-	text, hint := err.Error(), ""
-	var short *vs30.ShortError
-	if errors.As(err, &short) {
-		text = fmt.Sprintf("profile %q reaches %.4g m below ground level; %s needs %.4g m", p.Name, short.Reached, code.ID, short.Needed)
-		hint = "add --extend constant-velocity if the lowest velocity may be taken to continue, or survey deeper"
-		if p.NoVelocity {
-			hint = "N and su are not carried below their tests: bore deeper, or add --correlate imai-tonouchi-1982 with --extend constant-velocity if velocities may be estimated so"
-		}
-	}
-	return profile.Faultf(at, hint, "%s", text)
 }
 
 // writeDecision lays one answer out for the terminal.

@@ -56,7 +56,7 @@ func (o *overview) codeList(t *tally) *report.List {
 	}
 	notes, unassessed := t.sayAll(o.opt)
 	for _, n := range notes {
-		add(report.Text(capital(sentence(n))))
+		add(report.Text(report.Capital(sentence(n))))
 	}
 	for _, text := range unassessed {
 		add(&report.Strong{Inline: words("Not assessed")}, report.Text(", "+sentence(text)))
@@ -67,14 +67,6 @@ func (o *overview) codeList(t *tally) *report.List {
 
 // sentence ends a text with a full stop.
 func sentence(text string) string { return strings.TrimSuffix(text, ".") + "." }
-
-// capital begins a text with a capital letter.
-func capital(text string) string {
-	if text != "" && text[0] >= 'a' && text[0] <= 'z' {
-		return string(text[0]-'a'+'A') + text[1:]
-	}
-	return text
-}
 
 // record says what was done.
 func (o *overview) record() []report.Block {

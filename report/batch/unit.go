@@ -104,9 +104,9 @@ func (c *clerk) classify(u *unit, i int, r *result) {
 	row.DepthReached = p.DepthReached()
 	d, err := report.Classify(p, code, u.setting.facts)
 	if err != nil {
-		f, short := failure(p, code, err)
+		f := report.Failure(p, code, err)
 		row.Flags, row.Problem, r.fault = Failed, f.Text, &f
-		if short {
+		if short := (*vs30.ShortError)(nil); errors.As(err, &short) {
 			row.Flags |= Shallow
 		}
 		return
@@ -304,20 +304,4 @@ func problem(faults profile.Faults) string {
 	default:
 		return fmt.Sprintf("%s (and %s)", faults[0].Text, profile.Plural(n-1, "more fault"))
 	}
-}
-
-// failure is the fault of a profile that a code cannot classify, and whether
-// it is that the profile ends too high.
-func failure(p *profile.Profile, code *siteclass.Code, err error) (f profile.Fault, tooShort bool) {
-	at := profile.Place{}
-	if p.Reading != nil {
-		last := p.Layers[len(p.Layers)-1]
-		at = p.Reading.Place(int(last.Line), int(last.Column))
-	}
-	var short *vs30.ShortError
-	if !errors.As(err, &short) {
-		return profile.Faultf(at, "", "%s", err), false
-	}
-	return profile.Faultf(at, "add --extend constant-velocity if the lowest velocity may be taken to continue, or survey deeper",
-		"profile %q reaches %.4g m below ground level; %s needs %.4g m", p.Name, short.Reached, code.ID, short.Needed), true
 }

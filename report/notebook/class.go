@@ -193,7 +193,7 @@ func stepTable(s *site, d siteclass.Decision) *report.Table {
 			column("Comparison", report.AlignLeft), column("Holds", report.AlignLeft), column("Clause", report.AlignLeft)},
 	}
 	for i, st := range d.Steps {
-		t.Rows = append(t.Rows, row(strconv.Itoa(i+1), capital(st.Text), Comparison(st), yesNo(st.Holds), st.Clause))
+		t.Rows = append(t.Rows, row(strconv.Itoa(i+1), report.Capital(st.Text), Comparison(st), yesNo(st.Holds), st.Clause))
 	}
 	return t
 }
@@ -267,7 +267,7 @@ func (ev *evaluation) conditionTable(s *site, d siteclass.Decision) *report.Tabl
 		if c.State == siteclass.Met || c.State == siteclass.NotAssessed {
 			found = strong(c.State.String())
 		}
-		r := row(capital(c.Condition.Text), ConditionClass(c.Condition), "", c.Condition.Clause, c.Condition.Standing.String())
+		r := row(report.Capital(c.Condition.Text), ConditionClass(c.Condition), "", c.Condition.Clause, c.Condition.Standing.String())
 		r.Cells[2] = append(found, ev.refs(c.Notes)...)
 		r.Marked = c.State == siteclass.Met
 		t.Rows = append(t.Rows, r)

@@ -198,7 +198,7 @@ func sentence(text string) string {
 	if text == "" || strings.HasSuffix(text, ".") {
 		return text
 	}
-	return capital(text) + "."
+	return report.Capital(text) + "."
 }
 
 func para(text string) *report.Paragraph {

@@ -3,8 +3,6 @@ package notebook
 import (
 	"maps"
 	"slices"
-	"strings"
-	"unicode"
 
 	"shearbook/profile"
 	"shearbook/report"
@@ -126,7 +124,7 @@ func (ev *evaluation) each(sites []*site, f func(*site) []report.Block) []report
 func (ev *evaluation) eachMeasured(sites []*site, f func(*site) []report.Block) []report.Block {
 	return ev.each(sites, func(s *site) []report.Block {
 		if s.profile.NoVelocity {
-			return one(para(capital(noVelocity(s)) + "."))
+			return one(para(report.Capital(noVelocity(s)) + "."))
 		}
 		return f(s)
 	})
@@ -207,19 +205,4 @@ func (ev *evaluation) below(datum float64) string {
 		return "below ground level"
 	}
 	return "below a datum at " + ev.length(datum) + " " + ev.system.length().Name + " depth"
-}
-
-// symbols are those of small letters that a note may begin with. Qt is another
-// quantity than qt.
-var symbols = []string{"qt", "qc", "qu", "fs", "u2", "u0", "su", "cu", "vs", "vs,30", "w"}
-
-// capital is text with its first letter in upper case; a symbol such as v̄s or qt
-// stays as it is.
-func capital(text string) string {
-	r := []rune(text)
-	first, _, _ := strings.Cut(text, " ")
-	if len(r) == 0 || len(r) > 1 && unicode.Is(unicode.Mn, r[1]) || slices.Contains(symbols, first) {
-		return text
-	}
-	return strings.ToUpper(string(r[:1])) + string(r[1:])
 }

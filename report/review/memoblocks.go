@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"slices"
 	"strings"
-	"unicode"
 
 	"shearbook/profile"
 	"shearbook/report"
@@ -175,7 +174,7 @@ func (w *writer) findings() []report.Block {
 // finding is one finding: what, where, what was claimed and found, what gives
 // the claim, and what is behind it.
 func (w *writer) finding(f *Finding) report.ListItem {
-	head := []report.Inline{w.strong(capital(f.Text) + ".")}
+	head := []report.Inline{w.strong(report.Capital(f.Text) + ".")}
 	var facts []string
 	facts = append(facts, "At "+f.Where())
 	if f.Claimed != "" {
@@ -187,21 +186,11 @@ func (w *writer) finding(f *Finding) report.ListItem {
 	item := report.ListItem{Blocks: []report.Block{&report.Paragraph{Inline: head}, w.para(strings.Join(facts, "; ") + ".")}}
 	for i, c := range f.Causes {
 		item.Blocks = append(item.Blocks, &report.Paragraph{Inline: []report.Inline{
-			&report.Emphasis{Inline: w.inline(capital(strings.TrimSuffix(f.CauseLabel(i), ": ")))}, report.Text(": " + w.text(c.Words()) + ".")}})
+			&report.Emphasis{Inline: w.inline(report.Capital(strings.TrimSuffix(f.CauseLabel(i), ": ")))}, report.Text(": " + w.text(c.Words()) + ".")}})
 	}
 	item.Blocks = append(item.Blocks, &report.Paragraph{Inline: []report.Inline{
 		report.Text("Behind it: " + w.text(strings.TrimSuffix(f.Behind(), ".")) + ". Rule "), report.Code(f.Rule), report.Text(".")}})
 	return item
-}
-
-// capital is text with its first letter in upper case; a symbol such as v̄s stays
-// as it is.
-func capital(text string) string {
-	r := []rune(text)
-	if len(r) == 0 || len(r) > 1 && unicode.Is(unicode.Mn, r[1]) {
-		return text
-	}
-	return strings.ToUpper(string(r[:1])) + string(r[1:])
 }
 
 // averages are the workings of the recomputed averages.
