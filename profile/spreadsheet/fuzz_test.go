@@ -80,7 +80,7 @@ func FuzzParts(f *testing.F) {
 
 // Texts and numbers come back from a workbook as they went in, to 15 digits.
 func FuzzWriter(f *testing.F) {
-	for _, text := range []string{"", "a", "=1", "_x000D_", "\x00\uffff", " \r\n", "<&>", "_x_x0041_"} {
+	for _, text := range []string{"", "a", "=1", "_x000D_", "\x00\uffff", " \r\n", "<&>", "_x_x0041_", "_x000D\x13"} {
 		f.Add(text, 0.1)
 	}
 	f.Fuzz(func(t *testing.T, text string, x float64) {

@@ -332,9 +332,11 @@ func inXML(r rune) bool {
 	return r == '\t' || r == '\n' || r == '\r' || r >= ' ' && r != 0xfffe && r != 0xffff
 }
 
-// escaped reports whether text begins as an escaped character does.
+// escaped reports whether text begins as an escaped character does. The second
+// underscore is not asked for: it may be that of a character that is escaped
+// behind the text.
 func escaped(text string) bool {
-	if len(text) < 7 || text[1] != 'x' || text[6] != '_' {
+	if len(text) < 6 || text[1] != 'x' {
 		return false
 	}
 	_, err := strconv.ParseUint(text[2:6], 16, 16)
